@@ -1,0 +1,71 @@
+package diag
+
+import (
+	"fmt"
+	"io"
+	"strings"
+	"unicode"
+	"unicode/utf8"
+)
+
+// widest is how much of a source line is shown, in characters.
+const widest = 160
+
+// Write lays messages out for a reader: file:line:column, severity and summary;
+// the source line; a caret under the range; the hint. source gives the text of
+// a line of a file (counted from 1), or false if it has none.
+func Write(w io.Writer, list List, source func(file string, line int) (string, bool)) error {
+	for _, d := range list {
+		if _, err := fmt.Fprintf(w, "%s: %s: %s\n", Printable(d.Range.String()), d.Severity, Printable(d.Summary)); err != nil {
+			return err
+		}
+		if d.Range.Line > 0 && source != nil {
+			if text, ok := source(d.Range.File, d.Range.Line); ok {
+				line, caret := excerpt(text, d.Range)
+				if _, err := fmt.Fprintf(w, "    %s\n    %s\n", line, caret); err != nil {
+					return err
+				}
+			}
+		}
+		if d.Hint != "" {
+			if _, err := fmt.Fprintf(w, "    hint: %s\n", Printable(d.Hint)); err != nil {
+				return err
+			}
+		}
+	}
+	return nil
+}
+
+// excerpt returns the line and the caret row under it, cut to a readable window
+// around the range, tabs shown as single blanks.
+func excerpt(text string, at Range) (line, caret string) {
+	runes := []rune(Printable(strings.TrimRight(text, "\r\n")))
+	start := max(at.Column-1, 0)
+	end := at.EndColumn - 1
+	if at.EndLine > at.Line || end > len(runes) {
+		end = len(runes)
+	}
+	start = min(start, len(runes))
+	end = max(end, start+1)
+	first := 0
+	if len(runes) > widest {
+		first = max(0, min(start-widest/4, len(runes)-widest))
+		runes = runes[first:min(first+widest, len(runes))]
+	}
+	start, end = start-first, min(end-first, len(runes)+1)
+	return string(runes), strings.Repeat(" ", start) + strings.Repeat("^", max(1, end-start))
+}
+
+// Printable replaces every character that a terminal would act on, or that
+// would hide or reorder text, so that a source line cannot drive the screen.
+func Printable(s string) string {
+	return strings.Map(func(r rune) rune {
+		switch {
+		case r == '\t':
+			return ' '
+		case r == utf8.RuneError, unicode.IsControl(r), unicode.Is(unicode.Cf, r), unicode.Is(unicode.Zl, r), unicode.Is(unicode.Zp, r):
+			return '\uFFFD'
+		}
+		return r
+	}, s)
+}
