@@ -1,22 +1,28 @@
 package diag
 
-import "strings"
+import (
+	"strings"
+	"unicode/utf8"
+)
 
 // Nearest returns the candidate most like name, or "" when none is close: at
-// most a third of the letters differ (insertions, deletions, exchanges of
-// neighbours, changes), case aside.
+// most a third of the letters of the longer word differ (insertions, deletions,
+// exchanges of neighbours, changes), case aside. Among equals the first wins.
 func Nearest(name string, candidates []string) string {
-	best, found := len([]rune(name))/3+1, ""
+	found, best := "", 1<<20
 	for _, c := range candidates {
-		if d := distance(strings.ToLower(name), strings.ToLower(c)); d < best || d == best && found == "" && d <= (len([]rune(c))+2)/3 {
-			best, found = d, c
+		longer := max(utf8.RuneCountInString(name), utf8.RuneCountInString(c))
+		if d := Distance(strings.ToLower(name), strings.ToLower(c)); d <= longer/3 && d < best {
+			found, best = c, d
 		}
 	}
 	return found
 }
 
-// distance is the optimal string alignment distance between two words.
-func distance(a, b string) int {
+// Distance is the optimal string alignment distance between two words: how many
+// letters differ, with exchanges of neighbours counted once. Words of more than 64
+// letters are far from everything.
+func Distance(a, b string) int {
 	x, y := []rune(a), []rune(b)
 	if len(x) > 64 || len(y) > 64 {
 		return 1 << 20

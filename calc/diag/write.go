@@ -3,9 +3,12 @@ package diag
 import (
 	"fmt"
 	"io"
+	"slices"
 	"strings"
 	"unicode"
 	"unicode/utf8"
+
+	"golang.org/x/text/width"
 )
 
 // widest is how much of a source line is shown, in characters.
@@ -37,23 +40,47 @@ func Write(w io.Writer, list List, source func(file string, line int) (string, b
 }
 
 // excerpt returns the line and the caret row under it, cut to a readable window
-// around the range, tabs shown as single blanks.
+// around the range (… marks a cut), tabs shown as single blanks.
 func excerpt(text string, at Range) (line, caret string) {
 	runes := []rune(Printable(strings.TrimRight(text, "\r\n")))
-	start := max(at.Column-1, 0)
+	start := min(max(at.Column-1, 0), len(runes))
 	end := at.EndColumn - 1
 	if at.EndLine > at.Line || end > len(runes) {
 		end = len(runes)
 	}
-	start = min(start, len(runes))
 	end = max(end, start+1)
-	first := 0
 	if len(runes) > widest {
-		first = max(0, min(start-widest/4, len(runes)-widest))
-		runes = runes[first:min(first+widest, len(runes))]
+		first := max(0, min(start-widest/4, len(runes)-widest))
+		cut := first+widest < len(runes)
+		runes = slices.Clone(runes[first : first+widest])
+		if first > 0 {
+			runes[0] = '…'
+		}
+		if cut {
+			runes[widest-1] = '…'
+		}
+		start, end = start-first, min(end-first, widest)
 	}
-	start, end = start-first, min(end-first, len(runes)+1)
-	return string(runes), strings.Repeat(" ", start) + strings.Repeat("^", max(1, end-start))
+	before, under := 0, 0
+	for i, r := range runes[:min(end, len(runes))] {
+		if i < start {
+			before += cells(r)
+		} else {
+			under += cells(r)
+		}
+	}
+	return string(runes), strings.Repeat(" ", before) + strings.Repeat("^", max(1, under))
+}
+
+// cells is how many columns of a terminal a character takes.
+func cells(r rune) int {
+	switch k := width.LookupRune(r).Kind(); {
+	case unicode.In(r, unicode.Mn, unicode.Me):
+		return 0
+	case k == width.EastAsianWide, k == width.EastAsianFullwidth:
+		return 2
+	}
+	return 1
 }
 
 // Printable replaces every character that a terminal would act on, or that

@@ -5,6 +5,9 @@
 package exhibit
 
 import (
+	"strconv"
+	"strings"
+
 	"quoin/calc/cite"
 	"quoin/calc/diag"
 	"quoin/calc/expr"
@@ -23,7 +26,7 @@ type Package struct {
 	Checks []Check `json:"checks"` // in document order
 
 	Assumptions []Assumption `json:"assumptions"`
-	References  []Reference  `json:"references"` // cited ones, in order of key
+	References  []Reference  `json:"references"` // in order of key
 	Inputs      []Input      `json:"inputs"`     // files read, sorted by path, the main file first
 	Cautions    []Caution    `json:"cautions"`   // standing ones first, then the triggered
 	Footnotes   []Footnote   `json:"footnotes"`
@@ -109,7 +112,8 @@ type Block struct {
 	Caption string     `json:"caption"`
 	Note    string     `json:"note"`
 	Cites   []cite.Ref `json:"cites"`
-	// Parts in order: "inputs", "method", "results", "checks"; only those shown.
+	// Parts in order: "inputs", "method", "results"; only those shown. A formula
+	// block has one part without a name.
 	Parts    []Part   `json:"parts"`
 	Warnings []string `json:"warnings"` // travel with the numbers: footnotes of the block
 }
@@ -165,11 +169,13 @@ type Echo struct {
 
 // EchoRow is one input.
 type EchoRow struct {
-	Field   string `json:"field"` // as in the document
-	Label   string `json:"label"` // in words
-	Value   Cell   `json:"value"`
-	Written string `json:"written,omitempty"` // the source text, where it differs from the value shown
-	Default bool   `json:"default,omitempty"`
+	Field   string     `json:"field"`            // as in the document
+	Label   string     `json:"label"`            // in words
+	Symbol  *expr.Node `json:"symbol,omitempty"` // typeset in place of the label
+	Value   Cell       `json:"value"`
+	Written string     `json:"written,omitempty"` // the source text, where it differs from the value shown
+	From    string     `json:"from,omitempty"`    // where a value comes from that the document does not state: "from the file"
+	Default bool       `json:"default,omitempty"`
 }
 
 // Equation is one typeset line: symbol = tree = substituted = result. A method
@@ -231,6 +237,21 @@ type Check struct {
 	Place       Place      `json:"place"`
 	Anchor      string     `json:"anchor"` // of the block it stands in
 	Tree        *expr.Node `json:"tree"`   // the comparison, evaluated
+}
+
+// RatioText is the ratio as printed: two decimals, more where a ratio above 1
+// would read as 1.00.
+func (c Check) RatioText() string {
+	if c.Ratio == nil {
+		return "none"
+	}
+	for d := 2; d < 7; d++ {
+		text := strconv.FormatFloat(*c.Ratio, 'f', d, 64)
+		if v, _ := strconv.ParseFloat(text, 64); v > 1 || *c.Ratio <= 1 {
+			return strings.Replace(text, "-", "\u2212", 1)
+		}
+	}
+	return "just above 1"
 }
 
 // Entry is one value of the registry.

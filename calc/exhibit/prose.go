@@ -4,7 +4,7 @@ package exhibit
 // plain text.
 type Prose struct {
 	Kind     ProseKind `json:"kind"`
-	Text     string    `json:"text,omitempty"`  // Text, Code, CodeBlock, Math, MathBlock (TeX), Raw info
+	Text     string    `json:"text,omitempty"`  // Text, Code, CodeBlock, Math and MathBlock (TeX)
 	Level    int       `json:"level,omitempty"` // Heading: 1-6; OrderedList: first number; FootnoteRef: index
 	Anchor   string    `json:"anchor,omitempty"`
 	Target   string    `json:"target,omitempty"` // Link: destination; Image: input path; Cite: reference key

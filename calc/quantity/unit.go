@@ -50,8 +50,10 @@ var refused = map[string]string{
 	"lb": "write lbf for a force or lbm for a mass", "lbs": "write lbf for a force or lbm for a mass",
 	"kips": "write kip", "ton": "write t for 1000 kg, or the force in kN or kip", "tons": "write t for 1000 kg, or the force in kN or kip",
 	"tonne": "write t", "h": "write the time in s", "hr": "write the time in s", "min": "write the time in s", "d": "write the time in s",
-	"sec": "write s", "mi": "write km or ft", "kgf": "write the force in N or kN", "tf": "write the force in kN", "lbm/ft": "",
-	"G": "write g for the acceleration of free fall", "feet": "write ft", "inch": "write in", "KN": "write kN", "kn": "write kN", "Kip": "write kip", "hz": "write Hz", "K": "write kip",
+	"sec": "write s", "mi": "write km or ft", "kgf": "write the force in N or kN", "tf": "write the force in kN",
+	"G": "write g for the acceleration of free fall", "feet": "write ft", "inch": "write in", "foot": "write ft", "inches": "write in", "kgs": "write kg", "seconds": "write s", "second": "write s", "meter": "write m", "metre": "write m", "meters": "write m", "metres": "write m",
+	"pcf": "write lbf/ft^3", "plf": "write lbf/ft", "klf": "write kip/ft", "kcf": "write kip/ft^3", "bar": "write kPa or MPa", "°": "write deg", "degrees": "write deg", "percent": "write %", "rpm": "write Hz",
+	"KN": "write kN", "kn": "write kN", "Kip": "write kip", "hz": "write Hz", "K": "write kip",
 }
 
 // Symbols is every unit symbol, sorted.
@@ -111,11 +113,7 @@ func ParseUnit(text string) (Unit, error) {
 			u, ok = Unit{Scale: 1}, true
 		}
 		if !ok {
-			if fail.Hint = refused[word]; fail.Hint == "" {
-				if n := diag.Nearest(word, Symbols()); n != "" {
-					fail.Hint = "did you mean " + n + "?"
-				}
-			}
+			fail.Hint = hint(word)
 			return Unit{}, fail
 		}
 		power := 1.0
@@ -125,7 +123,7 @@ func ParseUnit(text string) (Unit, error) {
 				k++
 			}
 			p, err := strconv.ParseFloat(s[j+1:k], 64)
-			if err != nil || math.Abs(p) > 12 {
+			if err != nil {
 				fail.Hint = "after ^ stands a small number"
 				return Unit{}, fail
 			}
@@ -133,11 +131,21 @@ func ParseUnit(text string) (Unit, error) {
 		} else if p, n := superscript(s[j:]); n > 0 {
 			power, j = p, j+n
 		}
-		if over {
-			power = -power
+		if math.Abs(power) > 12 {
+			fail.Hint = "after ^ stands a small number"
+			return Unit{}, fail
 		}
-		out.Scale *= math.Pow(u.Scale, power)
-		out.Dim = out.Dim.Times(u.Dim.Power(power))
+		if over {
+			out.Scale /= math.Pow(u.Scale, power)
+			out.Dim = out.Dim.Over(u.Dim.Power(power))
+		} else {
+			out.Scale *= math.Pow(u.Scale, power)
+			out.Dim = out.Dim.Times(u.Dim.Power(power))
+		}
+		if out.Scale < 1e-150 || out.Scale > 1e150 {
+			fail.Hint = "the unit is too large or too small"
+			return Unit{}, fail
+		}
 		if j >= len(s) {
 			return out, nil
 		}
@@ -154,6 +162,27 @@ func ParseUnit(text string) (Unit, error) {
 		}
 	}
 	return Unit{}, &UnitError{Text: s, Offset: lead}
+}
+
+// hint says what to write instead of a word that is no unit, or "".
+func hint(word string) string {
+	if h := refused[word]; h != "" {
+		return h
+	}
+	if base := strings.TrimRight(word, "0123456789"); base != word && IsSymbol(base) {
+		return "write " + base + "^" + word[len(base):]
+	}
+	for _, length := range []string{"mm", "cm", "m", "ft", "in"} {
+		force, ok := strings.CutSuffix(word, length)
+		force = strings.TrimRight(force, "-.")
+		if u := symbols[force]; ok && u.Dim == Force {
+			return "write " + force + "*" + length
+		}
+	}
+	if n := diag.Nearest(word, Symbols()); n != "" {
+		return "did you mean " + n + "?"
+	}
+	return ""
 }
 
 var superscripts = map[rune]string{'⁰': "0", '¹': "1", '²': "2", '³': "3", '⁴': "4", '⁵': "5", '⁶': "6", '⁷': "7", '⁸': "8", '⁹': "9", '⁻': "-"}
@@ -201,22 +230,26 @@ func canonical(s string) string {
 	return b.String()
 }
 
-// Pretty is the unit as printed: "kN·m", "m/s²".
+// Pretty is the unit as printed: "kN·m", "m/s²", "m^0.9".
 func (u Unit) Pretty() string {
 	var b strings.Builder
-	up := false
-	for _, r := range u.Text {
-		switch {
-		case r == '^':
-			up = true
-		case r == '*':
+	for i := 0; i < len(u.Text); i++ {
+		switch c := u.Text[i]; c {
+		case '*':
 			b.WriteRune('·')
-			up = false
-		case up && strings.ContainsRune("0123456789-", r):
-			b.WriteRune([]rune("⁰¹²³⁴⁵⁶⁷⁸⁹⁻")[strings.IndexRune("0123456789-", r)])
+		case '^':
+			j := i + 1
+			for j < len(u.Text) && strings.IndexByte("+-.0123456789", u.Text[j]) >= 0 {
+				j++
+			}
+			if n, err := strconv.Atoi(u.Text[i+1 : j]); err == nil {
+				b.WriteString(raised(n))
+			} else {
+				b.WriteString(u.Text[i:j]) // a broken power stays: m^0.9
+			}
+			i = j - 1
 		default:
-			b.WriteRune(r)
-			up = false
+			b.WriteByte(c)
 		}
 	}
 	return b.String()

@@ -1,0 +1,30 @@
+package exhibit
+
+import (
+	"slices"
+	"strings"
+)
+
+// devices are names that Windows keeps for itself, with any extension.
+var devices = []string{"con", "prn", "aux", "nul", "com1", "com2", "com3", "com4", "com5", "com6", "com7", "com8", "com9",
+	"lpt1", "lpt2", "lpt3", "lpt4", "lpt5", "lpt6", "lpt7", "lpt8", "lpt9"}
+
+// FileStem makes a file name of an id: letters, digits, dot, underscore and
+// hyphen, not hidden, no device.
+func FileStem(id string) string {
+	s := strings.Map(func(r rune) rune {
+		switch {
+		case r >= 'a' && r <= 'z', r >= 'A' && r <= 'Z', r >= '0' && r <= '9', r == '.', r == '_', r == '-':
+			return r
+		}
+		return '_'
+	}, id)
+	if len(s) > 100 {
+		s = s[:100]
+	}
+	first, _, _ := strings.Cut(strings.ToLower(s), ".")
+	if s == "" || s[0] == '.' || s[0] == '-' || slices.Contains(devices, first) {
+		s = "_" + s
+	}
+	return s
+}
