@@ -1,0 +1,130 @@
+// Package standard holds design spectra of published standards, one file a
+// standard, all built into one plain form: a list of branches.
+//
+// A new standard is one new file with a Standard in it and one line in the list
+// Standards; the suite of the package then runs over it.
+package standard
+
+import (
+	"fmt"
+	"math"
+	"slices"
+
+	"quoin/calc/cite"
+)
+
+// Target is a pseudo-acceleration spectrum to design or scale for, as plain
+// encodable data. Periods are in s, ordinates in m/s².
+type Target struct {
+	Basis      string      // "ASCE/SEI 7-22", "table"
+	Spectrum   string      // "design", "MCE_R"; empty for a table
+	Damping    float64     // ratio that the ordinates hold for
+	Parameters []Parameter // in reading order: given, then derived
+	Branches   []Branch    // by rising period, each starting where the last ends
+	Corners    []Corner    // named periods where branches meet
+	Warnings   []Warning
+}
+
+// Parameter is one number or word that a spectrum stands on.
+type Parameter struct {
+	Symbol string
+	Value  float64 // SI; spectral values S_... are pure numbers, in g
+	Unit   string  // for display: "s"; empty: pure number
+	Text   string  // the word, where the parameter is one: "D"
+	Doc    string
+	Given  bool // false: derived
+	Ref    cite.Ref
+}
+
+// Branch is PSA = A0 + A1 T + B1/T + B2/T² for From <= T <= To.
+type Branch struct {
+	Name     string  // "plateau"
+	From, To float64 // s; To 0: without end
+	A0       float64 // m/s²
+	A1       float64 // m/s³
+	B1       float64 // m/s
+	B2       float64 // m
+	Ref      cite.Ref
+}
+
+// Corner is a named period.
+type Corner struct {
+	Symbol string // "T_S"
+	T      float64
+}
+
+// Warning is something that the reader of a spectrum must know.
+type Warning struct {
+	Code, Text string
+	Ref        cite.Ref
+}
+
+// At is the ordinate of the branch, m/s², with no look at its ends.
+func (b Branch) At(T float64) float64 {
+	y := b.A0 + b.A1*T
+	if b.B1 != 0 {
+		y += b.B1 / T
+	}
+	if b.B2 != 0 {
+		y += b.B2 / (T * T)
+	}
+	return y
+}
+
+// PSA is the pseudo-acceleration at period T >= 0, m/s². A spectrum from a
+// table is never read beyond its ends.
+func (t *Target) PSA(T float64) (float64, error) {
+	b, err := t.BranchAt(T)
+	if err != nil {
+		return 0, err
+	}
+	return b.At(T), nil
+}
+
+// BranchAt is the branch that holds period T; where two meet, the one below.
+func (t *Target) BranchAt(T float64) (Branch, error) {
+	if len(t.Branches) == 0 {
+		panic("standard: a target without branches")
+	}
+	if math.IsNaN(T) || math.IsInf(T, 0) || T < 0 {
+		return Branch{}, fmt.Errorf("a spectrum is read at a finite period from 0 up, not at %v s", T)
+	}
+	from, to := t.Range()
+	if T < from || T > to {
+		return Branch{}, fmt.Errorf("period %v s lies outside the spectrum, which runs from %v s to %v s", T, from, to)
+	}
+	i := slices.IndexFunc(t.Branches, func(b Branch) bool { return b.To == 0 || T <= b.To })
+	return t.Branches[i], nil
+}
+
+// Range is the first and the last period of the spectrum, s; the last is
+// infinite where the standard sets no end.
+func (t *Target) Range() (from, to float64) {
+	to = t.Branches[len(t.Branches)-1].To
+	if to == 0 {
+		to = math.Inf(1)
+	}
+	return t.Branches[0].From, to
+}
+
+// Series is PSA at each period, m/s².
+func (t *Target) Series(periods []float64) ([]float64, error) {
+	out := make([]float64, len(periods))
+	for i, T := range periods {
+		y, err := t.PSA(T)
+		if err != nil {
+			return nil, err
+		}
+		out[i] = y
+	}
+	return out, nil
+}
+
+// Parameter returns the parameter with this symbol.
+func (t *Target) Parameter(symbol string) (Parameter, bool) {
+	i := slices.IndexFunc(t.Parameters, func(p Parameter) bool { return p.Symbol == symbol })
+	if i < 0 {
+		return Parameter{}, false
+	}
+	return t.Parameters[i], true
+}
