@@ -1,0 +1,130 @@
+package block
+
+import (
+	"math"
+	"strconv"
+
+	"quoin/calc/cite"
+	"quoin/calc/document/field"
+	"quoin/calc/exhibit"
+	"quoin/calc/modal"
+	"quoin/calc/quantity"
+	"quoin/calc/structure"
+)
+
+var modesKind = Kind{
+	Name:    "modes",
+	Doc:     "periods and mode shapes of a structure",
+	Makes:   "modes",
+	New:     func() Body { return &modes{} },
+	Product: func() any { return &modal.Modes{} },
+	Exports: []Export{
+		{"T", "periods, longest first", "s"},
+		{"omega", "circular frequencies", "1/s"},
+		{"gamma", "participation factors, belonging to phi", ""},
+		{"mass_ratio", "effective mass of each mode as a fraction of the total mass", ""},
+		{"mass_sum", "running sum of the mass ratios", ""},
+		{"phi", "mode shapes: one row a mode, lowest level first, largest component +1", ""},
+	},
+}
+
+func chopra() cite.Ref { return cite.To("Chopra", "") }
+
+type modes struct {
+	common
+	Structure field.Field `name:"structure" is:"block" of:"structure" need:"yes" doc:"the name of a structure block"`
+	Count     field.Field `name:"count" is:"number" must:"whole" doc:"number of modes; all, if not given"`
+}
+
+// Run solves the eigenproblem.
+func (b *modes) Run(r *Run) {
+	m := r.Product(b.Structure.Text()).(*structure.Model)
+	count := int(b.Count.SI())
+	if count > m.Freedoms() {
+		r.Fail(b.Count, "bounds", "count is %d, %s has %d modes", count, b.Structure.Text(), m.Freedoms())
+		return
+	}
+	if count == 0 {
+		count = m.Freedoms()
+		r.Echo.Rows = append(r.Echo.Rows, exhibit.EchoRow{Field: "count", Label: "count", Value: plain(strconv.Itoa(count)), Default: true})
+	}
+	s, err := modal.Solve(m, count)
+	if err != nil {
+		r.Fail(b.Structure, "modes", "%s", err)
+		return
+	}
+	r.Made = s
+	r.Export("T", quantity.List(s.T, seconds, nil))
+	r.Export("omega", quantity.List(s.Omega, perTime, nil))
+	r.Export("gamma", quantity.List(s.Gamma, pure, nil))
+	r.Export("mass_ratio", quantity.List(s.MassRatio, pure, nil))
+	r.Export("mass_sum", quantity.List(s.MassSum, pure, nil))
+	phi := quantity.Value{Shape: quantity.Rows, Width: m.Freedoms(), Labels: m.Levels}
+	for _, row := range s.Phi {
+		phi.SI = append(phi.SI, row...)
+	}
+	r.Export("phi", phi)
+
+	r.Explain("Undamped free vibration. Shapes are scaled so that the component of largest magnitude is +1; participation factors belong to that scale. Mass ratios are fractions of the total mass of the model.")
+	r.Equation(`K\phi_n = \omega_n^2 M\phi_n,\qquad T_n = 2\pi/\omega_n`, "natural frequencies and shapes", chopra())
+	r.Equation(`\Gamma_n = \frac{L_n}{M_n},\quad L_n = \phi_n^\mathrm{T} M r,\quad M_n = \phi_n^\mathrm{T} M \phi_n,\quad \frac{M_n^*}{\sum m} = \frac{L_n^2}{M_n \sum m}`, "participation factor and effective mass ratio; r is the displacement of the levels for a unit displacement of the ground", chopra())
+
+	t := exhibit.Table{ID: r.Name + "-modes", Caption: Lines(&b.common, "Modes of "+b.Structure.Text()), Columns: []exhibit.Column{Words("mode"), Col("period T", seconds), Col("frequency", hertz), Col("omega", perTime),
+		Col("participation factor", pure), Col("mass ratio", percent), Col("sum", percent)}}
+	for i := range s.T {
+		id := func(name string) string { return r.ID(name) + "[" + strconv.Itoa(i+1) + "]" }
+		num := func(name string, x float64, u quantity.Unit) exhibit.Cell {
+			return exhibit.Cell{Numbers: []exhibit.Number{{Value: x, Unit: u, ID: id(name)}}}
+		}
+		t.Rows = append(t.Rows, []exhibit.Cell{{Text: strconv.Itoa(i + 1)}, num("T", s.T[i], seconds), Cell(1/s.T[i], hertz), num("omega", s.Omega[i], perTime),
+			num("gamma", s.Gamma[i], pure), num("mass_ratio", s.MassRatio[i], percent), num("mass_sum", s.MassSum[i], percent)})
+	}
+	r.Table(t)
+	shapes := exhibit.Table{ID: r.Name + "-shapes", Caption: "Mode shapes, highest level on top", Columns: []exhibit.Column{Words("level"), Col("elevation", unitsOf(r.System()).length)}}
+	for i := range s.T {
+		shapes.Columns = append(shapes.Columns, Col("mode "+strconv.Itoa(i+1), pure))
+	}
+	for l := len(m.Levels) - 1; l >= 0; l-- {
+		row := []exhibit.Cell{{Text: m.Levels[l]}, Cell(m.H[l], unitsOf(r.System()).length)}
+		for i := range s.T {
+			row = append(row, Cell(s.Phi[i][l], pure))
+		}
+		shapes.Rows = append(shapes.Rows, row)
+	}
+	r.Table(shapes)
+	b.figure(r, s)
+	r.Crosscheck("residual of the eigenproblem", s.Residual, 1e-9)
+	r.Crosscheck("orthogonality of the shapes with respect to mass", s.Orthogonality, 1e-9)
+	r.Crosscheck("the first period found again by inverse iteration differs by", relative(s.RayleighT1, s.T[0]), 1e-6)
+	if last := s.MassSum[len(s.MassSum)-1]; last < 0.90 {
+		r.Warn("mass-sum", "the %d modes hold %s %% of the mass, less than 90 %%", count, quantity.Format(100*last, 3))
+		r.Caution("mass-sum")
+	}
+}
+
+// relative is how far a lies from b, in parts of b.
+func relative(a, b float64) float64 {
+	if a == b {
+		return 0
+	}
+	return math.Abs((a - b) / b)
+}
+
+// figure draws up to four shapes side by side, the base included.
+func (b *modes) figure(r *Run, s *modal.Modes) {
+	m := s.Model
+	u := unitsOf(r.System())
+	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Mode shapes of "+b.Structure.Text()), Beside: true, Alt: "Shapes of the first modes over the height of the structure, one panel each."}
+	y := levelAxis(m.Levels, m.H, u.length)
+	one := 1.0
+	minus := -1.0
+	for i := range min(len(s.T), 4) {
+		shape, h := append([]float64{0}, s.Phi[i]...), append([]float64{0}, m.H...)
+		fig.Panels = append(fig.Panels, exhibit.Panel{
+			Title: "mode " + strconv.Itoa(i+1) + ": " + quantity.Format(s.T[i], 3) + " s, " + quantity.Format(100*s.MassRatio[i], 3) + " %",
+			X:     exhibit.Axis{Label: "shape", Min: &minus, Max: &one, Symmetric: true}, Y: y,
+			Series: []exhibit.FigSerie{{X: shape, Y: h, Role: exhibit.Data, Dots: true}},
+		})
+	}
+	r.Figure(fig)
+}

@@ -1,0 +1,164 @@
+package block
+
+import (
+	"fmt"
+	"strings"
+
+	"quoin/calc/cite"
+	"quoin/calc/diag"
+	"quoin/calc/document/field"
+	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
+)
+
+// Env is what a block sees of the document; package document implements it.
+type Env interface {
+	// System is the unit system of the package.
+	System() quantity.System
+	// Product is the product of a block referred to; it is there and of the
+	// right kind, or the block does not run.
+	Product(name string) any
+	// Read opens a file named in the document, relative to the file that names
+	// it. Its error is fit for a reader.
+	Read(path, role string) (data []byte, full string, err error)
+	// Curves are the computed series whose id is this, or begins with it and "@".
+	Curves(id string) []exhibit.Curve
+	// KindOf is the kind of a block.
+	KindOf(name string) string
+}
+
+// Named is an exported value.
+type Named struct {
+	Name  string
+	Value quantity.Value
+	Doc   string
+}
+
+// Result is what the run of a block gives. It is plain data but for the product.
+type Result struct {
+	Echo        exhibit.Echo
+	Inputs      []exhibit.Item // further inputs: tables
+	Method      []exhibit.Item
+	Results     []exhibit.Item
+	Values      []Named
+	Series      []exhibit.Curve
+	Made        any // the product
+	Warnings    []string
+	Cautions    []string // keys of the document's list
+	Refs        []cite.Ref
+	Assumptions []exhibit.Assumption
+	References  []exhibit.Reference
+	Diags       diag.List
+}
+
+// Run is one run of one block: what it sees, and what it gives.
+type Run struct {
+	Env
+	Name  string
+	Kind  Kind
+	Place diag.Range // of the block's info string
+	Result
+}
+
+// Fail reports an error at a field.
+func (r *Run) Fail(f field.Field, code, format string, args ...any) *diag.Diagnostic {
+	at := f.At
+	if at.Line == 0 {
+		at = r.Place
+	}
+	return r.Diags.Errorf(code, at, format, args...)
+}
+
+// Warn says something that travels with the numbers of the block: a footnote on
+// the page, a line on the terminal.
+func (r *Run) Warn(code, format string, args ...any) {
+	text := fmt.Sprintf(format, args...)
+	r.Warnings = append(r.Warnings, text)
+	r.Diags.Warnf(code, r.Place, "%s: %s", r.Name, text)
+}
+
+// Caution triggers a sentence of the limitations section.
+func (r *Run) Caution(key string) { r.Cautions = append(r.Cautions, key) }
+
+// Export names a value.
+func (r *Run) Export(name string, v quantity.Value) {
+	e, ok := r.Kind.Export(name)
+	if !ok {
+		panic("block: " + r.Kind.Name + " exports no " + name)
+	}
+	r.Values = append(r.Values, Named{Name: name, Value: v, Doc: e.Doc})
+}
+
+// Number exports an SI number shown in a unit.
+func (r *Run) Number(name string, si float64, unit quantity.Unit) {
+	r.Export(name, quantity.Scalar(si, unit))
+}
+
+// Curve adds a series NAME.what to the results.
+func (r *Run) Curve(what string, x []float64, xu quantity.Unit, y []float64, yu quantity.Unit) string {
+	id := r.Name + "." + what
+	r.Series = append(r.Series, exhibit.Curve{ID: id, X: quantity.List(x, xu, nil), Y: quantity.List(y, yu, nil)})
+	return id
+}
+
+// Explain adds a paragraph to the method; TeX stands between dollar signs.
+func (r *Run) Explain(text string, refs ...cite.Ref) {
+	p := exhibit.Prose{Kind: exhibit.Paragraph}
+	for i, part := range strings.Split(text, "$") {
+		kind := exhibit.Text
+		if i%2 == 1 {
+			kind = exhibit.Math
+		}
+		if part != "" {
+			p.Children = append(p.Children, exhibit.Prose{Kind: kind, Text: part})
+		}
+	}
+	r.Method = append(r.Method, exhibit.Item{Prose: []exhibit.Prose{p}})
+	r.Refs = append(r.Refs, refs...)
+}
+
+// Equation adds an equation of the method, in TeX, with its source.
+func (r *Run) Equation(tex, description string, ref cite.Ref) {
+	r.Method = append(r.Method, exhibit.Item{Equation: &exhibit.Equation{TeX: tex, Description: description, Ref: &ref}})
+	r.Refs = append(r.Refs, ref)
+}
+
+// Figure adds a figure to the results.
+func (r *Run) Figure(f exhibit.Figure) {
+	r.Results = append(r.Results, exhibit.Item{Figure: &f})
+}
+
+// Table adds a table to the results.
+func (r *Run) Table(t exhibit.Table) {
+	r.Results = append(r.Results, exhibit.Item{Table: &t})
+}
+
+// ID is the registry id of an export of this block.
+func (r *Run) ID(name string) string { return r.Name + "." + name }
+
+// Shown is a displayed number of this block.
+func (r *Run) Shown(name string, si float64, unit quantity.Unit) exhibit.Number {
+	return exhibit.Number{Value: si, Unit: unit, ID: r.ID(name)}
+}
+
+// Col is a column of numbers.
+func Col(head string, unit quantity.Unit) exhibit.Column {
+	return exhibit.Column{Head: head, Unit: unit, Right: true}
+}
+
+// Words is a column of texts.
+func Words(head string) exhibit.Column { return exhibit.Column{Head: head} }
+
+// Cell is a cell with one number.
+func Cell(si float64, unit quantity.Unit) exhibit.Cell {
+	return exhibit.Cell{Numbers: []exhibit.Number{{Value: si, Unit: unit}}}
+}
+
+// Lines is the rule of which caption a figure or table gets: the block's own, or
+// this one.
+func Lines(c *common, text string) string {
+	if c.Caption.Given {
+		return c.Caption.Text() + ": " + strings.ToLower(text[:1]) + text[1:]
+	}
+	return text
+}

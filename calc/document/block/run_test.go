@@ -1,0 +1,26 @@
+package block
+
+import (
+	"math"
+	"testing"
+)
+
+// TestCrosscheck: a residual up to its limit is shown, beyond it warned of, and
+// one that is no number ends the block.
+func TestCrosscheck(t *testing.T) {
+	for _, c := range []struct {
+		residual         float64
+		warnings, errors int
+	}{{0, 0, 0}, {1e-6, 0, 0}, {1.01e-6, 1, 0}, {math.Inf(1), 0, 1}, {math.NaN(), 0, 1}} {
+		r := &Run{Name: "rs"}
+		r.Crosscheck("differ by", 1e-9, 1e-6)
+		r.Crosscheck("differ by", c.residual, 1e-6)
+		failed := 0
+		if r.Diags.HasErrors() {
+			failed = 1
+		}
+		if len(r.Warnings) != c.warnings || failed != c.errors || len(r.Results) != 1 {
+			t.Errorf("residual %v: warnings %v, diagnostics %v, results %v", c.residual, r.Warnings, r.Diags, r.Results)
+		}
+	}
+}

@@ -1,0 +1,250 @@
+package block
+
+import (
+	"errors"
+	"strings"
+
+	"quoin/calc/document/field"
+	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
+	"quoin/calc/structure"
+)
+
+var structureKind = Kind{
+	Name:    "structure",
+	Doc:     "a planar building by storeys, lowest first: rigid floors, storeys that deform in shear",
+	Makes:   "structure",
+	New:     func() Body { return &building{} },
+	Product: func() any { return &structure.Model{} },
+	Exports: []Export{
+		{"weight", "seismic weight, the sum over the levels", "N"},
+		{"mass", "seismic mass, the sum over the levels", "kg"},
+		{"h_n", "elevation of the highest level above the base", "m"},
+		{"w", "seismic weight at each level", "N"},
+		{"m", "seismic mass at each level", "kg"},
+		{"h", "elevation of each level above the base", "m"},
+		{"h_s", "height of each storey", "m"},
+		{"k_s", "lateral stiffness of each storey", "N/m"},
+		{"damping", "damping ratio, where given", ""},
+	},
+}
+
+type building struct {
+	common
+	Storeys []storeyFields `name:"storeys" doc:"the storeys, lowest first; or a CSV file with these columns"`
+	Damping field.Field    `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes"`
+}
+
+type storeyFields struct {
+	File      field.Field `name:"file" is:"file" short:"yes" doc:"a CSV file of storeys: head row with  level, height [m], weight [kN], stiffness [kN/m]"`
+	Level     field.Field `name:"level" is:"text" doc:"name of the level on top of the storey"`
+	Height    field.Field `name:"height" is:"length" must:"positive" doc:"height of the storey"`
+	Weight    field.Field `name:"weight" is:"force" must:"positive" hint:"a weight is a force (kN, kip); for a mass (t, kg) use the field mass" doc:"seismic weight at the level"`
+	Mass      field.Field `name:"mass" is:"mass" must:"positive" hint:"a mass is in t or kg; for a force (kN, kip) use the field weight" doc:"seismic mass at the level, in place of its weight"`
+	Stiffness field.Field `name:"stiffness" is:"stiffness" must:"positive" doc:"lateral stiffness of the storey"`
+}
+
+// Check sees that every storey has its fields.
+func (b *building) Check(c *Checks) {
+	if len(b.Storeys) == 0 {
+		c.Diags.Errorf("missing-field", c.Place, "the structure block needs the field storeys").WithHint("list the storeys, lowest first:  - {level: L1, height: 3.5 m, weight: 2000 kN, stiffness: 90 MN/m}")
+	}
+	for i := range b.Storeys {
+		s := &b.Storeys[i]
+		if s.File.Given {
+			continue
+		}
+		for _, need := range []struct {
+			name  string
+			given bool
+		}{{"level", s.Level.Given}, {"height", s.Height.Given}, {"weight or mass", s.Weight.Given || s.Mass.Given}, {"stiffness", s.Stiffness.Given}} {
+			if !need.given {
+				c.Fail(s.Level, "missing-field", "storey %d needs the field %s", i+1, need.name)
+			}
+		}
+		if s.Weight.Given && s.Mass.Given {
+			c.Fail(s.Mass, "weight-and-mass", "storey %d has both a weight and a mass", i+1).WithHint("give one; the other follows by g = 9.80665 m/s²")
+		}
+	}
+}
+
+// Run builds the model.
+func (b *building) Run(r *Run) {
+	var storeys []structure.Storey
+	var file field.Field
+	for i := range b.Storeys {
+		s := &b.Storeys[i]
+		if s.File.Given {
+			file = s.File
+			r.Used("storeys", "storeys", plain(s.File.Text()), "")
+			rows := r.storeysFrom(s.File)
+			if rows == nil {
+				return
+			}
+			storeys = append(storeys, rows...)
+			continue
+		}
+		storeys = append(storeys, structure.Storey{Level: s.Level.Text(), Height: s.Height.SI(), Weight: s.Weight.SI(), Mass: s.Mass.SI(), Stiffness: s.Stiffness.SI()})
+	}
+	model, err := structure.Shear(storeys, b.Damping.SI())
+	if err != nil {
+		at := b.Storeys[0].Level
+		if file.Given {
+			at = file
+		}
+		for _, e := range unjoin(err) {
+			r.Fail(at, "structure", "%s", e)
+		}
+		return
+	}
+	model.DampingGiven = b.Damping.Given
+	r.Made = model
+	r.Caution("linear")
+	r.Caution("fixed-base")
+	r.Caution("planar")
+	r.Caution("second-order")
+	b.results(r, model)
+}
+
+// unjoin splits joined errors.
+func unjoin(err error) []error {
+	var j interface{ Unwrap() []error }
+	if errors.As(err, &j) {
+		return j.Unwrap()
+	}
+	return []error{err}
+}
+
+// storeysFrom reads storeys from a CSV file.
+func (r *Run) storeysFrom(f field.Field) []structure.Storey {
+	s := r.readSheet(f, field.Field{}, field.Field{})
+	if s == nil {
+		return nil
+	}
+	level := s.find("level")
+	for _, c := range s.columns {
+		switch strings.ToLower(c.name) {
+		case "level", "height", "weight", "mass", "stiffness":
+		default:
+			r.Diags.Errorf("unknown-column", c.at, "a table of storeys has no column %s", c.name).WithHint("its columns are level, height, weight or mass, stiffness")
+			return nil
+		}
+	}
+	if level == nil {
+		r.Fail(f, "missing-column", "%s has no column level", s.path).WithHint("%s", s.names())
+		return nil
+	}
+	out := make([]structure.Storey, len(level.cells))
+	for i, c := range level.cells {
+		out[i].Level = c.text
+	}
+	found := map[string]bool{}
+	for _, col := range []struct {
+		name string
+		dim  quantity.Dim
+		set  func(*structure.Storey, float64)
+	}{
+		{"height", quantity.Length, func(s *structure.Storey, x float64) { s.Height = x }},
+		{"weight", quantity.Force, func(s *structure.Storey, x float64) { s.Weight = x }},
+		{"mass", quantity.Mass, func(s *structure.Storey, x float64) { s.Mass = x }},
+		{"stiffness", quantity.Stiffness, func(s *structure.Storey, x float64) { s.Stiffness = x }},
+	} {
+		c := s.find(col.name)
+		if c == nil {
+			continue
+		}
+		x, _, ok := r.numbers(c, col.dim)
+		if !ok {
+			return nil
+		}
+		found[col.name] = true
+		for i, v := range x {
+			if !(v > 0) {
+				r.Diags.Errorf("bounds", c.cells[i].at, "%s must be greater than zero", col.name)
+				return nil
+			}
+			col.set(&out[i], v)
+		}
+	}
+	if !found["height"] || !found["stiffness"] || found["weight"] == found["mass"] {
+		r.Fail(f, "missing-column", "%s needs the columns level, height, stiffness, and one of weight and mass", s.path).WithHint("%s", s.names())
+		return nil
+	}
+	return out
+}
+
+func (b *building) results(r *Run, m *structure.Model) {
+	u := unitsOf(r.System())
+	r.Number("weight", m.Weight, u.force)
+	r.Number("mass", m.TotalMass, u.mass)
+	r.Number("h_n", m.Hn, u.length)
+	vector := func(name string, x []float64, unit quantity.Unit) { r.Export(name, quantity.List(x, unit, m.Levels)) }
+	vector("w", m.W, u.force)
+	vector("m", m.Mass, u.mass)
+	vector("h", m.H, u.length)
+	vector("h_s", m.Hs, u.length)
+	vector("k_s", m.Ks, u.stiffness)
+	if m.DampingGiven {
+		r.Number("damping", m.Damping, percent)
+		r.Caution("damping")
+	}
+	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storeys of "+r.Name+", highest on top"), Columns: []exhibit.Column{Words("level"), Col("elevation", u.length), Col("storey height", u.length),
+		Col("seismic weight", u.force), Col("mass", u.mass), Col("storey stiffness", u.stiffness)}}
+	for i := len(m.Levels) - 1; i >= 0; i-- {
+		t.Rows = append(t.Rows, []exhibit.Cell{{Text: m.Levels[i]}, Cell(m.H[i], u.length), Cell(m.Hs[i], u.length), Cell(m.W[i], u.force), Cell(m.Mass[i], u.mass), Cell(m.Ks[i], u.stiffness)})
+	}
+	total := []exhibit.Cell{{Text: "total", Strong: true}, {}, {}, {Numbers: []exhibit.Number{r.Shown("weight", m.Weight, u.force)}, Strong: true}, {Numbers: []exhibit.Number{r.Shown("mass", m.TotalMass, u.mass)}, Strong: true}, {}}
+	t.Rows = append(t.Rows, total)
+	r.Inputs = append(r.Inputs, exhibit.Item{Table: &t})
+	r.Explain("A shear building: rigid floors, one lateral freedom a level in direction x, storey $i$ under level $i$ carrying the shear $k_i (u_i - u_{i-1})$. Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$. The base is fixed.")
+	r.Equation(`K_{ii} = k_i + k_{i+1},\quad K_{i,i+1} = -k_{i+1},\quad M_{ii} = m_i`, "stiffness and mass matrices, levels counted from the lowest", chopra())
+	b.drawing(r, m)
+}
+
+// drawing shows the model: levels over elevation, weights beside them.
+func (b *building) drawing(r *Run, m *structure.Model) {
+	u := unitsOf(r.System())
+	axis := levelAxis(m.Levels, m.H, u.length)
+	stiff := storeySteps(m.H, m.Ks)
+	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Seismic weight at each level of "+r.Name+" and stiffness of each storey"), Beside: true,
+		Alt: "Two profiles over the height of the building: seismic weight by level and lateral stiffness by storey.",
+		Panels: []exhibit.Panel{
+			{Title: "seismic weight", X: exhibit.Axis{Label: "w", Unit: u.force, Min: zero()}, Y: axis, Series: stems(m)},
+			{Title: "storey stiffness", X: exhibit.Axis{Label: "k", Unit: u.stiffness, Min: zero()}, Y: axis, Series: []exhibit.FigSerie{{Label: "", X: stiff.x, Y: stiff.y, Role: exhibit.Data}}},
+		}}
+	r.Figure(fig)
+}
+
+// levelAxis is the axis of a profile: level names at their elevations h, m, over
+// the base.
+func levelAxis(levels []string, h []float64, unit quantity.Unit) exhibit.Axis {
+	names := []exhibit.TickName{{At: 0, Name: "base"}}
+	for i, l := range levels {
+		names = append(names, exhibit.TickName{At: h[i], Name: l})
+	}
+	return exhibit.Axis{Label: "level", Unit: unit, Min: zero(), Names: names}
+}
+
+// stems draws the weight of each level by itself: a line from the axis to a dot.
+func stems(m *structure.Model) []exhibit.FigSerie {
+	out := make([]exhibit.FigSerie, len(m.W))
+	for i, w := range m.W {
+		out[i] = exhibit.FigSerie{X: []float64{0, w}, Y: []float64{m.H[i], m.H[i]}, Role: exhibit.Data, Dots: true}
+	}
+	return out
+}
+
+// steps are the corners of a profile that is constant over each storey.
+type steps struct{ x, y []float64 }
+
+// storeySteps makes a stepped profile from the base up.
+func storeySteps(h, v []float64) steps {
+	var s steps
+	foot := 0.0
+	for i := range v {
+		s.x = append(s.x, v[i], v[i])
+		s.y = append(s.y, foot, h[i])
+		foot = h[i]
+	}
+	return s
+}

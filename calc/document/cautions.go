@@ -1,0 +1,37 @@
+package document
+
+// sentence is one caution: a key that blocks trigger it by, and what is printed.
+type sentence struct{ key, text string }
+
+// standing statements are printed in every package; nothing turns them off.
+var standing = []sentence{
+	{"responsibility", "This is a calculation aid. The licensed engineer in responsible charge answers for its use and for the adequacy of the design; no result relieves anyone of that."},
+	{"law", "The law, the adopted code with its local amendments, and the decisions of the authority having jurisdiction govern over anything printed here. The editions used are listed on the cover and in the references."},
+	{"scope", "Only what is stated was calculated. Anything not listed was not checked."},
+	{"inputs", "Results hold only for the inputs echoed in this package and for this revision. A printed copy may be superseded: ask the holder of the record."},
+	{"program", "The program and its version are named in the register of software. That its own tests pass does not prove it fit for this structure: verify results by independent means."},
+	{"not-for", "Not for decisions in an emergency, for placarding occupancy, for nuclear or dam safety without a qualifying quality programme, nor as the only basis of construction."},
+}
+
+// triggered sentences are printed where a calculation gives cause, in this order.
+var triggered = []sentence{
+	{"demonstration", "Invented data: this package contains ground motion that was made up for demonstration. It must not be used for any project."},
+	{"open-assumption", "Assumptions are open. Until each is verified the results depending on them are not for construction."},
+	{"linear", "Linear elastic analysis. Cracking, yielding, uplift and pounding are not represented."},
+	{"reduced", "The elastic response is divided by a code factor (R/I_e or the like). Inelastic demand, residual drift and collapse are not evaluated."},
+	{"fixed-base", "The base is fixed. Flexibility of the foundation and interaction with the soil are not modelled; periods and drifts may differ."},
+	{"planar", "A planar model with one freedom a level and rigid floors. Torsion, flexibility of the floors in their plane and local modes are not captured; neither inherent nor accidental torsion is included."},
+	{"second-order", "Second-order (P-delta) effects are not included in the modal response."},
+	{"damping", "Viscous damping stands for all dissipation. The ratio is an assumption of the author, and results scale with it."},
+	{"combined", "Modal combinations are estimates of maxima. Combined values carry no sign and do not act at one time; never derive one combined quantity from another (drifts are combined mode by mode)."},
+	{"close-modes", "Square-root-of-sum-of-squares combination is used although modes lie within 10 % of each other in frequency: the result may be unsafe. Use the complete quadratic combination."},
+	{"mass-sum", "The modes used hold less than 90 % of the mass: storey forces, mainly low in the structure, are underestimated."},
+	{"unprocessed", "Records are used as given, with the scale stated: no baseline correction and no filter was applied here. Velocity, displacement and long periods depend on the processing they had before."},
+	{"usable-period", "A period beyond the usable range stated for a record is used: long-period ordinates of that record are unreliable."},
+	{"coarse-step", "The sampling of a record is coarse for the shortest periods (period below ten steps): high-frequency response is not resolved."},
+	{"short-record", "A record is short for the longest periods: their response may not have built up."},
+	{"scaled", "A record is scaled by a factor outside 0.25 to 4: its character is no longer that of the recorded motion."},
+	{"few-motions", "Response to single records is shown. A few motions do not give a statistical basis; codes ask for a suite of them."},
+	{"two-period", "The two-period design spectrum of ASCE/SEI 7-22 is permitted where the multi-period one is not available, within the limits of its chapter 11; confirm that it may be used at this site and for this procedure."},
+	{"table-target", "A design spectrum was read from a table: it is interpolated linearly between its points and never used beyond them. Its source and damping are the author's statement."},
+}

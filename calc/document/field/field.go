@@ -1,0 +1,322 @@
+package field
+
+import (
+	"math"
+	"reflect"
+	"strings"
+
+	"quoin/calc/diag"
+	"quoin/calc/document/formula"
+	"quoin/calc/expr"
+	"quoin/calc/quantity"
+)
+
+// Field is one field of a block. Its struct tag says what it takes:
+//
+//	name     the word in the document
+//	is       text, file, name, block, series, choice, a dimension (number,
+//	         length, mass, time, velocity, acceleration, force, stiffness, any)
+//	of       choice: the words, by |; block: the products, by |
+//	many     "yes": a list, or one quoted vector
+//	need     "yes": must be given
+//	default  the text used when it is not given
+//	must     positive, not-negative, fraction, whole (by blanks)
+//	show     the unit it is echoed in: SI|US by a bar, "small" for displacements
+//	label    in words, for the echo; doc: a line for the reference
+//	hint     what to say when the dimension is wrong
+//	short    "yes": a scalar in place of the mapping sets this field
+type Field struct {
+	Given   bool
+	Written string // as in the source, or the default
+	At      diag.Range
+	List    []Item         // texts (one unless many)
+	Tree    *expr.Node     // one expression, evaluated
+	Trees   []*expr.Node   // of a YAML list of expressions
+	Value   quantity.Value // of a quantity, once resolved
+}
+
+// Item is one text of a field.
+type Item struct {
+	Text string
+	At   diag.Range
+}
+
+// Text is the text of a text field.
+func (f Field) Text() string {
+	if len(f.List) == 0 {
+		return ""
+	}
+	return f.List[0].Text
+}
+
+// Texts are the texts of a field with many.
+func (f Field) Texts() []string {
+	out := make([]string, len(f.List))
+	for i, it := range f.List {
+		out[i] = it.Text
+	}
+	return out
+}
+
+// Set tells whether there is a value, given or by default.
+func (f Field) Set() bool { return f.Given || f.Written != "" }
+
+// SI is the number of a resolved quantity, 0 when there is none.
+func (f Field) SI() float64 {
+	if len(f.Value.SI) == 0 {
+		return 0
+	}
+	return f.Value.SI[0]
+}
+
+// Spec is a field's tag, read.
+type Spec struct {
+	Name, Is, Label, Doc, Default, Hint string
+	Of, Must                            []string
+	Many, Need, Short                   bool
+	Show                                string
+	Dim                                 quantity.Dim
+	Quantity                            bool
+}
+
+var dimensions = map[string]quantity.Dim{
+	"number": quantity.None, "length": quantity.Length, "mass": quantity.Mass, "time": quantity.Time, "velocity": quantity.Velocity,
+	"acceleration": quantity.Acceleration, "force": quantity.Force, "stiffness": quantity.Stiffness, "frequency": quantity.PerTime, "any": quantity.None,
+}
+
+func specOf(tag reflect.StructTag) Spec {
+	s := Spec{Name: tag.Get("name"), Is: tag.Get("is"), Label: tag.Get("label"), Doc: tag.Get("doc"), Default: tag.Get("default"), Hint: tag.Get("hint"),
+		Many: tag.Get("many") == "yes", Need: tag.Get("need") == "yes", Short: tag.Get("short") == "yes", Show: tag.Get("show"), Must: strings.Fields(tag.Get("must"))}
+	if of := tag.Get("of"); of != "" {
+		s.Of = strings.Split(of, "|")
+	}
+	s.Dim, s.Quantity = dimensions[s.Is]
+	if s.Label == "" {
+		s.Label = strings.ReplaceAll(s.Name, "_", " ")
+	}
+	return s
+}
+
+// Unit is the unit a field is shown in when it was written without one.
+func (s Spec) Unit(sys quantity.System) quantity.Unit {
+	text := s.Show
+	if si, us, two := strings.Cut(s.Show, "|"); two {
+		if text = si; sys == quantity.US {
+			text = us
+		}
+	}
+	if text == "" {
+		return sys.Preferred(s.Dim)
+	}
+	return quantity.MustUnit(text)
+}
+
+// Visit calls do for every Field of a struct of fields, embedded and nested ones
+// included, in order.
+func Visit(fields any, do func(f *Field, s Spec)) {
+	visit(reflect.ValueOf(fields).Elem(), do)
+}
+
+// Top calls do for the fields that are not nested in a list or a group.
+func Top(fields any, do func(f *Field, s Spec)) {
+	for _, s := range slots(reflect.ValueOf(fields).Elem(), nil) {
+		if f, ok := s.value.Addr().Interface().(*Field); ok {
+			do(f, s.spec)
+		}
+	}
+}
+
+var fieldType = reflect.TypeFor[Field]()
+
+func visit(v reflect.Value, do func(*Field, Spec)) {
+	t := v.Type()
+	for i := range t.NumField() {
+		f := v.Field(i)
+		switch {
+		case t.Field(i).PkgPath != "" && !t.Field(i).Anonymous:
+		case f.Type() == fieldType:
+			do(f.Addr().Interface().(*Field), specOf(t.Field(i).Tag))
+		case f.Kind() == reflect.Struct:
+			visit(f, do)
+		case f.Kind() == reflect.Slice && f.Type().Elem().Kind() == reflect.Struct:
+			for j := range f.Len() {
+				visit(f.Index(j), do)
+			}
+		}
+	}
+}
+
+// Dep is a name that a block depends on.
+type Dep struct {
+	Path   string // "V", "m.T", "east"
+	Method bool
+	Block  []string // a reference to a block that makes one of these products; nil for values
+	Series bool
+	At     diag.Range
+}
+
+// Deps are all names the fields depend on.
+func Deps(fields any) []Dep {
+	var out []Dep
+	Visit(fields, func(f *Field, s Spec) {
+		for i, tree := range f.trees() {
+			for _, d := range formula.Deps(tree) {
+				out = append(out, Dep{Path: d.Path, Method: d.Method, At: f.spot(i, d.From, d.To)})
+			}
+		}
+		if !f.Given {
+			return
+		}
+		for _, it := range f.List {
+			switch s.Is {
+			case "block":
+				out = append(out, Dep{Path: formula.Normal(it.Text), Block: s.Of, At: it.At})
+			case "series":
+				out = append(out, Dep{Path: it.Text, Series: true, At: it.At})
+			}
+		}
+	})
+	return out
+}
+
+func (f *Field) trees() []*expr.Node {
+	if f.Tree != nil {
+		return []*expr.Node{f.Tree}
+	}
+	return f.Trees
+}
+
+// spot is the place of a stretch of the text of tree i.
+func (f *Field) spot(i, from, to int) diag.Range {
+	if i >= len(f.List) {
+		return f.At
+	}
+	return within(f.List[i].At, f.List[i].Text, from, to)
+}
+
+// within narrows a range to byte offsets of its text, where the text stands in
+// the file as it is.
+func within(at diag.Range, text string, from, to int) diag.Range {
+	width := at.EndColumn - at.Column
+	if from < 0 || to > len(text) || from > to || width != len([]rune(text)) {
+		return at
+	}
+	start := at.Column + len([]rune(text[:from]))
+	return diag.Range{File: at.File, Line: at.Line, Column: start, EndLine: at.Line, EndColumn: max(start+len([]rune(text[from:to])), start+1)}
+}
+
+// Resolve evaluates every quantity of the fields and checks its dimension and
+// bounds. It reports every error.
+func Resolve(fields any, scope formula.Scope) diag.List {
+	var diags diag.List
+	Visit(fields, func(f *Field, s Spec) { f.resolve(s, scope, &diags) })
+	return diags
+}
+
+// ResolveLiterals checks what needs no other block: for a block that will not
+// run, so that its other errors are told at once.
+func ResolveLiterals(fields any) diag.List {
+	var diags diag.List
+	Visit(fields, func(f *Field, s Spec) {
+		for _, tree := range f.trees() {
+			if len(formula.Deps(tree)) > 0 {
+				return
+			}
+		}
+		f.resolve(s, nil, &diags)
+	})
+	return diags
+}
+
+func (f *Field) resolve(s Spec, scope formula.Scope, diags *diag.List) {
+	if !s.Quantity || len(f.trees()) == 0 {
+		return
+	}
+	var parts []quantity.Value
+	for i, tree := range f.trees() {
+		v, findings := formula.Evaluate(tree, scope)
+		for _, is := range findings {
+			if d := report(diags, is, f.spot(i, is.From, is.To)); d.Severity == diag.Error {
+				return
+			}
+		}
+		if s.Is != "any" && !v.Dim.Is(s.Dim) {
+			hint := s.Hint
+			if hint == "" && v.Dim.Is(quantity.None) {
+				hint = "write the unit after the number, for instance " + s.Unit(quantity.SI).Pretty()
+			}
+			diags.Errorf("dimension", f.spot(i, 0, len(f.List[i].Text)), "%s must be %s, this is %s", s.Name, s.Dim.Name(), v.Dim.Name()).WithHint("%s", hint)
+			return
+		}
+		if !s.Many && v.Shape != quantity.Number {
+			diags.Errorf("shape", f.spot(i, 0, len(f.List[i].Text)), "%s must be one number, this is a vector of %d", s.Name, v.Len()).WithHint("take an item of it: [1] is the first")
+			return
+		}
+		if v.Shape == quantity.Rows || f.Tree == nil && v.Shape != quantity.Number {
+			diags.Errorf("shape", f.spot(i, 0, len(f.List[i].Text)), "an item of %s must be one number", s.Name)
+			return
+		}
+		parts = append(parts, v)
+	}
+	if len(parts) == 1 && (!s.Many || parts[0].Shape == quantity.Vector) {
+		f.Value = parts[0]
+	} else {
+		f.Value = quantity.Value{Dim: parts[0].Dim, Shape: quantity.Vector, Unit: parts[0].Unit}
+		for i, p := range parts {
+			if !p.Dim.Is(f.Value.Dim) {
+				diags.Errorf("dimension", f.spot(i, 0, len(f.List[i].Text)), "the items of %s differ in dimension: %s and %s", s.Name, f.Value.Dim.Name(), p.Dim.Name())
+				return
+			}
+			f.Value.SI = append(f.Value.SI, p.SI...)
+		}
+	}
+	bounds(f, s, diags)
+}
+
+// bounds checks the must of a field's values.
+func bounds(f *Field, s Spec, diags *diag.List) {
+	for i, x := range f.Value.SI {
+		for _, m := range s.Must {
+			wrong := ""
+			switch m {
+			case "positive":
+				if !(x > 0) {
+					wrong = "greater than zero"
+				}
+			case "not-negative":
+				if !(x >= 0) {
+					wrong = "zero or more"
+				}
+			case "fraction":
+				if !(x >= 0 && x <= 1) {
+					wrong = "between 0 and 1 (0 % and 100 %)"
+				}
+			case "whole":
+				if x != math.Trunc(x) || x < 1 || x > 1e6 {
+					wrong = "a whole number from 1 on"
+				}
+			}
+			if wrong != "" {
+				at := f.At
+				if len(f.List) == len(f.Value.SI) {
+					at = f.List[i].At
+				}
+				shown := quantity.Format(f.Value.Unit.From(x), quantity.Exact(f.Value.Unit.From(x)))
+				if u := f.Value.Unit.Pretty(); u != "" {
+					shown += " " + u
+				}
+				diags.Errorf("bounds", at, "%s must be %s, this is %s", s.Name, wrong, shown)
+				return
+			}
+		}
+	}
+}
+
+func report(diags *diag.List, is formula.Finding, at diag.Range) diag.Diagnostic {
+	d := diags.Errorf(is.Code, at, "%s", is.Summary)
+	if is.Warning {
+		d.Severity = diag.Warning
+	}
+	d.Hint = is.Hint
+	return *d
+}

@@ -1,0 +1,116 @@
+package document
+
+import (
+	"regexp"
+	"strings"
+	"time"
+
+	"quoin/calc/diag"
+	"quoin/calc/document/field"
+	"quoin/calc/document/markdown"
+	"quoin/calc/exhibit"
+)
+
+// frontMatter is the YAML at the head of the main file.
+type frontMatter struct {
+	Quoin     field.Field   `name:"quoin" is:"text" need:"yes" doc:"1: marks a calculation package"`
+	Title     field.Field   `name:"title" is:"text" need:"yes" doc:"the title of the calculation"`
+	Number    field.Field   `name:"number" is:"text" doc:"calculation number"`
+	Project   field.Field   `name:"project" is:"text" doc:"project"`
+	Client    field.Field   `name:"client" is:"text" doc:"client or owner"`
+	Subject   field.Field   `name:"subject" is:"text" doc:"what is calculated, in a line"`
+	Location  field.Field   `name:"location" is:"text" doc:"place of the project"`
+	Units     field.Field   `name:"units" is:"choice" of:"SI|US" default:"SI" doc:"the units results are shown in"`
+	Basis     field.Field   `name:"basis" is:"text" many:"yes" doc:"governing documents with edition"`
+	Prepared  signField     `name:"prepared" doc:"initials and date"`
+	Checked   signField     `name:"checked" doc:"initials and date of a second person"`
+	Approved  signField     `name:"approved" doc:"initials and date"`
+	Revisions []revisionRow `name:"revisions" doc:"the revision table, oldest first"`
+	Status    field.Field   `name:"status" is:"choice" of:"draft|for check|issued|superseded|void" default:"draft" doc:"state of the document"`
+	Paper     field.Field   `name:"paper" is:"choice" of:"A4|Letter" default:"A4" doc:"size of the printed sheets"`
+	Parts     field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
+}
+
+// signField is written as "RT 2031-03-02" or as a mapping.
+type signField struct {
+	Line     field.Field `name:"sign" is:"text" short:"yes" doc:"initials, then the date as YYYY-MM-DD"`
+	Initials field.Field `name:"initials" is:"text" doc:"initials"`
+	Date     field.Field `name:"date" is:"text" doc:"YYYY-MM-DD"`
+}
+
+type revisionRow struct {
+	Rev      field.Field `name:"rev" is:"text" need:"yes" doc:"letter or number of the revision"`
+	Date     field.Field `name:"date" is:"text" doc:"YYYY-MM-DD"`
+	Note     field.Field `name:"note" is:"text" doc:"reason of the revision"`
+	Prepared field.Field `name:"prepared" is:"text" doc:"initials"`
+	Checked  field.Field `name:"checked" is:"text" doc:"initials"`
+}
+
+func (f *frontMatter) decode(name string, md *markdown.File) diag.List {
+	var lines []field.Line
+	for i, t := range strings.Split(strings.TrimSuffix(md.Front, "\n"), "\n") {
+		lines = append(lines, field.Line{Text: strings.TrimSuffix(t, "\r"), Line: md.FrontLine + i, Column: 1})
+	}
+	at := diag.Range{File: name, Line: 1, Column: 1, EndLine: 1, EndColumn: 4}
+	n, diags := field.Parse(name, lines, at)
+	if diags.HasErrors() {
+		return diags
+	}
+	diags = append(diags, field.Decode(n, f, "the front matter", nil)...)
+	if f.Quoin.Given && f.Quoin.Text() != "1" {
+		diags.Errorf("front-matter-version", f.Quoin.At, "quoin must be 1, the version of the document language").
+			WithHint("this program reads version 1 only")
+	}
+	return diags
+}
+
+var isoDate = regexp.MustCompile(`^\d{4}-\d{2}-\d{2}$`)
+
+// date checks a date and gives it back.
+func date(f field.Field, diags *diag.List) string {
+	t := f.Text()
+	if t == "" {
+		return ""
+	}
+	if _, err := time.Parse(time.DateOnly, t); err != nil || !isoDate.MatchString(t) {
+		diags.Errorf("date", f.At, "%s is not a date", t).WithHint("write it as YYYY-MM-DD")
+	}
+	return t
+}
+
+// signature is a person, by initials or a short name, and a date that may be
+// missing; nobody is not a person.
+var (
+	signature = regexp.MustCompile(`^(?:\p{Latin}[.'’]?[ -]?){1,40}(?:[ ,]+\S*\d\S*)?$`)
+	nobody    = regexp.MustCompile(`(?i)^(pending|tbd|tbc|none|na|nobody|open|todo|no|yes|ok)\b`)
+)
+
+func (s signField) sign(diags *diag.List) exhibit.Sign {
+	if !s.Line.Given {
+		return exhibit.Sign{Initials: s.Initials.Text(), Date: date(s.Date, diags)}
+	}
+	if t := s.Line.Text(); t != "" && (!signature.MatchString(t) || nobody.MatchString(t) && !strings.ContainsAny(t, "0123456789")) {
+		diags.Errorf("sign", s.Line.At, "%q is no initials and date", s.Line.Text()).WithHint("write the initials of one person, then the date: MK 2031-03-02; leave it blank until it is done")
+		return exhibit.Sign{}
+	}
+	words := strings.FieldsFunc(s.Line.Text(), func(r rune) bool { return r == ' ' || r == ',' })
+	if len(words) > 1 {
+		if last := words[len(words)-1]; strings.ContainsAny(last, "0123456789") {
+			return exhibit.Sign{Initials: strings.Join(words[:len(words)-1], " "), Date: date(field.Field{At: s.Line.At, List: []field.Item{{Text: last}}}, diags)}
+		}
+	}
+	return exhibit.Sign{Initials: strings.Join(words, " ")}
+}
+
+func (f *frontMatter) meta(diags *diag.List) exhibit.Meta {
+	m := exhibit.Meta{
+		Title: f.Title.Text(), Number: f.Number.Text(), Project: f.Project.Text(), Client: f.Client.Text(),
+		Subject: f.Subject.Text(), Location: f.Location.Text(), Basis: f.Basis.Texts(),
+		Prepared: f.Prepared.sign(diags), Checked: f.Checked.sign(diags), Approved: f.Approved.sign(diags),
+		Status: f.Status.Text(), Paper: f.Paper.Text(),
+	}
+	for _, r := range f.Revisions {
+		m.Revision = append(m.Revision, exhibit.Revision{Rev: r.Rev.Text(), Date: date(r.Date, diags), Note: r.Note.Text(), Prepared: r.Prepared.Text(), Checked: r.Checked.Text()})
+	}
+	return m
+}

@@ -1,0 +1,71 @@
+package document
+
+import (
+	"slices"
+
+	"quoin/calc/cite"
+	"quoin/calc/exhibit"
+)
+
+// references makes the register of references, in order of key: the published
+// sources that are cited, and the document's own, whether cited or not.
+func (a *assembly) references() {
+	byKey := map[string]*exhibit.Reference{}
+	var order []string
+	for _, n := range a.nodes {
+		for _, r := range n.result.References {
+			byKey[r.Key] = &r
+			order = append(order, r.Key)
+		}
+	}
+	for _, ref := range a.refs {
+		r := byKey[ref.Key]
+		if r == nil {
+			s, ok := cite.Lookup(ref.Key)
+			if !ok {
+				continue
+			}
+			r = &exhibit.Reference{Key: s.Key, Text: s.Text}
+			byKey[ref.Key] = r
+			order = append(order, ref.Key)
+		}
+		r.Memory = r.Memory || ref.Memory
+		if ref.Clause != "" && !slices.Contains(r.Clauses, ref.Clause) {
+			r.Clauses = append(r.Clauses, ref.Clause)
+		}
+	}
+	slices.Sort(order)
+	for _, k := range order {
+		a.p.References = append(a.p.References, *byKey[k])
+	}
+}
+
+// cautions makes the limitations section: the standing statements, then what
+// this calculation triggered, in the order of the list.
+func (a *assembly) cautions() {
+	for _, c := range standing {
+		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Text: c.text})
+	}
+	by := map[string][]string{}
+	for _, n := range a.nodes {
+		for _, key := range n.result.Cautions {
+			if !slices.Contains(by[key], n.anchor) {
+				by[key] = append(by[key], n.anchor)
+			}
+		}
+	}
+	for _, as := range a.p.Assumptions {
+		if as.Status == "open" && !slices.Contains(by["open-assumption"], as.Anchor) {
+			by["open-assumption"] = append(by["open-assumption"], as.Anchor)
+		}
+	}
+	for _, c := range triggered {
+		if blocks, ok := by[c.key]; ok {
+			a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Text: c.text, Blocks: blocks})
+			delete(by, c.key)
+		}
+	}
+	for key := range by {
+		panic("document: a block triggers the caution " + key + ", which has no text")
+	}
+}
