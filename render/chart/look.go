@@ -1,0 +1,59 @@
+package chart
+
+import "quoin/calc/exhibit"
+
+// The look of figures: ink on paper, two axes, a light grid. Curves differ by dash
+// and thickness first, by colour second: a figure must read in one-bit black.
+const (
+	ink   = "#1c1b19"
+	soft  = "#625e56"
+	faint = "#8b857a"
+	grid  = "#e3ded2"
+	rule  = "#c9c3b6"
+	paper = "#fffdf8"
+	tie   = "#1d5a6c"
+	bad   = "#9c2f1b"
+
+	face    = "Label, Arial, sans-serif"
+	size    = 12.5 // px, of all text
+	leading = 14   // px, from line to line
+)
+
+// dashes by FigSerie.Dash: solid, long dash, dots, dash-dot.
+var dashes = [][]float64{nil, {7, 3}, {1.5, 2.6}, {8, 3, 1.5, 3}}
+
+// pen is how one curve is drawn.
+type pen struct {
+	color  string
+	width  float64
+	dash   []float64
+	z      int // higher lies on top
+	strong bool
+}
+
+// penOf is the pen of a series by its role, dash and width.
+func penOf(s exhibit.FigSerie) pen {
+	p := pen{color: ink, width: 1.5, z: 3}
+	switch s.Role {
+	case exhibit.Governing:
+		p = pen{color: tie, width: 2.8, z: 5, strong: true}
+	case exhibit.Secondary:
+		p = pen{color: faint, width: 0.7, z: 2}
+	case exhibit.Limit:
+		p = pen{color: bad, width: 1.8, dash: []float64{9, 4}, z: 4, strong: true}
+	default:
+		if s.Dash > 0 {
+			p.width = 1.1
+		}
+		if len(s.X) > 1000 {
+			p.width = 0.9
+		}
+	}
+	if s.Dash > 0 && s.Dash < len(dashes) {
+		p.dash = dashes[s.Dash]
+	}
+	if s.Width > 0 {
+		p.width = s.Width
+	}
+	return p
+}

@@ -1,0 +1,133 @@
+package ledger
+
+import (
+	"bytes"
+	"crypto/sha256"
+	"encoding/hex"
+	"encoding/json"
+	"fmt"
+	"io/fs"
+	"maps"
+	"slices"
+
+	"quoin/calc/exhibit"
+)
+
+// BuildFile is where a package says how it was built.
+const BuildFile = "inputs/build.json"
+
+// buildFacts is inputs/build.json: with the other inputs, all that is needed to
+// build the package again.
+type buildFacts struct {
+	Schema     int                `json:"schema"`
+	Main       string             `json:"main"`
+	Overrides  []exhibit.Override `json:"overrides"`
+	Commit     string             `json:"commit"`
+	CommitDate string             `json:"commit_date"`
+	Dirty      bool               `json:"dirty"`
+	Tool       string             `json:"tool"`
+}
+
+// Inputs is the inputs/ folder: files, by slash path relative to the root, and
+// inputs/build.json. It fails on a path that leads out of the root and on an
+// input that would take the place of build.json.
+func Inputs(files map[string][]byte, p *exhibit.Package) (map[string][]byte, error) {
+	out := make(map[string][]byte, len(files)+1)
+	for _, path := range slices.Sorted(maps.Keys(files)) {
+		if !fs.ValidPath(path) || path == "." {
+			return nil, fmt.Errorf("ledger: input path %q is not inside the root", path)
+		}
+		out["inputs/"+path] = files[path]
+	}
+	if _, ok := out[BuildFile]; ok {
+		return nil, fmt.Errorf("an input may not be called build.json at the root: the package keeps its own %s", BuildFile)
+	}
+	text, err := json.MarshalIndent(buildFacts{
+		Schema: Schema, Main: p.Provenance.Source, Overrides: append([]exhibit.Override{}, p.Provenance.Overrides...),
+		Commit: p.Provenance.Commit, CommitDate: p.Provenance.CommitDate, Dirty: p.Provenance.Dirty, Tool: p.Provenance.Tool,
+	}, "", "  ")
+	if err != nil {
+		return nil, fmt.Errorf("ledger: %w", err)
+	}
+	out[BuildFile] = append(text, '\n')
+	return out, nil
+}
+
+// Digest names a package by what it was built from: the SHA-256, in hexadecimal,
+// of one line for each file of inputs, in byte order of the paths,
+//
+//	<SHA-256 of the file in hexadecimal><two blanks><path>\n
+//
+// and a last line "tool <tool>\n". In the folder of a package that is
+//
+//	( find inputs -type f | LC_ALL=C sort | xargs -d '\n' sha256sum; echo "tool quoin 0.1.0" ) | sha256sum
+func Digest(inputs map[string][]byte, tool string) string {
+	h := sha256.New()
+	for _, path := range slices.Sorted(maps.Keys(inputs)) {
+		fmt.Fprintf(h, "%s  %s\n", hash(inputs[path]), path)
+	}
+	fmt.Fprintf(h, "tool %s\n", tool)
+	return hex.EncodeToString(h.Sum(nil))
+}
+
+func hash(b []byte) string {
+	sum := sha256.Sum256(b)
+	return hex.EncodeToString(sum[:])
+}
+
+// ManifestFile is what makes a folder a package of ours.
+const ManifestFile = "manifest.json"
+
+// manifestFormat stands in every manifest, so that no other program's
+// manifest.json is taken for ours.
+const manifestFormat = "quoin package"
+
+// ManifestFacts is manifest.json.
+type ManifestFacts struct {
+	Format string          `json:"format"` // "quoin package"
+	Schema int             `json:"schema"`
+	Tool   string          `json:"tool"`
+	Digest string          `json:"digest"` // see Digest
+	Files  []ManifestEntry `json:"files"`  // every other file, sorted by path
+}
+
+// ManifestEntry is one file of a package.
+type ManifestEntry struct {
+	Path   string `json:"path"`
+	SHA256 string `json:"sha256"`
+	Bytes  int    `json:"bytes"`
+}
+
+// Manifest is manifest.json for all, the other files of the package by path.
+func Manifest(all map[string][]byte, digest, tool string) []byte {
+	var files []ManifestEntry
+	for _, path := range slices.Sorted(maps.Keys(all)) {
+		if path != ManifestFile {
+			files = append(files, ManifestEntry{path, hash(all[path]), len(all[path])})
+		}
+	}
+	list, err := lines(files)
+	if err != nil {
+		panic(err.Error())
+	}
+	var o object
+	o.member("format", must(manifestFormat))
+	o.member("schema", must(Schema))
+	o.member("tool", must(tool))
+	o.member("digest", must(digest))
+	o.member("files", list)
+	return o.bytes()
+}
+
+// ReadManifest reads manifest.json; an error says that it is not one of ours.
+func ReadManifest(text []byte) (ManifestFacts, error) {
+	var m ManifestFacts
+	d := json.NewDecoder(bytes.NewReader(text))
+	if err := d.Decode(&m); err != nil {
+		return m, fmt.Errorf("%s cannot be read: %w", ManifestFile, err)
+	}
+	if m.Format != manifestFormat {
+		return m, fmt.Errorf("%s is not that of a package", ManifestFile)
+	}
+	return m, nil
+}

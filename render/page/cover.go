@@ -1,0 +1,216 @@
+package page
+
+import (
+	"strconv"
+	"strings"
+
+	"quoin/calc/exhibit"
+)
+
+// coverView is the head of the cover. What follows it, the boxes to sign, the
+// caution and the revisions, are items of their own: what does not fit goes on to
+// a further sheet.
+type coverView struct {
+	Status, Title, Subject string
+	Unsafe                 bool
+	Rows                   []coverRow
+}
+
+// coverRow is a row of what the cover says. Rest lines more stand at To.
+type coverRow struct {
+	Label   string
+	Lines   []coverLine
+	Rest    int
+	To      string
+	Listed  string   // where all are listed
+	Anchors []string // what they are about, whose sheets are named
+	Digest  bool
+}
+
+// coverLine is a text, and what is open.
+type coverLine struct{ Text, Open string }
+
+// titleChars is what a title may hold before it is cut: more is no title.
+const titleChars = 200
+
+// signView is the boxes to sign.
+type signView struct {
+	Prepared, Checked, Approved string
+	SamePerson                  bool
+}
+
+func (b *book) cover() []item {
+	m := b.p.Meta
+	status := strings.ToLower(strings.TrimSpace(m.Status))
+	v := coverView{Status: clip(strings.ToUpper(or(m.Status, "status not given")), 60), Title: clip(m.Title, titleChars), Subject: clip(m.Subject, titleChars),
+		Unsafe: status != "issued" && status != "for check", Rows: b.coverRows()}
+	high := 16.5 + 9.2*lines(v.Title, 38)
+	if v.Subject != "" {
+		high += 6 * lines(v.Subject, 90)
+	}
+	for _, r := range v.Rows {
+		high += r.high()
+	}
+	out := []item{{name: "cover", data: v, high: high, anchors: []string{"q-cover"}}, b.sign()}
+	if it, ok := b.shortCaution(); ok {
+		out = append(out, it)
+	}
+	out = append(out, chunked("revisions", m.Revision, func(r exhibit.Revision) float64 {
+		return 0.1 + 4.8*max(lines(r.Note, 48), lines(checkedText(r.Prepared, r.Checked), 14), lines(r.Prepared, 10), lines(r.Date, 12), lines(r.Rev, 6))
+	}, nil)...)
+	for i := range out {
+		if out[i].name == "revisions" {
+			out[i].high += 5
+		}
+	}
+	if len(b.p.Provenance.Overrides) > listed {
+		more := chunked("overrides", b.p.Provenance.Overrides, func(o exhibit.Override) float64 {
+			return 0.1 + 4.8*max(lines(o.Name, 28), lines(o.Text, 30), lines(o.Was, 30))
+		}, nil)
+		more[0].anchors = []string{"q-overrides"}
+		out = append(out, more...)
+	}
+	if len(m.Basis) > listed {
+		for i, s := range m.Basis {
+			it := item{name: "basis", data: s, high: 1.4 + lineHigh*lines(s, lineChars)}
+			if i == 0 {
+				it.name, it.high, it.anchors = "basis-first", it.high+10, []string{"q-basis"}
+			}
+			out = append(out, it)
+		}
+	}
+	return out
+}
+
+func (r coverRow) high() float64 {
+	high := 1.9
+	for _, l := range r.Lines {
+		chars := 78
+		if r.Digest {
+			chars = 88
+		}
+		text := l.Text + l.Open
+		if r.Listed != "" {
+			text += strings.Repeat("sheet 12, ", 1+len(r.Anchors))
+		}
+		high += 5.05 * lines(text, chars)
+	}
+	if r.Rest > 0 {
+		high += 5.05
+	}
+	return high
+}
+
+// coverRows is what the package is and what is open in it; a row lists a few things
+// and says where the rest stands.
+func (b *book) coverRows() []coverRow {
+	m := b.p.Meta
+	var out []coverRow
+	add := func(label string, list ...coverLine) *coverRow {
+		out = append(out, coverRow{Label: label, Lines: list})
+		return &out[len(out)-1]
+	}
+	given := func(label, text string) {
+		if strings.TrimSpace(text) != "" {
+			add(label, coverLine{Text: clip(text, titleChars)})
+		}
+	}
+	given("Calculation", or(m.Number, "not given"))
+	given("Project", or(m.Project, "not given"))
+	given("Client", m.Client)
+	given("Location", m.Location)
+	basis := add("Governing basis")
+	for i, s := range m.Basis {
+		if i < listed {
+			basis.Lines = append(basis.Lines, coverLine{Text: clip(s, titleChars)})
+		}
+	}
+	basis.Rest, basis.To = len(m.Basis)-len(basis.Lines), "q-basis"
+	if len(m.Basis) == 0 {
+		basis.Lines = []coverLine{{Open: "not given"}}
+	}
+	r := current(b.p)
+	revision := or(r.Rev, "none")
+	if r.Date != "" {
+		revision += ", " + r.Date
+	}
+	if r.Note != "" {
+		revision += ": " + r.Note
+	}
+	given("Revision", revision)
+	given("Source", sourceText(b.p))
+	checks := checkTally(b.p)
+	row := add("Checks", coverLine{Text: strconv.Itoa(checks.OK) + " OK", Open: checks.Failed})
+	row.Rest, row.To = checks.Rest, "q-checks"
+	row = add("Warnings", coverLine{Text: "none"})
+	if list := b.warnings(); len(list) > 0 {
+		row.Lines[0].Text, row.Listed = strconv.Itoa(len(list)), "q-warnings"
+		for _, w := range list[:min(len(list), 2*listed)] {
+			row.Anchors = append(row.Anchors, w.To)
+		}
+	}
+	assumptions := assumptionTally(b.p)
+	row = add("Assumptions", coverLine{Text: strconv.Itoa(assumptions.OK) + " verified", Open: assumptions.Failed})
+	row.Rest, row.To = assumptions.Rest, "q-assumptions"
+	if list := b.p.Provenance.Overrides; len(list) > 0 {
+		row = add("Overridden")
+		for _, o := range list[:min(len(list), listed)] {
+			text := o.Name + " = " + o.Text
+			if o.Was != "" {
+				text += " (in the source: " + o.Was + ")"
+			}
+			row.Lines = append(row.Lines, coverLine{Open: clip(text, 140)})
+		}
+		row.Rest, row.To = len(list)-len(row.Lines), "q-overrides"
+	}
+	other := b.o.State
+	for _, s := range b.open { // what the rows above do not say
+		if strings.HasPrefix(s, "not ") && !samePerson(m.Prepared.Initials, m.Checked.Initials) {
+			other = append(other[:len(other):len(other)], s)
+		}
+	}
+	if len(other) > 0 {
+		add("Open", coverLine{Open: strings.Join(other, " · ")})
+	}
+	add("Package digest", coverLine{Text: or(grouped(b.o.Digest), "none")}).Digest = true
+	return out
+}
+
+// sign is the boxes to sign.
+func (b *book) sign() item {
+	m := b.p.Meta
+	text := func(s exhibit.Sign) string {
+		if !named(s) {
+			return "——"
+		}
+		return clip(strings.TrimSpace(s.Initials+" "+s.Date), 60)
+	}
+	v := signView{text(m.Prepared), text(m.Checked), text(m.Approved), samePerson(m.Prepared.Initials, m.Checked.Initials)}
+	tall := max(lines(v.Prepared, 16), lines(v.Checked, 16), lines(v.Approved, 16))
+	if v.SamePerson {
+		tall = max(tall, 2)
+	}
+	return item{name: "sign", data: v, high: 21.5 + 5*tall}
+}
+
+// shortCaution is what every reader must know; the rest stands at the end.
+func (b *book) shortCaution() (item, bool) {
+	var texts []string
+	high := 15.5
+	for _, c := range b.p.Cautions {
+		if c.Key == "demonstration" || len(c.Blocks) == 0 && len(texts) < 2 {
+			texts = append(texts, c.Text)
+			high += 0.7 + 5.05*lines(c.Text, 103)
+		}
+	}
+	return item{name: "short-caution", data: texts, high: high}, len(texts) > 0
+}
+
+// grouped sets a digest in groups of four.
+func grouped(hex string) string {
+	var out []string
+	for len(hex) > 4 {
+		out, hex = append(out, hex[:4]), hex[4:]
+	}
+	return strings.Join(append(out, hex), " ")
+}

@@ -1,0 +1,170 @@
+package page
+
+import (
+	"html/template"
+	"strconv"
+
+	"quoin/calc/exhibit"
+	"quoin/calc/expr"
+	"quoin/calc/quantity"
+	"quoin/render/equation"
+)
+
+// The columns of an equation line in print, em of its mathematics.
+const (
+	symbolRoom = 14
+	numberRoom = 18
+	wholeRoom  = 40
+	besideRoom = 31  // beside a result
+	em         = 3.7 // mm
+)
+
+type equationView struct {
+	ID, Label, Description, Value, Unit, Over string
+	Governs                                   string // how what governs is marked
+	Symbols, Numbers, Matrix                  template.HTML
+	Columns                                   [][]labelled
+	Source                                    any
+	Number                                    int
+	Wide, Method, Overridden                  bool
+}
+
+type labelled struct{ Label, Text string }
+
+func (b *book) equation(e *exhibit.Equation, label string) item {
+	v := equationView{Label: label, Description: e.Description, Number: e.Number, Overridden: e.Overridden, Method: e.Result == nil}
+	v.Source = sourceOf(e.Ref, e.RefText)
+	v.ID = b.exhibits[e]
+	rows := 1.6
+	if e.TeX != "" {
+		v.Symbols, v.Wide = b.mustTeX(e.TeX, e.Place), true
+		rows = 2.6
+	} else {
+		rows = b.formula(&v, e)
+	}
+	if e.Result != nil {
+		tall := b.result(&v, e)
+		if len(v.Columns) > 1 {
+			rows += tall
+		} else {
+			rows = max(rows, tall)
+		}
+	}
+	high := rows*em + 4.5*lines(e.Description, 90) + 4
+	if e.Ref != nil { // in the margin, in narrow lines
+		margin := lines(e.Ref.Key, 14) + lines(e.Ref.Clause, 14)
+		if e.Ref.Memory {
+			margin += 2
+		}
+		high = max(high, 3.3*margin+4.5)
+	}
+	return item{name: "equation", data: v, high: high, anchors: []string{v.ID}}
+}
+
+// formula sets the symbols and the numbers of a line and says how high it is, em.
+func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
+	free := equation.Setter{System: b.p.System}
+	tree := e.Tree
+	given, constant := constantTree(tree)
+	if given && e.Symbol != nil && sameUnit(tree, e.Result) { // "h = 15 m": the result says it all
+		set := free.Symbols(e.Symbol)
+		v.Symbols = template.HTML(set.XML)
+		return set.Height
+	}
+	symbols := free.Equation(e.Symbol, tree)
+	numbers := free.Numbers(tree)
+	plain := constant || e.Result == nil
+	switch underlined, ticked := equation.Marks(tree); {
+	case underlined && ticked:
+		v.Governs = "underlined, ✓: governs"
+	case underlined:
+		v.Governs = "underlined: governs"
+	case ticked:
+		v.Governs = "✓: governs"
+	}
+	v.Wide = symbols.Width > symbolRoom && !(plain && symbols.Width <= symbolRoom+numberRoom) || !plain && numbers.Width > numberRoom
+	if v.Wide {
+		narrow := equation.Setter{System: b.p.System, Width: wholeRoom}
+		symbols, numbers = narrow.Equation(e.Symbol, tree), equation.Setter{System: b.p.System, Width: besideRoom}.Numbers(tree)
+	}
+	v.Symbols = template.HTML(symbols.XML)
+	if plain {
+		return symbols.Height
+	}
+	v.Numbers = template.HTML(numbers.XML)
+	if v.Wide {
+		return symbols.Height + numbers.Height + 0.8
+	}
+	return max(symbols.Height, numbers.Height)
+}
+
+// constantTree tells a single number or list as given from what is computed, and
+// what has nothing to substitute.
+func constantTree(n *expr.Node) (given, constant bool) {
+	constant = true
+	n.Walk(func(m *expr.Node) { constant = constant && (m.Op == expr.Literal || !m.Leaf()) })
+	given = n.Op == expr.Literal || n.Op == expr.Neg && n.Args[0].Op == expr.Literal
+	if n.Op == expr.List {
+		given = true
+		for _, a := range n.Args {
+			g, _ := constantTree(a)
+			given = given && g
+		}
+	}
+	return given, constant
+}
+
+// sameUnit tells whether a given number is shown in the unit it was given in.
+func sameUnit(n *expr.Node, result *quantity.Value) bool {
+	same := true
+	n.Walk(func(m *expr.Node) {
+		if m.Op == expr.Literal && result != nil {
+			u, err := quantity.ParseUnit(m.Unit)
+			same = same && err == nil && u.Text == result.Unit.Text
+		}
+	})
+	return same
+}
+
+// result sets the value of a line; vectors are tables of label and value.
+func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
+	unit := e.Result.Unit
+	if unit.Scale == 0 {
+		unit = b.p.System.Preferred(e.Result.Dim)
+	}
+	digits := e.Digits
+	if digits == 0 {
+		digits = quantity.Digits
+	}
+	v.Unit = unit.Pretty()
+	text := func(si float64) string { return quantity.Format(unit.From(si), digits) }
+	switch r := *e.Result; {
+	case r.Shape == quantity.Rows:
+		v.Matrix = template.HTML(equation.Value(r, unit, digits))
+		return 1.45 * float64(r.Len())
+	case r.Shape == quantity.Vector:
+		v.Over = "item"
+		if len(r.Labels) == len(r.SI) && len(r.SI) > 0 {
+			v.Over = "level"
+		}
+		tall := 12
+		if len(r.SI) > 2*tall {
+			tall = (len(r.SI) + 3) / 4
+		}
+		for i, x := range r.SI {
+			if i%tall == 0 {
+				v.Columns = append(v.Columns, nil)
+			}
+			label := strconv.Itoa(i + 1)
+			if v.Over == "level" {
+				label = r.Labels[i]
+			}
+			last := len(v.Columns) - 1
+			v.Columns[last] = append(v.Columns[last], labelled{label, text(x)})
+		}
+		return 1.55 * float64(min(len(r.SI), tall)+1)
+	case len(r.SI) > 0:
+		v.Value = text(r.SI[0])
+	}
+	return 1.6
+}

@@ -1,0 +1,144 @@
+package page
+
+import (
+	"bytes"
+	"fmt"
+	"html/template"
+	"math"
+	"regexp"
+	"strconv"
+	"strings"
+	"unicode"
+
+	"quoin/calc/exhibit"
+	"quoin/render/equation"
+)
+
+// textWidth is the width of the column in print, mm.
+const textWidth = 162
+
+func (b *book) figure(f *exhibit.Figure, label string) item {
+	if b.o.Picture == nil {
+		panic("page: a figure and no Options.Picture")
+	}
+	v := struct {
+		Label, ID, Caption, CSV, Alt string
+		Number, Height               int
+		Twin                         template.HTML
+		Option                       template.JS
+	}{Label: label, ID: b.exhibits[f], Caption: f.Caption, CSV: "tables/" + f.ID + ".csv", Alt: f.Alt, Number: f.Number, Height: 380}
+	twin, err := b.o.Picture(*f, "q-"+slug(f.ID)+"-")
+	b.fail(err, "figure %q", f.ID)
+	v.Twin = template.HTML(twin)
+	if b.o.Chart != nil {
+		option, height, err := b.o.Chart(*f)
+		b.fail(err, "figure %q", f.ID)
+		if bytes.Contains(option, []byte("</")) || bytes.Contains(option, []byte("<!--")) {
+			b.fail(fmt.Errorf("its option would end the script element"), "figure %q", f.ID)
+			option = nil
+		}
+		v.Option, v.Height = template.JS(option), height
+	}
+	high := textWidth*aspect(twin, float64(v.Height)/700) + 8 + 4.6*lines(f.Caption, 90)
+	return item{name: "figure", data: v, high: high, anchors: []string{v.ID}}
+}
+
+var viewBox = regexp.MustCompile(`viewBox="[-0-9.]+ [-0-9.]+ ([0-9.]+) ([0-9.]+)"`)
+
+// aspect is height over width of a picture, or what it is taken to be.
+func aspect(svg string, otherwise float64) float64 {
+	if m := viewBox.FindStringSubmatch(svg[:min(len(svg), 2000)]); m != nil {
+		w, _ := strconv.ParseFloat(m[1], 64)
+		h, _ := strconv.ParseFloat(m[2], 64)
+		if w > 0 && h > 0 {
+			return h / w
+		}
+	}
+	return otherwise
+}
+
+// slug is a text as part of an id: letters, digits, hyphens, points.
+func slug(text string) string {
+	return strings.Map(func(r rune) rune {
+		if unicode.IsLetter(r) || unicode.IsDigit(r) || r == '-' || r == '_' || r == '.' {
+			return r
+		}
+		return '-'
+	}, text)
+}
+
+type checkView struct {
+	Name, Item, Anchor, Demand, Relation, Limit, Ratio string
+	ID                                                 string        // of the row in its block
+	Over                                               bool          // the bar would be longer than there is room
+	Formula                                            template.HTML // instead of a name in words
+	Tree                                               template.HTML // below the name
+	Plain                                              string        // or its text
+	Source                                             any
+	HasBar, OK                                         bool
+	Bar                                                string
+}
+
+var relations = map[string]string{"<=": "≤", "<": "<", ">=": "≥", ">": ">", "==": "="}
+
+// checks is a table of checks. A summary leads to the blocks; a block shows the
+// formula of the check. A long one is cut.
+func (b *book) checks(list []exhibit.Check, label, caption string, summary bool) []item {
+	type view struct {
+		Label, Caption string
+		Summary        bool
+		Rows           []checkView
+	}
+	var out []item
+	v := view{Label: label, Caption: caption, Summary: summary}
+	high := 14.0
+	seen := ""
+	var anchors []string
+	for i, c := range list {
+		r := checkView{Name: checkName(c), Item: c.Item, Source: sourceOf(c.Ref, c.RefText), OK: c.OK,
+			Demand: numbersText([]exhibit.Number{c.Demand}), Limit: numbersText([]exhibit.Number{c.Limit}), Ratio: c.RatioText()}
+		r.Relation = or(relations[c.Relation], c.Relation)
+		if c.Tolerance != nil {
+			r.Limit += " ± " + numbersText([]exhibit.Number{*c.Tolerance})
+		}
+		if c.Ratio != nil && !math.IsNaN(*c.Ratio) {
+			r.HasBar, r.Over = true, *c.Ratio > 1.25
+			r.Bar = strconv.FormatFloat(math.Round(10*min(max(80**c.Ratio, 0), 100))/10, 'f', -1, 64)
+		}
+		rows := lines(r.Name+", "+r.Item, 25)
+		if c.Description == "" && c.Tree != nil {
+			set := equation.Setter{System: b.p.System, Width: 15}.Symbols(c.Tree)
+			r.Formula, rows = template.HTML(set.XML), set.Height*0.8
+		}
+		if c.Ref != nil && c.Ref.Memory {
+			rows = max(rows, 1+lines(c.Ref.String(), 22))
+		}
+		if summary {
+			r.Anchor = or(b.rows[checkKey(c)], c.Anchor)
+		} else if c.Name == seen {
+			r.Source = "" // said in the row above
+		} else if c.Tree != nil && c.Description != "" {
+			set := equation.Setter{System: b.p.System, Width: 16}.Symbols(c.Tree)
+			if set.Width > 16 { // it does not break far enough: the text of the document does
+				r.Plain, rows = c.Name, rows+lines(c.Name, 26)
+			} else {
+				r.Tree, rows = template.HTML(set.XML), rows+set.Height*0.8
+			}
+		}
+		if !summary {
+			r.ID = b.claimRow(c)
+			anchors = append(anchors, r.ID)
+		}
+		seen = c.Name
+		high += 2.4 + 4.6*rows
+		v.Rows = append(v.Rows, r)
+		if high > tallest || i == len(list)-1 {
+			out = append(out, item{name: "checks", data: v, high: high, anchors: anchors})
+			v, high, anchors = view{Caption: caption, Summary: summary}, 14, nil
+			seen = "" // said again
+		}
+	}
+	return out
+}
+
+func checkName(c exhibit.Check) string { return or(or(c.Description, c.Name), c.ID) }

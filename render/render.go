@@ -1,0 +1,36 @@
+// Package render turns a computed package into the files of its folder. It knows
+// nothing of earthquakes and touches no disk.
+package render
+
+import (
+	"maps"
+
+	"quoin/calc/exhibit"
+	"quoin/render/ledger"
+)
+
+// Package is every file of the folder of p, by slash path: the page, the
+// results, the tables, the inputs it was built from and the manifest. files is
+// every file that was read, by path relative to the root. The same package and
+// files give the same bytes. progress, if set, is told of every picture drawn,
+// one at a time. What is wrong with the formulas of the prose is a [*Faults].
+func Package(p *exhibit.Package, files map[string][]byte, progress func(done, total int, what string)) (map[string][]byte, error) {
+	out, err := ledger.Tables(p)
+	if err != nil {
+		return nil, err
+	}
+	if out["results.json"], err = ledger.Results(p); err != nil {
+		return nil, err
+	}
+	inputs, err := ledger.Inputs(files, p)
+	if err != nil {
+		return nil, err
+	}
+	digest := ledger.Digest(inputs, p.Provenance.Tool)
+	if out["index.html"], err = index(p, files, digest, progress); err != nil {
+		return nil, err
+	}
+	maps.Copy(out, inputs)
+	out[ledger.ManifestFile] = ledger.Manifest(out, digest, p.Provenance.Tool)
+	return out, nil
+}
