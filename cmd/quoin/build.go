@@ -1,0 +1,101 @@
+package main
+
+import (
+	"errors"
+	"fmt"
+	"os"
+	"path/filepath"
+	"slices"
+
+	"quoin/calc/document"
+	"quoin/calc/exhibit"
+	"quoin/render"
+	"quoin/render/ledger"
+)
+
+// build runs FILE and writes its package.
+func (a *app) build(file string) int {
+	src, err := locate(file, a.flags.root)
+	if err != nil {
+		return a.fail(file, err)
+	}
+	dir := a.flags.out
+	if dir == "" {
+		dir = src.folder()
+	}
+	// Before the work, not after it.
+	if err := errors.Join(ledger.Repair(dir), ledger.Replaceable(dir)); err != nil {
+		return a.fail(file, err)
+	}
+	bar := a.progress()
+	defer bar.done()
+	res, err := a.compute(src, bar)
+	if err != nil {
+		return a.fail(file, err)
+	}
+	if res.Package == nil {
+		bar.done()
+		return a.report(src, res, "")
+	}
+	files, err := render.Package(res.Package, res.Files, bar.stage(progressDraw))
+	if err == nil {
+		err = ledger.Write(dir, files)
+	}
+	bar.done()
+	var faults *render.Faults
+	if errors.As(err, &faults) {
+		res.Package, res.Diagnostics = nil, append(res.Diagnostics, faults.List...)
+		return a.report(src, res, "")
+	}
+	if err != nil {
+		return a.fail(file, err)
+	}
+	return a.report(src, res, dir)
+}
+
+// check runs FILE, draws nothing and writes nothing.
+func (a *app) check(file string) int {
+	src, err := locate(file, a.flags.root)
+	if err != nil {
+		return a.fail(file, err)
+	}
+	bar := a.progress()
+	defer bar.done()
+	res, err := a.compute(src, bar)
+	bar.done()
+	if err != nil {
+		return a.fail(file, err)
+	}
+	return a.report(src, res, "")
+}
+
+// compute runs the document with what is known of where it came from.
+func (a *app) compute(src source, bar *progress) (document.Result, error) {
+	root, err := os.OpenRoot(src.root)
+	if err != nil {
+		return document.Result{}, err
+	}
+	defer root.Close()
+	from := exhibit.Provenance{Tool: versionLine(), Source: src.main}
+	from.Commit, from.CommitDate = commit(src.root)
+	res := document.Run(document.Source{FS: root.FS(), Main: src.main},
+		document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun)})
+	if res.Package != nil {
+		// Only now is it known which files were read.
+		var read []string
+		for path := range res.Files {
+			read = append(read, filepath.FromSlash(path))
+		}
+		res.Package.Provenance.Dirty = dirty(src.root, read)
+	}
+	return res, nil
+}
+
+// fail says why FILE could not be run or written.
+func (a *app) fail(file string, err error) int {
+	if a.flags.json {
+		a.writeJSON(outcome{File: file, Failure: err.Error()})
+	}
+	fmt.Fprint(a.stderr, fileError(file, err.Error()))
+	return exitErrors
+}

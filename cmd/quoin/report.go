@@ -1,0 +1,96 @@
+package main
+
+import (
+	"encoding/json"
+	"fmt"
+	"path/filepath"
+	"strings"
+
+	"quoin/calc/diag"
+	"quoin/calc/document"
+	"quoin/calc/exhibit"
+	"quoin/render/ledger"
+)
+
+// outcome is what --json writes for a FILE. Places are as seen from the current
+// folder; numbers are SI.
+type outcome struct {
+	File        string         `json:"file"`
+	Failure     string         `json:"failure,omitempty"` // where FILE could not be run or written at all
+	Diagnostics diag.List      `json:"diagnostics"`
+	Checks      []ledger.Check `json:"checks"`
+	Built       string         `json:"built"` // the folder written, or ""
+}
+
+// report says what a run came to: diagnostics to stderr, the summary to stdout;
+// with --json all of it as data. dir is the folder written, or "".
+func (a *app) report(src source, res document.Result, dir string) int {
+	list, checks := seenFromHere(src, res)
+	if a.flags.json {
+		rows, err := ledger.Checks(checks, "")
+		if err != nil {
+			return a.fail(src.given, err)
+		}
+		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(dir)})
+	} else {
+		a.writeDiagnostics(src, list, res.Files)
+	}
+	if res.Package == nil {
+		return exitErrors
+	}
+	if !a.flags.json {
+		page := ""
+		if dir != "" {
+			page = filepath.ToSlash(filepath.Join(dir, "index.html"))
+		}
+		fmt.Fprint(a.stdout, summary(src.given, page, checks))
+	}
+	if a.flags.strict && len(exhibit.Failed(checks)) > 0 {
+		return exitStrict
+	}
+	return exitBuilt
+}
+
+// seenFromHere gives diagnostics and checks the places that an editor started
+// in the current folder can open.
+func seenFromHere(src source, res document.Result) (diag.List, []exhibit.Check) {
+	list := append(diag.List{}, res.Diagnostics...)
+	for i := range list {
+		// A message on a --set is about no file.
+		if file := &list[i].Range.File; *file == src.main || res.Files[*file] != nil {
+			*file = src.seen(*file)
+		}
+	}
+	checks := append([]exhibit.Check{}, res.Checks...)
+	for i := range checks {
+		checks[i].Place.File = src.seen(checks[i].Place.File)
+	}
+	return list.Sort(), checks
+}
+
+func (a *app) writeDiagnostics(src source, list diag.List, files map[string][]byte) {
+	text := map[string][]string{}
+	for path, data := range files {
+		text[src.seen(path)] = strings.Split(string(data), "\n")
+	}
+	diag.Write(a.stderr, list, func(file string, line int) (string, bool) {
+		if line < 1 || line > len(text[file]) {
+			return "", false
+		}
+		return text[file][line-1], true
+	})
+}
+
+func (a *app) writeJSON(o outcome) {
+	if o.Diagnostics == nil {
+		o.Diagnostics = diag.List{}
+	}
+	if o.Checks == nil {
+		o.Checks = []ledger.Check{}
+	}
+	e := json.NewEncoder(a.stdout)
+	e.SetEscapeHTML(false)
+	if err := e.Encode(o); err != nil {
+		panic(err)
+	}
+}

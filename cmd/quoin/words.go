@@ -1,0 +1,128 @@
+package main
+
+import (
+	"fmt"
+	"strings"
+
+	"quoin/calc/exhibit"
+)
+
+// All that the program says to people stands in this file, but for the
+// diagnostics of a document, which package diag lays out.
+//
+//   - Results go to stdout, everything else to stderr.
+//   - A message is one line, lower case, without a full stop, and begins with the
+//     file it is about where there is one; "hint:" says what to try.
+//   - File names are as seen from the current folder.
+//   - No colours, no symbols: the words carry the meaning.
+//   - "OK" and "NOT OK" are the only verdicts on a check. The program never says
+//     that a building is safe or that a package was checked.
+
+const (
+	rootShort = "turn a markdown file into a seismic calculation package"
+	rootLong  = `Quoin turns a markdown file with calc blocks into a seismic calculation package:
+a folder with a page that opens from disk, its tables, its inputs and a manifest.`
+
+	buildUse   = "build FILE..."
+	buildShort = "run the document and write its package"
+	buildLong  = `Run the document FILE and write its package, by default the folder STEM.package
+beside it. An existing package is replaced as a whole; any other folder is left
+alone. Nothing outside the root is read: the folder given with --root, else the
+git work tree that holds FILE, else FILE's own folder.
+
+Exit codes: 0 built, 1 errors, 2 wrong usage, 3 built, but with --strict a check
+is not met.`
+	buildExample = `  quoin build package.md
+  quoin build package.md -o issue-b --set R=5 --strict`
+
+	checkUse   = "check FILE..."
+	checkShort = "run the document and write nothing"
+	checkLong  = `Run the document FILE and say what is wrong with it and how its checks come out.
+Nothing is drawn and nothing is written.
+
+Exit codes: 0 no errors, 1 errors, 2 wrong usage, 3 no errors, but with --strict a
+check is not met.`
+	checkExample = `  quoin check package.md`
+
+	flagOut    = "write the package to the folder `DIR`"
+	flagRoot   = "read nothing outside `DIR`"
+	flagSet    = "replace a value of the document, as in `name=value`; may be repeated"
+	flagStrict = "exit with 3 when a check is not met"
+	flagJSON   = "write diagnostics and checks to stdout as JSON, one object for each FILE"
+
+	progressRun  = "computing"
+	progressDraw = "drawing"
+)
+
+func versionLine() string { return "quoin " + version }
+
+func usageError(err error) string {
+	return fmt.Sprintf("quoin: %s\nhint: quoin --help lists the commands, quoin COMMAND --help their flags\n", err)
+}
+
+var (
+	errNoFile  = fmt.Errorf("name a FILE, as in: quoin build package.md")
+	errOneFile = fmt.Errorf("-o takes one FILE at a time")
+)
+
+func errSet(given string) error {
+	return fmt.Errorf("--set %q is not of the form name=value", given)
+}
+
+func internalError(fault, place string) string {
+	return fmt.Sprintf("quoin: internal error, nothing was written: %s (%s, %s); please report this with the file that led to it\n", fault, place, versionLine())
+}
+
+func fileError(file, text string) string { return fmt.Sprintf("%s: error: %s\n", file, text) }
+
+const (
+	isFolder  = "this is a folder; name the markdown file in it"
+	notInRoot = "this file lies outside the root"
+)
+
+// summary is what a run comes to: where the package is, and how the checks came
+// out, the worst first.
+func summary(file, page string, checks []exhibit.Check) string {
+	var b strings.Builder
+	if page != "" {
+		fmt.Fprintf(&b, "%s: written to %s\n", file, page)
+	} else {
+		fmt.Fprintf(&b, "%s: no errors\n", file)
+	}
+	failed := exhibit.Failed(checks)
+	switch {
+	case len(checks) == 0:
+		b.WriteString("checks: none\n")
+	case len(failed) == 0:
+		fmt.Fprintf(&b, "checks: %d OK\n", len(checks))
+	default:
+		fmt.Fprintf(&b, "checks: %d OK, %d NOT OK\n", len(checks)-len(failed), len(failed))
+	}
+	for _, c := range exhibit.WorstFirst(failed) {
+		b.WriteString("  NOT OK  " + checkLine(c) + "\n")
+	}
+	if rest := exhibit.WorstFirst(checks); len(failed) == 0 && len(rest) > 0 {
+		b.WriteString("  closest " + checkLine(rest[0]) + "\n")
+	}
+	return b.String()
+}
+
+// checkLine is one check: its text, its numbers, its place.
+func checkLine(c exhibit.Check) string {
+	ratio := "no ratio"
+	if c.Ratio != nil {
+		ratio = "ratio " + c.RatioText()
+	}
+	name := c.ID
+	if strings.Trim(c.Item, "0123456789") != "" { // a level, not only an index
+		name = c.Name + " at " + c.Item
+	}
+	return fmt.Sprintf("%s: demand %s, limit %s, %s (%s:%d)", name, shown(c.Demand), shown(c.Limit), ratio, c.Place.File, c.Place.Line)
+}
+
+func shown(n exhibit.Number) string {
+	if u := n.Unit.Pretty(); u != "" {
+		return n.Text() + " " + u
+	}
+	return n.Text()
+}

@@ -1,0 +1,66 @@
+// node page.mjs INDEX FOLDER MODE...: opens the written page INDEX as a reader would and prints, as JSON,
+// what was seen in each mode. It judges nothing. FOLDER takes page.pdf; CHROMIUM names the browser.
+//
+//   live      as it opens, then leafed through to its end: what it asks for, says and refuses; links, headings,
+//             faces; the accessibility rules of WCAG 2.0 to 2.2, A and AA; every chart by pointer and by key, and
+//             what stands in its place on paper; page.pdf; at 390 and 320 px
+//   plain     without scripts, also at 390 and 320 px
+import { readFileSync } from 'node:fs'
+import { createRequire } from 'node:module'
+import { chromium } from 'playwright-core'
+import { figures } from './figures.mjs'
+import * as seen from './seen.mjs'
+import { fonts, leaf, open, settle } from './watch.mjs'
+
+const [index, folder, ...modes] = process.argv.slice(2)
+const flags = ['--no-sandbox', '--disable-gpu', '--disable-quic', '--no-first-run', '--disable-background-networking', '--disable-component-update', '--disable-sync']
+
+const does = {
+  async live(page) {
+    const report = { early: await page.evaluate(seen.started) }
+    await leaf(page)
+    report.late = await page.evaluate(seen.started)
+    Object.assign(report, await page.evaluate(seen.outline), { fonts: await fonts(page), texts: await page.evaluate(seen.texts) })
+
+    await page.evaluate(readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8'))
+    report.rules = await page.evaluate(seen.rules, ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+
+    report.figures = await figures(page)
+    for (const [media, name] of [['print', 'paper'], [null, 'back']]) {
+      await page.emulateMedia({ media })
+      await settle(page)
+      report[name] = await page.evaluate(seen.paper)
+    }
+    await page.pdf({ path: folder + '/page.pdf', preferCSSPageSize: true })
+    report.widths = await narrow(page, true)
+    return report
+  },
+
+  async plain(page) {
+    return { ...(await page.evaluate(seen.parts)), texts: await page.evaluate(seen.texts), widths: await narrow(page, false) }
+  },
+}
+
+// narrow is the page at the widths of phones. Without scripts nothing is drawn anew.
+async function narrow(page, drawn) {
+  const report = []
+  for (const width of [390, 320]) {
+    await page.setViewportSize({ width, height: 844 })
+    if (drawn) await settle(page)
+    report.push({ width, ...(await page.evaluate(seen.widths)) })
+  }
+  return report
+}
+
+const browser = await chromium.launch({ executablePath: process.env.CHROMIUM, args: flags })
+try {
+  const report = {}
+  for (const mode of modes) {
+    const { page, heard, close } = await open(browser, index, { javaScriptEnabled: mode !== 'plain' })
+    report[mode] = { ...(await does[mode](page)), heard }
+    await close()
+  }
+  console.log(JSON.stringify(report))
+} finally {
+  await browser.close()
+}
