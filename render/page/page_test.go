@@ -15,10 +15,7 @@ import (
 
 	"quoin/calc/exhibit"
 	"quoin/render/page"
-	"quoin/templates"
 )
-
-var write = flag.String("write", "", "write the sample page, with the bundle, to this file")
 
 // Properties are drawn from one seed, so that a run can be repeated.
 func TestMain(m *testing.M) {
@@ -50,28 +47,6 @@ func render(t *testing.T, p *exhibit.Package, o page.Options) string {
 		t.Fatal(err)
 	}
 	return string(out)
-}
-
-func TestWriteSample(t *testing.T) {
-	if *write == "" {
-		t.Skip("no -write")
-	}
-	o := options()
-	for _, a := range []struct {
-		to   *string
-		from func() (string, error)
-	}{{&o.Assets.PageScript, templates.PageScript}, {&o.Assets.FontsCSS, templates.FontsCSS}, {&o.Assets.TemmlCSS, templates.TemmlCSS}, {&o.Assets.Licences, templates.Licences}} {
-		text, err := a.from()
-		if err != nil {
-			t.Fatal(err)
-		}
-		*a.to = text
-	}
-	o.Chart = nil
-	t.Log("\n" + page.Estimates(sample(), o))
-	if err := os.WriteFile(*write, []byte(render(t, sample(), o)), 0o644); err != nil {
-		t.Fatal(err)
-	}
 }
 
 // balanced fails on elements that do not close, once what HTML may leave out is put in.

@@ -219,9 +219,6 @@ func TestReadable(t *testing.T) {
 // A file of many samples, one on a single line of megabytes, and a header that
 // counts absurdly cost memory in proportion to the file alone.
 func TestLarge(t *testing.T) {
-	if testing.Short() {
-		t.Skip("large files")
-	}
 	ask := Options{Unit: "g", Step: 0.01}
 	for name, c := range map[string]struct {
 		text string
