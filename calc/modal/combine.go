@@ -39,6 +39,12 @@ type Combined struct {
 	Levels  []string
 	H, Hs   []float64 // elevations and storey heights, m
 
+	// Basis is the standard of the spectrum that was read ("" where it was that
+	// of a record), R, Ie and Q the factors that the response is reduced by; all
+	// set by the caller, for those who read the result.
+	Basis    string
+	R, Ie, Q float64
+
 	T         []float64   // periods of the modes used, s
 	Damping   []float64   // ratio of each mode
 	PSA       []float64   // spectral ordinate of each mode, m/s², not divided

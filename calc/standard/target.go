@@ -11,6 +11,7 @@ import (
 	"slices"
 
 	"quoin/calc/cite"
+	"quoin/calc/quantity"
 )
 
 // Target is a pseudo-acceleration spectrum to design or scale for, as plain
@@ -23,6 +24,18 @@ type Target struct {
 	Branches   []Branch    // by rising period, each starting where the last ends
 	Corners    []Corner    // named periods where branches meet
 	Warnings   []Warning
+
+	// Vertical is set for a spectrum of vertical motion.
+	Vertical bool
+	// Q is the behaviour factor that the ordinates are already divided by; 0
+	// where they are elastic.
+	Q float64
+	// Exception is the number of the exception to ASCE/SEI 7-16 11.4.8 that the
+	// author claims; 0: none.
+	Exception int
+	// Given is what the spectrum was built from, so that it can be built again
+	// at another damping.
+	Given Given
 }
 
 // Parameter is one number or word that a spectrum stands on.
@@ -79,6 +92,17 @@ func (t *Target) PSA(T float64) (float64, error) {
 		return 0, err
 	}
 	return b.At(T), nil
+}
+
+// AtDamping is the spectrum at another damping ratio, by the rule of its own
+// standard; an error where the standard has none. The ratio it holds for gives
+// the spectrum itself.
+func (t *Target) AtDamping(z float64) (*Target, error) {
+	if math.Abs(z-t.Damping) <= 1e-9 {
+		return t, nil
+	}
+	return nil, fmt.Errorf("the spectrum holds for %s %% damping, and its standard gives no rule here to adjust it to %s %%",
+		quantity.Format(100*t.Damping, 4), quantity.Format(100*z, 4))
 }
 
 // BranchAt is the branch that holds period T; where two meet, the one below.

@@ -28,7 +28,8 @@ WORDS < calc/motion < calc/motion/archive, calc/oscillator
 calc/oscillator < calc/spectrum
 WORDS < calc/structure < calc/modal
 WORDS < calc/standard
-calc/motion/archive, calc/spectrum, calc/modal, calc/standard < ENGINES
+calc/structure, calc/standard < calc/lateral
+calc/motion/archive, calc/spectrum, calc/modal, calc/lateral < ENGINES
 
 calc/cite, calc/expr < calc/exhibit
 
