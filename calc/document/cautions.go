@@ -33,5 +33,7 @@ var triggered = []sentence{
 	{"scaled", "A record is scaled by a factor outside 0.25 to 4: its character is no longer that of the recorded motion."},
 	{"few-motions", "Response to single records is shown. A few motions do not give a statistical basis; codes ask for a suite of them."},
 	{"two-period", "The two-period design spectrum of ASCE/SEI 7-22 is permitted where the multi-period one is not available, within the limits of its chapter 11; confirm that it may be used at this site and for this procedure."},
+	{"site-specific", "ASCE/SEI 7-16 11.4.8 asks for a site-specific ground motion study for a spectrum used here, or could not be evaluated, and neither a study nor an exception is stated. The spectrum must not be used for design until that is settled."},
+	{"site-exception", "An exception to the site-specific study of ASCE/SEI 7-16 11.4.8 is claimed. It holds only while its conditions do, and they bind the whole design: confirm them, and what the supplements of the standard say, with the authority."},
 	{"table-target", "A design spectrum was read from a table: it is interpolated linearly between its points and never used beyond them. Its source and damping are the author's statement."},
 }

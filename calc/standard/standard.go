@@ -16,6 +16,8 @@ import (
 // Standards is every basis that a target can have, in the order of reading.
 var Standards = []Standard{
 	asce722,
+	asce716,
+	en1998,
 	table,
 }
 
@@ -26,6 +28,11 @@ type Standard struct {
 	Ref        cite.Ref
 	Spectra    []string // allowed values of the text "spectrum", the usual first; empty: none
 	Parameters []ParameterDoc
+	Derived    []ParameterDoc    // what a spectrum may have beside them
+	Gaps       map[string]string // words that are no choice, "site: F", and why
+	// Damping is the parameter with the damping ratio, where the standard adjusts
+	// its spectra to it; else Fixed says why it does not.
+	Damping, Fixed string
 	// build gets values that are known, finite and in range, with every
 	// required one there.
 	build func(in Given) (*Target, error)
@@ -58,6 +65,23 @@ type Given struct {
 	Numbers map[string]float64
 	Texts   map[string]string
 	Columns map[string][]float64
+}
+
+// clone is a copy that shares nothing with the original.
+func (in Given) clone() Given {
+	out := Given{Numbers: map[string]float64{}, Texts: map[string]string{}, Columns: map[string][]float64{}}
+	maps.Copy(out.Numbers, in.Numbers)
+	maps.Copy(out.Texts, in.Texts)
+	for k, v := range in.Columns {
+		out.Columns[k] = slices.Clone(v)
+	}
+	return out
+}
+
+// number is a number and whether it is given.
+func (in Given) number(symbol string) (float64, bool) {
+	x, ok := in.Numbers[symbol]
+	return x, ok
 }
 
 // ParameterError says what is wrong with one parameter.
@@ -123,13 +147,19 @@ func (s Standard) Build(in Given) (*Target, error) {
 	if err != nil {
 		return nil, err
 	}
+	numbers := []float64{}
 	for _, b := range t.Branches {
-		for _, x := range []float64{b.A0, b.A1, b.B1, b.B2, b.From, b.To} {
-			if math.IsNaN(x) || math.IsInf(x, 0) {
-				return nil, &ParameterError{Symbol: "basis", Problem: "the values given are too large or too small for a spectrum"}
-			}
+		numbers = append(numbers, b.A0, b.A1, b.B1, b.B2, b.C, b.From, b.To)
+	}
+	for _, p := range t.Parameters {
+		numbers = append(numbers, p.Value)
+	}
+	for _, x := range numbers {
+		if math.IsNaN(x) || math.IsInf(x, 0) {
+			return nil, &ParameterError{Symbol: "basis", Problem: "the values given are too large or too small for a spectrum"}
 		}
 	}
+	t.Given = in.clone()
 	return t, nil
 }
 
@@ -149,7 +179,9 @@ func (s Standard) check(in Given) error {
 		switch want, ok := kinds[symbol]; {
 		case !ok:
 			hint := "parameters: " + strings.Join(symbols, ", ")
-			if near := diag.Nearest(symbol, symbols); near != "" {
+			if of := belongs(symbol); of != "" {
+				hint = "it belongs to " + of
+			} else if near := diag.Nearest(symbol, symbols); near != "" {
 				hint = "did you mean " + near + "?"
 			}
 			fail(symbol, hint, "not a parameter of %s", s.Basis)
@@ -182,6 +214,10 @@ func (s Standard) check(in Given) error {
 		case Text:
 			var word string
 			if word, present = in.Texts[p.Symbol]; present && !slices.Contains(p.Choices, word) {
+				if gap := s.Gaps[p.Symbol+": "+word]; gap != "" {
+					fail(p.Symbol, "write one of "+strings.Join(p.Choices, ", "), "%s", gap)
+					break
+				}
 				fail(p.Symbol, "write one of "+strings.Join(p.Choices, ", "), "%q is not allowed", word)
 			}
 		case Numbers:
@@ -202,6 +238,17 @@ func (s Standard) check(in Given) error {
 	return errors.Join(all...)
 }
 
+// belongs names the standards that have a parameter.
+func belongs(symbol string) string {
+	var of []string
+	for _, s := range Standards {
+		if slices.ContainsFunc(s.docs(), func(p ParameterDoc) bool { return p.Symbol == symbol }) {
+			of = append(of, s.Basis)
+		}
+	}
+	return strings.Join(of, ", ")
+}
+
 // bound says what a number must be.
 func (p ParameterDoc) bound() string {
 	if p.Zero {
@@ -216,12 +263,4 @@ func (s Standard) docs() []ParameterDoc {
 		return s.Parameters
 	}
 	return append([]ParameterDoc{{Symbol: "spectrum", Kind: Text, Doc: "which spectrum of the standard", Choices: s.Spectra, Ref: s.Ref}}, s.Parameters...)
-}
-
-// spectrum is the spectrum asked for, the first of the standard by default.
-func (s Standard) spectrum(in Given) string {
-	if word, ok := in.Texts["spectrum"]; ok {
-		return word
-	}
-	return s.Spectra[0]
 }

@@ -17,6 +17,7 @@ var table = Standard{
 		{Symbol: "PSA", Kind: Numbers, Dim: quantity.Acceleration, Unit: "g", Doc: "pseudo-accelerations, one a period", Required: true},
 		{Symbol: "damping", Kind: Number, Doc: "ratio of critical damping that the rows hold for", Required: true},
 	},
+	Fixed: "a table holds for the damping of its rows alone",
 	build: buildTable,
 }
 
@@ -53,7 +54,7 @@ func buildTable(in Given) (*Target, error) {
 		return nil, err
 	}
 	t := &Target{
-		Basis: "table", Damping: damping,
+		Basis: "table", Symbol: "S_a", Damping: damping,
 		Parameters: []Parameter{{Symbol: "damping", Value: damping, Unit: "%", Doc: "damping ratio of the rows", Given: true}},
 	}
 	for i := 1; i < len(T); i++ {

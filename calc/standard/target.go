@@ -11,27 +11,32 @@ import (
 	"slices"
 
 	"quoin/calc/cite"
-	"quoin/calc/quantity"
 )
 
 // Target is a pseudo-acceleration spectrum to design or scale for, as plain
 // encodable data. Periods are in s, ordinates in m/s².
 type Target struct {
 	Basis      string      // "ASCE/SEI 7-22", "table"
-	Spectrum   string      // "design", "MCE_R"; empty for a table
+	Spectrum   string      // "design", "MCE_R", "elastic"; empty for a table
+	Symbol     string      // what the standard calls the ordinate: "S_a", "S_e"
 	Damping    float64     // ratio that the ordinates hold for
 	Parameters []Parameter // in reading order: given, then derived
 	Branches   []Branch    // by rising period, each starting where the last ends
 	Corners    []Corner    // named periods where branches meet
+	Conditions []Condition // what the standard asks before its spectrum may be used
 	Warnings   []Warning
+	Notes      []string // what the reader should know of how it was made
 
+	// MultiPeriod is set where the ordinates of ASCE/SEI 7-22 11.4.5.1 are given
+	// period by period.
+	MultiPeriod bool
 	// Vertical is set for a spectrum of vertical motion.
 	Vertical bool
 	// Q is the behaviour factor that the ordinates are already divided by; 0
 	// where they are elastic.
 	Q float64
 	// Exception is the number of the exception to ASCE/SEI 7-16 11.4.8 that the
-	// author claims; 0: none.
+	// author claims and that binds what comes after the spectrum; 0: none.
 	Exception int
 	// Given is what the spectrum was built from, so that it can be built again
 	// at another damping.
@@ -46,10 +51,13 @@ type Parameter struct {
 	Text   string  // the word, where the parameter is one: "D"
 	Doc    string
 	Given  bool // false: derived
-	Ref    cite.Ref
+	// Formula is how a derived number follows from others, in the language of
+	// formula lines; empty where it was given or read from a table.
+	Formula string
+	Ref     cite.Ref
 }
 
-// Branch is PSA = A0 + A1 T + B1/T + B2/T² for From <= T <= To.
+// Branch is PSA = A0 + A1 T + B1/T + B2/T² + C T^Power for From <= T <= To.
 type Branch struct {
 	Name     string  // "plateau"
 	From, To float64 // s; To 0: without end
@@ -57,13 +65,26 @@ type Branch struct {
 	A1       float64 // m/s³
 	B1       float64 // m/s
 	B2       float64 // m
-	Ref      cite.Ref
+	C, Power float64 // C: m/s² at 1 s
+	// Formula is the ordinate as the clause gives it, over T and the parameters,
+	// in the language of formula lines: an acceleration, or a pure number in g.
+	Formula string
+	// Step is set where the standard itself jumps at From.
+	Step bool
+	Ref  cite.Ref
 }
 
 // Corner is a named period.
 type Corner struct {
 	Symbol string // "T_S"
 	T      float64
+}
+
+// Condition is something that the standard asks, and how it stands here.
+type Condition struct {
+	Text  string
+	State string // "applies", "does not apply", "not evaluated", "claimed"
+	Ref   cite.Ref
 }
 
 // Warning is something that the reader of a spectrum must know.
@@ -81,6 +102,9 @@ func (b Branch) At(T float64) float64 {
 	if b.B2 != 0 {
 		y += b.B2 / (T * T)
 	}
+	if b.C != 0 {
+		y += b.C * math.Pow(T, b.Power)
+	}
 	return y
 }
 
@@ -94,15 +118,11 @@ func (t *Target) PSA(T float64) (float64, error) {
 	return b.At(T), nil
 }
 
-// AtDamping is the spectrum at another damping ratio, by the rule of its own
-// standard; an error where the standard has none. The ratio it holds for gives
-// the spectrum itself.
-func (t *Target) AtDamping(z float64) (*Target, error) {
-	if math.Abs(z-t.Damping) <= 1e-9 {
-		return t, nil
-	}
-	return nil, fmt.Errorf("the spectrum holds for %s %% damping, and its standard gives no rule here to adjust it to %s %%",
-		quantity.Format(100*t.Damping, 4), quantity.Format(100*z, 4))
+// SD is the displacement of an oscillator of period T that the ordinate stands
+// for, m: PSA (T/2π)², 0 at T = 0.
+func (t *Target) SD(T float64) (float64, error) {
+	y, err := t.PSA(T)
+	return y * T * T / (4 * math.Pi * math.Pi), err
 }
 
 // BranchAt is the branch that holds period T; where two meet, the one below.

@@ -6,9 +6,6 @@ import (
 
 	"quoin/calc/diag"
 	"quoin/calc/document/field"
-	"quoin/calc/document/formula"
-	"quoin/calc/exhibit"
-	"quoin/calc/expr"
 	"quoin/calc/quantity"
 	"quoin/calc/standard"
 )
@@ -20,17 +17,24 @@ var targetKind = Kind{
 	New:     func() Body { return &target{} },
 	Product: func() any { return &standard.Target{} },
 	Exports: targetExports(),
-	Functions: []Function{{
-		Name: "PSA", Usage: "PSA(T)", Doc: "pseudo-acceleration at period T", Min: 1, Max: 1, Dims: []quantity.Dim{quantity.Time}, Args: []string{"the period"}, Unit: inG,
-		Call: func(product any, args []float64) (float64, error) { return product.(*standard.Target).PSA(args[0]) },
-	}},
+	Functions: []Function{
+		targetFunction("PSA", "pseudo-acceleration at period T", inG, (*standard.Target).PSA),
+		targetFunction("SD", "displacement at period T that the pseudo-acceleration stands for: PSA (T/2π)²", quantity.MustUnit("mm"), (*standard.Target).SD),
+	},
+}
+
+func targetFunction(name, doc string, unit quantity.Unit, read func(*standard.Target, float64) (float64, error)) Function {
+	return Function{
+		Name: name, Usage: name + "(T)", Doc: doc, Min: 1, Max: 1, Dims: []quantity.Dim{quantity.Time}, Args: []string{"the period"}, Unit: unit,
+		Call: func(product any, args []float64) (float64, error) { return read(product.(*standard.Target), args[0]) },
+	}
 }
 
 // targetExports are the numbers of every standard, given or derived.
 func targetExports() []Export {
 	out := []Export{{"T_0", "start of the plateau", "s"}, {"T_S", "end of the plateau", "s"}, {"damping", "damping ratio that the spectrum holds for", ""}}
 	for _, s := range standard.Standards {
-		for _, p := range s.Parameters {
+		for _, p := range slices.Concat(s.Parameters, s.Derived) {
 			if p.Kind == standard.Number && !slices.ContainsFunc(out, func(e Export) bool { return e.Name == p.Symbol }) {
 				out = append(out, Export{p.Symbol, p.Doc, quantity.SIUnit(p.Dim).Text})
 			}
@@ -41,21 +45,43 @@ func targetExports() []Export {
 
 type target struct {
 	common
-	Basis    field.Field `name:"basis" is:"text" doc:"the standard: ASCE/SEI 7-22; not needed with a table"`
+	Basis    field.Field `name:"basis" is:"text" doc:"the standard: ASCE/SEI 7-22, ASCE/SEI 7-16 or EN 1998-1:2004; not needed with a table"`
 	Table    tableSource `name:"table" doc:"a file of periods and ordinates"`
-	Columns  field.Field `name:"columns" is:"text" many:"yes" doc:"of the table: the columns of period and ordinate, by name or number from 1"`
-	Units    field.Field `name:"units" is:"text" many:"yes" doc:"of the table: their units, where its head does not state them"`
-	Spectrum field.Field `name:"spectrum" is:"text" doc:"which spectrum of the standard: design or MCE_R"`
+	Columns  field.Field `name:"columns" is:"text" many:"yes" doc:"of the table or the ordinates: the columns of period and ordinate, by name or number from 1"`
+	Units    field.Field `name:"units" is:"text" many:"yes" doc:"of the table or the ordinates: their units, where the head does not state them"`
+	Spectrum field.Field `name:"spectrum" is:"text" doc:"which spectrum of the standard: design or MCE_R (7-22); also vertical, MCE_R vertical (7-16); elastic, design, vertical, vertical design (EN)"`
 	SS       field.Field `name:"S_S" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"not-negative" doc:"mapped acceleration at short periods, in g"`
 	S1       field.Field `name:"S_1" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"not-negative" doc:"mapped acceleration at 1 s, in g"`
-	Site     field.Field `name:"site" is:"text" label:"site class" doc:"site class"`
+	Site     field.Field `name:"site" is:"text" label:"site class" doc:"site class: A, B, C, D, E, F or default (7-16 also B estimated, 7-22 also BC, CD, DE)"`
+	Vs30     field.Field `name:"vs30" is:"velocity" must:"positive" show:"m/s|ft/s" label:"mean shear wave velocity" doc:"of 7-22 ordinates: mean shear wave velocity of the upper 30 m, in place of or beside the site class"`
+	Specific field.Field `name:"site_specific" is:"text" label:"site-specific study" doc:"of 7-16: how 11.4.8 is met, where it asks for a study: study, exception, or supplement 3"`
+	Fa       field.Field `name:"F_a" is:"number" must:"positive" doc:"of 7-16: short-period site coefficient, where it is not that of the table"`
+	Fv       field.Field `name:"F_v" is:"number" must:"positive" doc:"of 7-16: long-period site coefficient, where it is not that of the table"`
 	SMS      field.Field `name:"S_MS" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"positive" doc:"MCE_R acceleration at short periods, in g"`
 	SM1      field.Field `name:"S_M1" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"positive" doc:"MCE_R acceleration at 1 s, in g"`
 	SDS      field.Field `name:"S_DS" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"positive" doc:"design acceleration at short periods, in g"`
 	SD1      field.Field `name:"S_D1" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"positive" doc:"design acceleration at 1 s, in g"`
 	TL       field.Field `name:"T_L" is:"time" must:"positive" doc:"long-period transition period"`
-	Risk     field.Field `name:"risk" is:"text" label:"risk category" doc:"risk category"`
-	Damping  field.Field `name:"damping" is:"number" must:"fraction" show:"%" doc:"of a table: the damping its ordinates hold for"`
+	Risk     field.Field `name:"risk" is:"text" label:"risk category" doc:"risk category I, II, III or IV: gives I_e and the design category"`
+	Ordin    field.Field `name:"ordinates" is:"file" doc:"of 7-22: a file with the 22 periods and ordinates of the multi-period spectrum"`
+	OrdinOf  field.Field `name:"ordinates_of" is:"text" label:"ordinates of" doc:"which spectrum the ordinates are of: MCE_R or design"`
+	Type     field.Field `name:"type" is:"text" doc:"of EN 1998-1: type of the spectrum, 1 or 2"`
+	Ground   field.Field `name:"ground" is:"text" label:"ground type" doc:"of EN 1998-1: ground type A, B, C, D or E"`
+	AgR      field.Field `name:"a_gR" is:"acceleration" must:"positive" show:"g" label:"reference ground acceleration" doc:"of EN 1998-1: reference peak ground acceleration; with gamma_I or importance"`
+	Class    field.Field `name:"importance" is:"text" label:"importance class" doc:"of EN 1998-1: importance class I, II, III or IV, for the recommended gamma_I"`
+	GammaI   field.Field `name:"gamma_I" is:"number" must:"positive" doc:"of EN 1998-1: importance factor"`
+	Ag       field.Field `name:"a_g" is:"acceleration" must:"positive" show:"g" label:"design ground acceleration" doc:"of EN 1998-1: design ground acceleration, gamma_I a_gR; it holds gamma_I already"`
+	S        field.Field `name:"S" is:"number" must:"positive" doc:"of EN 1998-1: soil factor, where a national value differs from the recommended one"`
+	TB       field.Field `name:"T_B" is:"time" must:"positive" doc:"of EN 1998-1: national value"`
+	TC       field.Field `name:"T_C" is:"time" must:"positive" doc:"of EN 1998-1: national value"`
+	TD       field.Field `name:"T_D" is:"time" must:"positive" doc:"of EN 1998-1: national value"`
+	TE       field.Field `name:"T_E" is:"time" must:"positive" doc:"of EN 1998-1: national value, of the elastic spectrum beyond 4 s"`
+	TF       field.Field `name:"T_F" is:"time" must:"positive" doc:"of EN 1998-1: national value, of the elastic spectrum beyond 4 s"`
+	Ratio    field.Field `name:"vertical_ratio" is:"number" must:"positive" doc:"of EN 1998-1: a_vg/a_g of vertical spectra, national value"`
+	Xi       field.Field `name:"xi" is:"number" must:"fraction" show:"%" doc:"of EN 1998-1: viscous damping ratio of an elastic spectrum; 5 % if not given"`
+	Q        field.Field `name:"q" is:"number" must:"positive" label:"behaviour factor" doc:"of EN 1998-1: behaviour factor of a design spectrum"`
+	Beta     field.Field `name:"beta" is:"number" must:"positive" doc:"of EN 1998-1: factor of the lower bound of a design spectrum, national value"`
+	Damping  field.Field `name:"damping" is:"number" must:"fraction" show:"%" doc:"of a table: the damping its ordinates hold for; of EN 1998-1: xi"`
 	Periods  field.Field `name:"periods" is:"block" of:"periods" doc:"periods of its series and figure"`
 }
 
@@ -82,35 +108,8 @@ func (b *target) Run(r *Run) {
 		r.Fail(b.Basis, "missing-field", "the target block needs the field basis, or a table").WithHint("bases: %s", strings.Join(bases(), ", "))
 		return
 	}
-	given := standard.Given{Numbers: map[string]float64{}, Texts: map[string]string{}, Columns: map[string][]float64{}}
-	at := map[string]field.Field{"basis": b.Basis, "T": b.Table.File, "PSA": b.Table.File}
-	field.Top(b, func(f *field.Field, s field.Spec) {
-		switch s.Name {
-		case "basis", "columns", "units", "periods", "caption", "note", "cite", "show":
-			return
-		case "damping":
-			if basis != tableBasis {
-				at[s.Name] = *f
-				return
-			}
-		}
-		at[s.Name] = *f
-		switch {
-		case !f.Given:
-		case s.Quantity:
-			given.Numbers[s.Name] = f.SI()
-		default:
-			given.Texts[s.Name] = f.Text()
-		}
-	})
-	if b.Damping.Given && basis != tableBasis && b.Damping.SI() != 0.05 {
-		r.Fail(b.Damping, "target-damping", "the spectrum of %s holds for 5 %% damping; the standard gives no rule for another here", basis)
-		return
-	}
-	if basis == tableBasis && !b.columns(r, &given) {
-		return
-	}
-	if _, ok := standard.Lookup(basis); !ok {
+	std, ok := standard.Lookup(basis)
+	if !ok {
 		e := r.Fail(b.Basis, "unknown-basis", "there is no basis %s", basis)
 		if near := diag.Nearest(basis, bases()); near != "" {
 			e.WithHint("did you mean %s?", near)
@@ -119,10 +118,14 @@ func (b *target) Run(r *Run) {
 		}
 		return
 	}
+	given, at := b.given(basis)
+	if !b.damping(r, std, given, at) || !b.files(r, basis, given, at) {
+		return
+	}
 	t, err := standard.Build(basis, given)
 	if err != nil {
 		for _, p := range standard.Problems(err) {
-			r.Fail(at[p.Symbol], "target", "%s: %s", p.Symbol, p.Problem).WithHint("%s", p.Hint)
+			r.Fail(at[p.Symbol], "target", "%s: %s", named(p.Symbol, basis), p.Problem).WithHint("%s", p.Hint)
 		}
 		if len(standard.Problems(err)) == 0 {
 			r.Fail(b.Basis, "target", "%s", err)
@@ -132,12 +135,63 @@ func (b *target) Run(r *Run) {
 	b.results(r, t)
 }
 
-func bases() []string {
-	return slices.DeleteFunc(standard.Bases(), func(s string) bool { return s == tableBasis })
+// named is a parameter as the document knows it.
+func named(symbol, basis string) string {
+	if (symbol == "T" || symbol == "PSA") && basis != tableBasis {
+		return "ordinates"
+	}
+	return symbol
 }
 
-// columns reads the table's columns.
-func (b *target) columns(r *Run, given *standard.Given) bool {
+// given are the numbers and words of the fields by symbol, and where each stands.
+func (b *target) given(basis string) (standard.Given, map[string]field.Field) {
+	given := standard.Given{Numbers: map[string]float64{}, Texts: map[string]string{}, Columns: map[string][]float64{}}
+	at := map[string]field.Field{}
+	field.Top(b, func(f *field.Field, s field.Spec) {
+		at[s.Name] = *f
+		switch s.Name {
+		case "basis", "columns", "units", "periods", "ordinates", "damping", "caption", "note", "cite", "show":
+			return
+		}
+		switch {
+		case !f.Given:
+		case s.Quantity:
+			given.Numbers[s.Name] = f.SI()
+		default:
+			given.Texts[s.Name] = f.Text()
+		}
+	})
+	source := b.Ordin
+	if basis == tableBasis {
+		source = b.Table.File
+	}
+	at["T"], at["PSA"] = source, source
+	return given, at
+}
+
+// damping is the field damping: of a table, or another word for the standard's
+// own parameter.
+func (b *target) damping(r *Run, std standard.Standard, given standard.Given, at map[string]field.Field) bool {
+	if !b.Damping.Given || std.Basis == tableBasis {
+		return true
+	}
+	switch z := b.Damping.SI(); {
+	case std.Damping == "" && z != 0.05:
+		r.Fail(b.Damping, "target-damping", "the spectrum of %s holds for 5 %% damping; the standard gives no rule for another here", std.Basis)
+		return false
+	case std.Damping == "":
+	case at[std.Damping].Given:
+		r.Fail(b.Damping, "target-damping", "%s is the damping of this standard, and it is given already", std.Damping).WithHint("give one of the two")
+		return false
+	default:
+		given.Numbers[std.Damping] = z
+		at[std.Damping] = b.Damping
+	}
+	return true
+}
+
+// files reads the columns of a table or of ordinates.
+func (b *target) files(r *Run, basis string, given standard.Given, at map[string]field.Field) bool {
 	names, units, damping := b.Table.Columns, b.Table.Units, b.Table.Damping
 	if b.Columns.Given {
 		names = b.Columns
@@ -148,15 +202,47 @@ func (b *target) columns(r *Run, given *standard.Given) bool {
 	if b.Damping.Given {
 		damping = b.Damping
 	}
-	s := r.readSheet(b.Table.File, names, units)
+	switch {
+	case basis == tableBasis && b.Ordin.Given:
+		r.Fail(b.Ordin, "target-basis", "ordinates belong to the multi-period spectrum of ASCE/SEI 7-22, and this target is a table").WithHint("give one of the two")
+		return false
+	case basis == tableBasis:
+		if !b.columns(r, b.Table.File, names, units, given) {
+			return false
+		}
+		if !damping.Given {
+			r.Fail(b.Table.File, "missing-field", "a table needs the field damping: the ratio its ordinates hold for").WithHint("write  damping: 5 %%")
+			return false
+		}
+		given.Numbers["damping"] = damping.SI()
+		r.Used("damping", "damping", inUnits(damping.SI(), percent), "")
+		r.Used("table", "table", plain(b.Table.File.Text()), "")
+		r.Used("rows", "rows of the table", plain(quantity.Plain(float64(len(given.Columns["T"])))), "")
+	case b.Ordin.Given:
+		if !b.columns(r, b.Ordin, names, units, given) {
+			return false
+		}
+		r.Used("rows", "rows of the ordinates", plain(quantity.Plain(float64(len(given.Columns["T"])))), "")
+	case names.Given:
+		r.Fail(names, "target-basis", "columns are those of a table or of ordinates, and there is no file")
+		return false
+	case units.Given:
+		r.Fail(units, "target-basis", "units are those of a table or of ordinates, and there is no file")
+		return false
+	}
+	return true
+}
+
+func bases() []string {
+	return slices.DeleteFunc(standard.Bases(), func(s string) bool { return s == tableBasis })
+}
+
+// columns reads the columns of period and ordinate of a file.
+func (b *target) columns(r *Run, file, names, units field.Field, given standard.Given) bool {
+	s := r.readSheet(file, names, units)
 	if s == nil {
 		return false
 	}
-	if !damping.Given {
-		r.Fail(b.Table.File, "missing-field", "a table needs the field damping: the ratio its ordinates hold for").WithHint("write  damping: 5 %%")
-		return false
-	}
-	given.Numbers["damping"] = damping.SI()
 	want := []string{"1", "2"}
 	if names.Given {
 		if want = names.Texts(); len(want) != 2 {
@@ -164,7 +250,7 @@ func (b *target) columns(r *Run, given *standard.Given) bool {
 			return false
 		}
 	} else if len(s.columns) != 2 {
-		r.Fail(b.Table.File, "table-columns", "%s has %d columns; say which hold period and ordinate", s.path, len(s.columns)).WithHint("columns: [period, ordinate]; %s", s.names())
+		r.Fail(file, "table-columns", "%s has %d columns; say which hold period and ordinate", s.path, len(s.columns)).WithHint("columns: [period, ordinate]; %s", s.names())
 		return false
 	}
 	for i, key := range []string{"T", "PSA"} {
@@ -199,186 +285,5 @@ func (b *target) columns(r *Run, given *standard.Given) bool {
 		}
 		given.Columns[key] = x
 	}
-	r.Used("damping", "damping", inUnits(damping.SI(), percent), "")
-	r.Used("table", "table", plain(b.Table.File.Text()), "")
-	r.Used("rows", "rows of the table", plain(quantity.Plain(float64(len(given.Columns["T"])))), "")
 	return true
-}
-
-func (b *target) results(r *Run, t *standard.Target) {
-	r.Made = t
-	std, _ := standard.Lookup(t.Basis)
-	for _, p := range t.Parameters {
-		if p.Text == "" && p.Symbol != "damping" {
-			r.Number(p.Symbol, p.Value, quantity.MustUnit(p.Unit))
-		}
-	}
-	r.Number("damping", t.Damping, percent)
-	for _, w := range t.Warnings {
-		switch w.Code {
-		case "two-period":
-			r.Caution("two-period")
-		default:
-			r.Warn(w.Code, "%s", w.Text)
-		}
-	}
-	if t.Basis == tableBasis {
-		r.Caution("table-target")
-		r.Explain("Pseudo-acceleration is linear in the period between the rows of the table and is not given beyond its ends.")
-	} else {
-		r.Explain("Pseudo-acceleration spectrum of "+std.Ref.String()+" for "+damped(t.Damping)+" damping; spectral parameters are pure numbers, in $g = 9.80665\\;\\mathrm{m/s^2}$.", std.Ref)
-		r.parameters(t)
-	}
-	b.branches(r, t)
-	b.figure(r, t)
-}
-
-// parameters shows derived values as equations with their sources.
-func (r *Run) parameters(t *standard.Target) {
-	for _, p := range t.Parameters {
-		if p.Given || p.Text != "" {
-			continue
-		}
-		text, ok := derivations[p.Symbol]
-		if !ok {
-			continue
-		}
-		if p.Symbol == "S_MS" || p.Symbol == "S_M1" { // shown the way they were derived
-			continue
-		}
-		if s, ok := t.Parameter(strings.Replace(p.Symbol, "S_D", "S_M", 1)); strings.HasPrefix(p.Symbol, "S_D") && (!ok || !s.Given) {
-			continue
-		}
-		tree, findings := formula.ParseExpr(text, nil)
-		if len(findings) > 0 {
-			panic("block: derivation of " + p.Symbol)
-		}
-		unit := quantity.MustUnit(p.Unit)
-		v, findings := formula.Evaluate(tree, parameterScope{t, r.Name})
-		if len(findings) > 0 {
-			continue
-		}
-		v.Unit = unit
-		formula.ChooseDigits(tree, r.System(), unit, quantity.Digits)
-		formula.DropZeros(tree)
-		ref := p.Ref
-		r.Method = append(r.Method, exhibit.Item{Equation: &exhibit.Equation{Symbol: &expr.Node{Op: expr.Name, Text: p.Symbol, ID: r.ID(p.Symbol)}, Tree: tree, Result: &v, Digits: quantity.Digits, Description: p.Doc, Ref: &ref}})
-		r.Refs = append(r.Refs, ref)
-	}
-}
-
-// derivations of standard parameters, as the clauses give them.
-var derivations = map[string]string{
-	"S_DS": "2 / 3 * S_MS",
-	"S_D1": "2 / 3 * S_M1",
-	"T_0":  "0.2 * S_D1 / S_DS * 1 s",
-	"T_S":  "S_D1 / S_DS * 1 s",
-}
-
-// parameterScope reads a target's parameters by symbol.
-type parameterScope struct {
-	t    *standard.Target
-	name string
-}
-
-func (s parameterScope) Value(path string) (quantity.Value, string, error) {
-	p, _ := s.t.Parameter(path)
-	return quantity.Scalar(p.Value, quantity.MustUnit(p.Unit)), s.name + "." + path, nil
-}
-
-func (s parameterScope) Call(string, []quantity.Value) (quantity.Value, string, error) {
-	panic("block: a derivation calls no block")
-}
-
-func (b *target) branches(r *Run, t *standard.Target) {
-	if t.Basis == tableBasis {
-		tab := exhibit.Table{ID: r.Name + "-rows", Caption: "Rows of " + r.Name, Columns: []exhibit.Column{Col("period T", seconds), Col("PSA", inG)}}
-		for i, br := range t.Branches {
-			if i == 0 {
-				tab.Rows = append(tab.Rows, []exhibit.Cell{inUnits(br.From, seconds), Cell(br.At(br.From), inG)})
-			}
-			tab.Rows = append(tab.Rows, []exhibit.Cell{inUnits(br.To, seconds), Cell(br.At(br.To), inG)})
-		}
-		r.Table(tab)
-		return
-	}
-	tab := exhibit.Table{ID: r.Name + "-branches", Caption: "Branches of " + r.Name + ": PSA at their ends",
-		Columns: []exhibit.Column{Words("branch"), Col("from T", seconds), Col("PSA", inG), Col("to T", seconds), Col("PSA at the end", inG), Words("clause")}}
-	for _, br := range t.Branches {
-		row := []exhibit.Cell{{Text: br.Name}, Cell(br.From, seconds), Cell(br.At(br.From), inG), {Text: "no end"}, {Text: ""}, {Text: br.Ref.String()}}
-		if br.To > 0 {
-			row[3], row[4] = Cell(br.To, seconds), Cell(br.At(br.To), inG)
-		}
-		tab.Rows = append(tab.Rows, row)
-		r.Refs = append(r.Refs, br.Ref)
-	}
-	r.Table(tab)
-}
-
-// figure draws the spectrum, corners named.
-func (b *target) figure(r *Run, t *standard.Target) {
-	grid := b.grid(r, t)
-	y, err := t.Series(grid)
-	if err != nil {
-		r.Fail(b.Periods, "target-range", "%s", err)
-		return
-	}
-	id := r.Curve("PSA", grid, seconds, y, inG)
-	p := exhibit.Panel{X: exhibit.Axis{Label: "period T", Unit: seconds}, Y: exhibit.Axis{Label: "PSA", Unit: inG, Min: zero()},
-		Series: []exhibit.FigSerie{{ID: id, Label: r.Name, X: grid, Y: y, Role: exhibit.Governing}}}
-	for _, c := range t.Corners {
-		if c.T <= grid[len(grid)-1] {
-			p.Lines = append(p.Lines, exhibit.RefLine{Vertical: true, At: c.T, Label: plainSymbol(c.Symbol) + " " + quantity.Format(c.T, 3) + " s"})
-		}
-	}
-	name := t.Basis + ", " + t.Spectrum + " spectrum"
-	if t.Basis == tableBasis {
-		name = "spectrum from " + b.Table.File.Text()
-	}
-	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Target "+r.Name+": "+name+", "+damped(t.Damping)+" damping"), Panels: []exhibit.Panel{p},
-		Alt: "Pseudo-acceleration of the design spectrum against period."})
-}
-
-// plainSymbol is a symbol as plain text: T_0 is T₀, T_S is TS.
-func plainSymbol(s string) string {
-	base, sub, _ := strings.Cut(s, "_")
-	return base + strings.Map(func(r rune) rune {
-		if r >= '0' && r <= '9' {
-			return '₀' + r - '0'
-		}
-		return r
-	}, sub)
-}
-
-// grid is the periods of the series: those asked for, or a fine grid with the
-// corners, up to 4 s or a little past the last corner that lies below 6 s.
-func (b *target) grid(r *Run, t *standard.Target) []float64 {
-	if b.Periods.Given {
-		return r.Product(b.Periods.Text()).(*Grid).T
-	}
-	from, to := t.Range()
-	if t.Basis == tableBasis {
-		grid := []float64{from}
-		for _, br := range t.Branches {
-			grid = append(grid, br.To)
-		}
-		return grid
-	}
-	to = min(to, 4)
-	for _, c := range t.Corners {
-		if c.T < 6 {
-			to = max(to, 1.25*c.T)
-		}
-	}
-	grid := []float64{}
-	for i := range 201 {
-		grid = append(grid, round12(from+(to-from)*float64(i)/200))
-	}
-	for _, c := range t.Corners {
-		if c.T <= to {
-			grid = append(grid, c.T)
-		}
-	}
-	slices.Sort(grid)
-	return slices.Compact(grid)
 }
