@@ -1,16 +1,17 @@
 # What one does with this tree. Each verb sets up what it needs.
 #
 #   make demo    build the program and every example; says where the pages are
-#   make test    everything that must hold: formatting, vet, all tests
+#   make test    everything that must hold: formatting, vet, all tests, every system
 #   make bundle  what the written page carries: scripts, fonts, licences
 #   make build   the program, bin/quoin
 #   make clean   remove what was made here
 
-.PHONY: demo test bundle build clean tools modules
+.PHONY: demo test systems bundle build clean tools modules
 .DEFAULT_GOAL := demo
 
 go_files := find . -name '*.go' -not -path './node_modules/*' -not -path './.git/*'
 bundled  := templates/dist/page.js
+machines := linux/amd64 linux/arm64 darwin/amd64 darwin/arm64 windows/amd64 windows/arm64
 
 demo: build
 	@for f in examples/*/package.md; do \
@@ -25,7 +26,17 @@ test: bundle
 	@unformatted=$$($(go_files) -exec gofmt -l {} +); \
 		[ -z "$$unformatted" ] || { echo "gofmt would change:" $$unformatted >&2; exit 1; }
 	go vet ./...
+	@$(MAKE) --no-print-directory systems
 	go test ./...
+
+# Compiles and links for every system that engineers use, and compiles the tests
+# for the one that is least like this one.
+systems: bundle
+	@for s in $(machines); do \
+		echo "compiling for $$s"; \
+		CGO_ENABLED=0 GOOS=$${s%/*} GOARCH=$${s#*/} go build -o /dev/null ./cmd/quoin || exit; \
+	done
+	CGO_ENABLED=0 GOOS=windows GOARCH=amd64 go vet ./...
 
 build: bundle
 	go build -o bin/quoin ./cmd/quoin

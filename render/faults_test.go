@@ -23,11 +23,11 @@ func TestFaults(t *testing.T) {
 		math(8, exhibit.MathBlock, "\\frac{a}\n\\last"), math(99, exhibit.Math, `\gone`),
 		{Kind: exhibit.Math, Text: `\elsewhere`, Place: exhibit.Place{File: "other.md", Line: 3}}}
 	drawn := 0
-	_, err := Package(p, map[string][]byte{"package.md": []byte(source)}, func(_, _ int, what string) {
+	_, err := Package(p, map[string][]byte{"package.md": []byte(source)}, Options{Progress: func(_, _ int, what string) {
 		if what != equation {
 			drawn++
 		}
-	})
+	}})
 	var f *Faults
 	if !errors.As(err, &f) || drawn > 0 {
 		t.Fatalf("%v, %d pictures drawn", err, drawn)

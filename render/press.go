@@ -14,45 +14,54 @@ import (
 
 // press makes what is slow to make, the pictures and the equations of the prose,
 // on all cores. The page is laid out twice: the first time it says what it
-// needs, the second time it gets it. So the page alone decides what is drawn.
+// needs, the second time it gets it. So the page alone decides what is drawn. Where
+// the cache holds all of it, the first time is the last, and no script is started.
 type press struct {
-	jobs  []*job // in the order the page asked
-	byKey map[string]*job
-	done  int // jobs made
+	cache   Cache  // may be nil
+	jobs    []*job // what is to be made, in the order the page asked
+	byKey   map[string]*job
+	options map[string]option // of figures, by id
+	done    int               // jobs made
 }
 
 // job is one thing to make, once.
 type job struct {
+	key  string
 	name string // for progress
 	make func() (string, error)
 	text string
 	err  error
 }
 
+// option is what a figure becomes before it is drawn.
+type option struct {
+	text   []byte
+	height int
+	err    error
+}
+
 // index is index.html. Formulas are set before any picture is drawn, and what is
 // wrong with them is told at once, as [*Faults].
-func index(p *exhibit.Package, files map[string][]byte, digest string, progress func(done, total int, what string)) ([]byte, error) {
+func index(p *exhibit.Package, files map[string][]byte, digest string, o Options) ([]byte, error) {
 	assets, err := assets()
 	if err != nil {
 		return nil, err
 	}
-	r := &press{byKey: map[string]*job{}}
-	options := page.Options{Digest: digest, Assets: assets, Chart: chart.Option,
-		Picture: func(f exhibit.Figure, prefix string) (string, error) {
-			return r.ask("picture "+f.ID+"\x00"+prefix, f.ID, func() (string, error) { return chart.Pictures(f, prefix) })
-		},
+	r := &press{cache: o.Cache, byKey: map[string]*job{}, options: map[string]option{}}
+	options := page.Options{Digest: digest, Assets: assets, Chart: r.chart, Picture: r.picture,
 		TeX: func(src string, display bool) (string, error) {
 			return r.ask(formulaKey(src, display), equation, func() (string, error) { return script.TeX(src, display) })
 		}}
-	if _, err := page.Render(p, options); err != nil {
-		return nil, err
+	first, err := page.Render(p, options)
+	if err != nil || len(r.jobs) == 0 {
+		return first, err
 	}
 	isFormula := func(j *job) bool { return j.name == equation }
-	r.run(progress, isFormula)
+	r.run(o.Progress, isFormula)
 	if err := r.faults(p, files); err != nil {
 		return nil, err
 	}
-	r.run(progress, func(j *job) bool { return !isFormula(j) })
+	r.run(o.Progress, func(j *job) bool { return !isFormula(j) })
 	return page.Render(p, options)
 }
 
@@ -61,15 +70,48 @@ const equation = "an equation"
 
 func formulaKey(src string, display bool) string { return fmt.Sprintf("tex %t %s", display, src) }
 
-// ask gives what was made for a key, or notes that it is wanted and gives nothing.
+// chart is the option of a figure, made once: its id is its own.
+func (r *press) chart(f exhibit.Figure) ([]byte, int, error) {
+	o, ok := r.options[f.ID]
+	if !ok {
+		o.text, o.height, o.err = chart.Option(f)
+		r.options[f.ID] = o
+	}
+	return o.text, o.height, o.err
+}
+
+// picture draws a figure. What is drawn follows from its option and its words.
+func (r *press) picture(f exhibit.Figure, prefix string) (string, error) {
+	text, height, err := r.chart(f)
+	if err != nil {
+		return "", err
+	}
+	key := fmt.Sprintf("picture %q %q %q %d %s", prefix, f.Caption, f.Alt, height, text)
+	return r.ask(key, f.ID, func() (string, error) { return chart.Pictures(f, text, height, prefix) })
+}
+
+// ask gives what was made for a key, now or on another day, or notes that it is
+// wanted and gives nothing.
 func (r *press) ask(key, name string, make func() (string, error)) (string, error) {
 	j := r.byKey[key]
 	if j == nil {
-		j = &job{name: name, make: make}
+		j = &job{key: key, name: name, make: make}
 		r.byKey[key] = j
-		r.jobs = append(r.jobs, j)
+		if !j.recall(r.cache) {
+			r.jobs = append(r.jobs, j)
+		}
 	}
 	return j.text, j.err
+}
+
+// recall takes the thing from the cache.
+func (j *job) recall(c Cache) bool {
+	if c == nil {
+		return false
+	}
+	data, ok := c.Get(j.key)
+	j.text = string(data)
+	return ok
 }
 
 // run makes what was asked for, of the kind wanted. A panic on one of the cores
@@ -82,7 +124,7 @@ func (r *press) run(progress func(done, total int, what string), wanted func(*jo
 	for range runtime.GOMAXPROCS(0) {
 		group.Go(func() {
 			for j := range next {
-				f := j.do()
+				f := j.do(r.cache)
 				mu.Lock()
 				if f != nil && fault == nil {
 					fault = f
@@ -106,14 +148,16 @@ func (r *press) run(progress func(done, total int, what string), wanted func(*jo
 	}
 }
 
-// do makes the thing and gives back a panic, with what was being made.
-func (j *job) do() (fault any) {
+// do makes the thing, keeps it, and gives back a panic, with what was being made.
+func (j *job) do(c Cache) (fault any) {
 	defer func() {
 		if f := recover(); f != nil {
 			fault = fmt.Sprintf("%v, making %s", f, j.name)
 		}
 	}()
-	j.text, j.err = j.make()
+	if j.text, j.err = j.make(); j.err == nil && c != nil {
+		c.Put(j.key, []byte(j.text))
+	}
 	return nil
 }
 

@@ -9,12 +9,28 @@ import (
 	"quoin/render/ledger"
 )
 
+// Options are what is no part of the package.
+type Options struct {
+	// Progress, if set, is told of every picture drawn, one at a time.
+	Progress func(done, total int, what string)
+	// Cache, if set, keeps pictures and equations for the next time.
+	Cache Cache
+}
+
+// Cache keeps bytes by key from one run of this very program to the next. What it
+// gives is what was put under the key, or nothing; it may lose anything at any
+// time. It is used from several goroutines.
+type Cache interface {
+	Get(key string) ([]byte, bool)
+	Put(key string, data []byte)
+}
+
 // Package is every file of the folder of p, by slash path: the page, the
 // results, the tables, the inputs it was built from and the manifest. files is
 // every file that was read, by path relative to the root. The same package and
-// files give the same bytes. progress, if set, is told of every picture drawn,
-// one at a time. What is wrong with the formulas of the prose is a [*Faults].
-func Package(p *exhibit.Package, files map[string][]byte, progress func(done, total int, what string)) (map[string][]byte, error) {
+// files give the same bytes, with a cache and without. What is wrong with the
+// formulas of the prose is a [*Faults].
+func Package(p *exhibit.Package, files map[string][]byte, o Options) (map[string][]byte, error) {
 	out, err := ledger.Tables(p)
 	if err != nil {
 		return nil, err
@@ -27,7 +43,7 @@ func Package(p *exhibit.Package, files map[string][]byte, progress func(done, to
 		return nil, err
 	}
 	digest := ledger.Digest(inputs, p.Provenance.Tool)
-	if out["index.html"], err = index(p, files, digest, progress); err != nil {
+	if out["index.html"], err = index(p, files, digest, o); err != nil {
 		return nil, err
 	}
 	maps.Copy(out, inputs)

@@ -39,7 +39,7 @@ var files = map[string][]byte{"package.md": []byte("text\n"), "data/a.csv": []by
 
 func TestPackage(t *testing.T) {
 	var told []string
-	got, err := Package(sample(), files, func(done, total int, what string) { told = append(told, fmt.Sprintf("%d/%d", done, total)) })
+	got, err := Package(sample(), files, Options{Progress: func(done, total int, what string) { told = append(told, fmt.Sprintf("%d/%d", done, total)) }})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -68,12 +68,12 @@ func TestPackage(t *testing.T) {
 
 // The bytes do not depend on the number of cores, nor on what was made before.
 func TestPackageIsTheSameAgain(t *testing.T) {
-	first, err := Package(sample(), files, nil)
+	first, err := Package(sample(), files, Options{})
 	if err != nil {
 		t.Fatal(err)
 	}
 	defer runtime.GOMAXPROCS(runtime.GOMAXPROCS(1))
-	again, err := Package(sample(), files, nil)
+	again, err := Package(sample(), files, Options{})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -82,7 +82,7 @@ func TestPackageIsTheSameAgain(t *testing.T) {
 	}
 	other := sample()
 	other.Chapters[0].Pieces[1].Block.Parts[0].Items[0].Figure.Panels[0].Series[0].Y[1] = 8
-	changed, err := Package(other, files, nil)
+	changed, err := Package(other, files, Options{})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -106,7 +106,7 @@ func TestPackageRefuses(t *testing.T) {
 	} {
 		p, f := sample(), maps.Clone(files)
 		spoil(p, f)
-		if _, err := Package(p, f, nil); err == nil {
+		if _, err := Package(p, f, Options{}); err == nil {
 			t.Errorf("%s: no error", name)
 		}
 	}

@@ -43,6 +43,7 @@ type node struct {
 	def    block.Kind
 	body   block.Body
 	result block.Result
+	key    string // of what it gave, in the cache; "" where that is not known
 
 	// a formula line or check
 	line       formula.Line

@@ -33,6 +33,9 @@ type Options struct {
 	// Progress, if set, is told of every node that is done; it may be called
 	// from several goroutines, one at a time.
 	Progress func(done, total int, what string)
+	// Cache, if set, keeps the results of blocks for the next run. With it and
+	// without, Run gives the same.
+	Cache Cache
 }
 
 // Result is what a run gives. Package is nil when there are errors.

@@ -168,12 +168,20 @@ func (d *run) runBlock(n *node, sc scope) {
 	if n.diags.HasErrors() {
 		return
 	}
-	r := &block.Run{Env: sc, Name: n.name, Kind: n.def, Place: n.at}
-	r.EchoFields(n.body)
-	n.body.Run(r)
-	n.result = r.Result
-	n.diags = append(n.diags, r.Diags...)
-	n.result.Diags = nil
+	asking := d.asking(n)
+	if asking == "" || !d.recall(n, sc, asking) {
+		w := &witness{scope: sc}
+		r := &block.Run{Env: w, Name: n.name, Kind: n.def, Place: n.at}
+		r.EchoFields(n.body)
+		n.body.Run(r)
+		said := r.Diags
+		n.result = r.Result
+		n.result.Diags = nil
+		n.diags = append(n.diags, said...)
+		if asking != "" {
+			d.remember(n, w, asking, said)
+		}
+	}
 	if n.diags.HasErrors() {
 		return
 	}
@@ -233,7 +241,7 @@ func (s scope) Call(path string, args []quantity.Value) (quantity.Value, string,
 	if !ok {
 		return quantity.Value{}, "", fmt.Errorf("%s has no function %s", first, rest)
 	}
-	v, err := fn.Apply(to.result.Made, args)
+	v, err := s.called(to, rest, args, func() (quantity.Value, error) { return fn.Apply(to.result.Made, args) })
 	return v, "", err
 }
 
@@ -251,6 +259,24 @@ func (s scope) Read(name, role string) ([]byte, string, error) {
 	}
 	data, err := s.d.files.read(full, role)
 	return data, full, err
+}
+
+// sum is the SHA-256 of a file named in the document, as Read would open it; the
+// file is not an input of the package by that.
+func (s scope) sum(name string) (full, sum string, err error) {
+	if full, err = below(path.Dir(s.n.part.name), name); err != nil {
+		return "", "", err
+	}
+	sum, err = s.d.files.sum(full)
+	return full, sum, err
+}
+
+// block is the block of a name, or nil.
+func (s scope) block(name string) *node {
+	if to := s.d.names[formula.Normal(name)]; to != nil && to.kind == blockNode {
+		return to
+	}
+	return nil
 }
 
 // Curves are the computed series with this id.

@@ -26,7 +26,8 @@ type files struct {
 
 type readFile struct {
 	data []byte
-	role string
+	sum  string // SHA-256 in hexadecimal
+	role string // what it is read as; "" while it is none of the inputs
 	err  error
 }
 
@@ -48,17 +49,33 @@ func below(dir, name string) (string, error) {
 	return full, nil
 }
 
-// read gives the bytes of a file below the root.
+// read gives the bytes of a file below the root. Of several roles a file has the
+// last in the alphabet, whoever comes first: a record that is linked as well is a
+// record, no attachment.
 func (f *files) read(full, role string) ([]byte, error) {
+	r := f.get(full, role)
+	return r.data, r.err
+}
+
+// sum is the SHA-256 of a file that does not become an input by that.
+func (f *files) sum(full string) (string, error) {
+	r := f.get(full, "")
+	return r.sum, r.err
+}
+
+func (f *files) get(full, role string) readFile {
 	f.mu.Lock()
 	defer f.mu.Unlock()
-	if r, ok := f.got[full]; ok {
-		return r.data, r.err
+	r, ok := f.got[full]
+	if !ok {
+		if r.data, r.err = f.open(full); r.err == nil {
+			sum := sha256.Sum256(r.data)
+			r.sum = hex.EncodeToString(sum[:])
+		}
 	}
-	r := readFile{role: role}
-	r.data, r.err = f.open(full)
+	r.role = max(r.role, role)
 	f.got[full] = r
-	return r.data, r.err
+	return r
 }
 
 func (f *files) open(full string) ([]byte, error) {
@@ -97,7 +114,7 @@ func cause(err error) string {
 func (f *files) contents() map[string][]byte {
 	out := map[string][]byte{}
 	for p, r := range f.got {
-		if r.err == nil {
+		if r.err == nil && r.role != "" {
 			out[p] = r.data
 		}
 	}
@@ -108,9 +125,8 @@ func (f *files) contents() map[string][]byte {
 func (f *files) inputs(main string) []exhibit.Input {
 	var out []exhibit.Input
 	for p, r := range f.got {
-		if r.err == nil {
-			sum := sha256.Sum256(r.data)
-			out = append(out, exhibit.Input{Path: p, SHA256: hex.EncodeToString(sum[:]), Bytes: len(r.data), Role: r.role})
+		if r.err == nil && r.role != "" {
+			out = append(out, exhibit.Input{Path: p, SHA256: r.sum, Bytes: len(r.data), Role: r.role})
 		}
 	}
 	slices.SortFunc(out, func(a, b exhibit.Input) int {

@@ -9,6 +9,9 @@ import (
 var devices = []string{"con", "prn", "aux", "nul", "com1", "com2", "com3", "com4", "com5", "com6", "com7", "com8", "com9",
 	"lpt1", "lpt2", "lpt3", "lpt4", "lpt5", "lpt6", "lpt7", "lpt8", "lpt9"}
 
+// Device tells a name that Windows keeps for itself; name is without extension.
+func Device(name string) bool { return slices.Contains(devices, strings.ToLower(name)) }
+
 // FileStem makes a file name of an id: letters, digits, dot, underscore and
 // hyphen, not hidden, no device.
 func FileStem(id string) string {
@@ -23,7 +26,7 @@ func FileStem(id string) string {
 		s = s[:100]
 	}
 	first, _, _ := strings.Cut(strings.ToLower(s), ".")
-	if s == "" || s[0] == '.' || s[0] == '-' || slices.Contains(devices, first) {
+	if s == "" || s[0] == '.' || s[0] == '-' || Device(first) {
 		s = "_" + s
 	}
 	return s

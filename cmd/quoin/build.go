@@ -4,7 +4,6 @@ import (
 	"errors"
 	"fmt"
 	"os"
-	"path/filepath"
 	"slices"
 
 	"quoin/calc/document"
@@ -35,22 +34,27 @@ func (a *app) build(file string) int {
 	}
 	if res.Package == nil {
 		bar.done()
-		return a.report(src, res, "")
+		return a.report(src, res, "", false)
 	}
-	files, err := render.Package(res.Package, res.Files, bar.stage(progressDraw))
-	if err == nil {
+	o := render.Options{Progress: bar.stage(progressDraw)}
+	if a.cache != nil {
+		o.Cache = a.cache
+	}
+	files, err := render.Package(res.Package, res.Files, o)
+	unchanged := err == nil && ledger.Holds(dir, files)
+	if err == nil && !unchanged {
 		err = ledger.Write(dir, files)
 	}
 	bar.done()
 	var faults *render.Faults
 	if errors.As(err, &faults) {
 		res.Package, res.Diagnostics = nil, append(res.Diagnostics, faults.List...)
-		return a.report(src, res, "")
+		return a.report(src, res, "", false)
 	}
 	if err != nil {
 		return a.fail(file, err)
 	}
-	return a.report(src, res, dir)
+	return a.report(src, res, dir, unchanged)
 }
 
 // check runs FILE, draws nothing and writes nothing.
@@ -66,7 +70,7 @@ func (a *app) check(file string) int {
 	if err != nil {
 		return a.fail(file, err)
 	}
-	return a.report(src, res, "")
+	return a.report(src, res, "", false)
 }
 
 // compute runs the document with what is known of where it came from.
@@ -78,13 +82,16 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 	defer root.Close()
 	from := exhibit.Provenance{Tool: versionLine(), Source: src.main}
 	from.Commit, from.CommitDate = commit(src.root)
-	res := document.Run(document.Source{FS: root.FS(), Main: src.main},
-		document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun)})
+	o := document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun)}
+	if a.cache != nil {
+		o.Cache = a.cache
+	}
+	res := document.Run(document.Source{FS: root.FS(), Main: src.main}, o)
 	if res.Package != nil {
 		// Only now is it known which files were read.
 		var read []string
 		for path := range res.Files {
-			read = append(read, filepath.FromSlash(path))
+			read = append(read, path) // git takes slashes on every system
 		}
 		res.Package.Provenance.Dirty = dirty(src.root, read)
 	}

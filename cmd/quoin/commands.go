@@ -14,6 +14,7 @@ type app struct {
 	stdout, stderr io.Writer
 	code           int
 	flags          flags
+	cache          *diskCache // nil: none
 }
 
 // flags is what the commands share.
@@ -21,6 +22,7 @@ type flags struct {
 	out, root    string
 	set          []string
 	strict, json bool
+	noCache      bool
 	overrides    []exhibit.Override // from set
 }
 
@@ -41,6 +43,7 @@ func (a *app) commands() *cobra.Command {
 		c.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
 		c.Flags().StringArrayVar(&a.flags.set, "set", nil, flagSet)
 		c.Flags().BoolVar(&a.flags.strict, "strict", false, flagStrict)
+		c.Flags().BoolVar(&a.flags.noCache, "no-cache", false, flagCache)
 		c.Flags().BoolVar(&a.flags.json, "json", false, flagJSON)
 		root.AddCommand(c)
 	}
@@ -68,6 +71,10 @@ func (a *app) arguments(_ *cobra.Command, files []string) error {
 
 // each runs a command on every FILE; errors weigh more than checks not met.
 func (a *app) each(files []string, do func(file string) int) error {
+	if !a.flags.noCache {
+		a.cache = openCache()
+		defer a.cache.Close()
+	}
 	for _, f := range files {
 		switch code := do(f); {
 		case code == exitErrors, a.code == exitBuilt:

@@ -19,19 +19,21 @@ type outcome struct {
 	Failure     string         `json:"failure,omitempty"` // where FILE could not be run or written at all
 	Diagnostics diag.List      `json:"diagnostics"`
 	Checks      []ledger.Check `json:"checks"`
-	Built       string         `json:"built"` // the folder written, or ""
+	Built       string         `json:"built"`               // the folder of the package, or ""
+	Unchanged   bool           `json:"unchanged,omitempty"` // it held the very same already; nothing was written
 }
 
 // report says what a run came to: diagnostics to stderr, the summary to stdout;
-// with --json all of it as data. dir is the folder written, or "".
-func (a *app) report(src source, res document.Result, dir string) int {
+// with --json all of it as data. dir is the folder written, or ""; unchanged says
+// that it held the very same already.
+func (a *app) report(src source, res document.Result, dir string, unchanged bool) int {
 	list, checks := seenFromHere(src, res)
 	if a.flags.json {
 		rows, err := ledger.Checks(checks, "")
 		if err != nil {
 			return a.fail(src.given, err)
 		}
-		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(dir)})
+		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(dir), Unchanged: unchanged})
 	} else {
 		a.writeDiagnostics(src, list, res.Files)
 	}
@@ -43,7 +45,7 @@ func (a *app) report(src source, res document.Result, dir string) int {
 		if dir != "" {
 			page = filepath.ToSlash(filepath.Join(dir, "index.html"))
 		}
-		fmt.Fprint(a.stdout, summary(src.given, page, checks))
+		fmt.Fprint(a.stdout, summary(src.given, page, unchanged, checks))
 	}
 	if a.flags.strict && len(exhibit.Failed(checks)) > 0 {
 		return exitStrict

@@ -17,6 +17,9 @@ import (
 )
 
 func TestMain(m *testing.M) {
+	if os.Getenv("QUOIN_CACHE") == "" {
+		os.Setenv("QUOIN_CACHE", os.DevNull) // no test leaves anything in the user's cache
+	}
 	testscript.Main(m, map[string]func(){"quoin": main})
 }
 
@@ -31,11 +34,13 @@ func TestScripts(t *testing.T) {
 	if err != nil || len(found) == 0 {
 		t.Fatalf("no scripts found in %s: %v", scripts, err)
 	}
+	cache := t.TempDir() // of all scripts, which run side by side
 	testscript.Run(t, testscript.Params{Files: found, RequireExplicitExec: true, RequireUniqueNames: true, UpdateScripts: *update,
 		Setup: func(e *testscript.Env) error {
 			// A git of the machine that runs the tests must not reach in.
 			e.Setenv("GIT_CONFIG_GLOBAL", os.DevNull)
 			e.Setenv("GIT_CONFIG_NOSYSTEM", "1")
+			e.Setenv("QUOIN_CACHE", cache)
 			for _, who := range []string{"AUTHOR", "COMMITTER"} {
 				e.Setenv("GIT_"+who+"_NAME", "AB")
 				e.Setenv("GIT_"+who+"_EMAIL", "ab@example.org")

@@ -30,6 +30,10 @@ beside it. An existing package is replaced as a whole; any other folder is left
 alone. Nothing outside the root is read: the folder given with --root, else the
 git work tree that holds FILE, else FILE's own folder.
 
+What was computed and drawn before by this very program from the same inputs is
+taken from a cache: the folder that QUOIN_CACHE names, else quoin in the user's
+cache folder. It may be deleted at any time, and never changes a byte of a package.
+
 Exit codes: 0 built, 1 errors, 2 wrong usage, 3 built, but with --strict a check
 is not met.`
 	buildExample = `  quoin build package.md
@@ -48,6 +52,7 @@ check is not met.`
 	flagRoot   = "read nothing outside `DIR`"
 	flagSet    = "replace a value of the document, as in `name=value`; may be repeated"
 	flagStrict = "exit with 3 when a check is not met"
+	flagCache  = "compute and draw everything anew, and keep nothing"
 	flagJSON   = "write diagnostics and checks to stdout as JSON, one object for each FILE"
 
 	progressRun  = "computing"
@@ -82,12 +87,15 @@ const (
 
 // summary is what a run comes to: where the package is, and how the checks came
 // out, the worst first.
-func summary(file, page string, checks []exhibit.Check) string {
+func summary(file, page string, unchanged bool, checks []exhibit.Check) string {
 	var b strings.Builder
-	if page != "" {
-		fmt.Fprintf(&b, "%s: written to %s\n", file, page)
-	} else {
+	switch {
+	case page == "":
 		fmt.Fprintf(&b, "%s: no errors\n", file)
+	case unchanged:
+		fmt.Fprintf(&b, "%s: unchanged: %s\n", file, page)
+	default:
+		fmt.Fprintf(&b, "%s: written to %s\n", file, page)
 	}
 	failed := exhibit.Failed(checks)
 	switch {

@@ -192,7 +192,11 @@ func texts(es []element) (out []string) {
 // no NaN, alone-standing ids, every name written.
 func TestPictures(t *testing.T) {
 	for _, f := range family() {
-		both, err := Pictures(f, Prefix(f.ID))
+		option, height, err := Option(f)
+		if err != nil {
+			t.Fatal(err)
+		}
+		both, err := Pictures(f, option, height, Prefix(f.ID))
 		if err != nil {
 			t.Fatal(err)
 		}

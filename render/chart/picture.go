@@ -13,17 +13,22 @@ import (
 // Picture is the static picture of a figure: an SVG 700 px wide that fits itself to
 // its column. Ids inside it begin with prefix (a letter, then letters, digits, - and _).
 func Picture(f exhibit.Figure, prefix string) (svg string, err error) {
-	return picture(f, prefix, Wide, "")
-}
-
-// Pictures is the static picture twice: class "wide" for a column and for paper,
-// class "narrow" for a phone. The stylesheet shows one of them.
-func Pictures(f exhibit.Figure, prefix string) (svg string, err error) {
-	wide, err := picture(f, prefix, Wide, "wide")
+	option, height, err := Option(f)
 	if err != nil {
 		return "", err
 	}
-	narrow, err := picture(f, prefix+"-n", Narrow, "narrow")
+	return picture(f, option, height, prefix, Wide, "")
+}
+
+// Pictures is the static picture twice: class "wide" for a column and for paper,
+// class "narrow" for a phone. The stylesheet shows one of them. Option and height
+// are those that [Option] gives; of the figure itself only the words are used.
+func Pictures(f exhibit.Figure, option []byte, height int, prefix string) (svg string, err error) {
+	wide, err := picture(f, option, height, prefix, Wide, "wide")
+	if err != nil {
+		return "", err
+	}
+	narrow, err := picture(f, option, height, prefix+"-n", Narrow, "narrow")
 	return wide + "\n" + narrow, err
 }
 
@@ -39,13 +44,9 @@ var (
 // Prefix makes a prefix for Picture of a figure's id.
 func Prefix(id string) string { return "c-" + strings.Trim(unsafe.ReplaceAllString(id, "-"), "-") }
 
-func picture(f exhibit.Figure, prefix string, width int, class string) (string, error) {
+func picture(f exhibit.Figure, option []byte, height int, prefix string, width int, class string) (string, error) {
 	if !validPrefix.MatchString(prefix) {
 		panic("chart: " + prefix + " is no prefix for ids")
-	}
-	option, height, err := Option(f)
-	if err != nil {
-		return "", err
 	}
 	text, err := script.SVG(option, width, height, prefix)
 	if err != nil {

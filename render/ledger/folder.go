@@ -1,6 +1,7 @@
 package ledger
 
 import (
+	"bytes"
 	"errors"
 	"fmt"
 	"io/fs"
@@ -9,6 +10,7 @@ import (
 	"path/filepath"
 	"slices"
 	"strings"
+	"time"
 )
 
 // How a folder is replaced as a whole. The new package is written beside the old
@@ -55,6 +57,38 @@ func Write(dir string, files map[string][]byte) error {
 	}
 	return syncFolder(filepath.Dir(dir))
 }
+
+// Holds tells whether dir holds exactly these files, byte by byte, and nothing else
+// but what file managers leave; then there is nothing to write.
+func Holds(dir string, files map[string][]byte) bool {
+	dir, err := resolve(dir)
+	if err != nil {
+		return false
+	}
+	found := 0
+	err = filepath.WalkDir(dir, func(path string, d fs.DirEntry, err error) error {
+		if err != nil || d.IsDir() || slices.Contains(litter, d.Name()) {
+			return err
+		}
+		rel, err := filepath.Rel(dir, path)
+		if err != nil {
+			return err
+		}
+		want, ok := files[filepath.ToSlash(rel)]
+		info, err := d.Info()
+		if !ok || err != nil || !info.Mode().IsRegular() || info.Size() != int64(len(want)) {
+			return errDiffers
+		}
+		if got, err := os.ReadFile(path); err != nil || !bytes.Equal(got, want) {
+			return errDiffers
+		}
+		found++
+		return nil
+	})
+	return err == nil && found == len(files)
+}
+
+var errDiffers = errors.New("differs")
 
 // Repair brings dir back to a whole package after an interruption, and removes
 // the leftovers. It is harmless at any other time.
@@ -241,6 +275,16 @@ func repair(dir string) error {
 		}
 	}
 	return nil
+}
+
+// forsaken tells, where no lock can, whether the run that made a folder is gone: an
+// old package stands aside for a moment only, a new one is written within the hour.
+func forsaken(folder string) bool {
+	if strings.Contains(filepath.Base(folder), oldMark) {
+		return true
+	}
+	info, err := os.Stat(folder)
+	return err != nil || time.Since(info.ModTime()) > time.Hour
 }
 
 // leftover tells whether a name is .BASE, the mark and digits.

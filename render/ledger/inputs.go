@@ -9,6 +9,7 @@ import (
 	"io/fs"
 	"maps"
 	"slices"
+	"strings"
 
 	"quoin/calc/exhibit"
 )
@@ -29,17 +30,26 @@ type buildFacts struct {
 }
 
 // Inputs is the inputs/ folder: files, by slash path relative to the root, and
-// inputs/build.json. It fails on a path that leads out of the root and on an
-// input that would take the place of build.json.
+// inputs/build.json. It fails on a path that leads out of the root, on one that
+// not every machine can hold, and on an input that would take the place of another
+// or of build.json.
 func Inputs(files map[string][]byte, p *exhibit.Package) (map[string][]byte, error) {
 	out := make(map[string][]byte, len(files)+1)
+	folded := map[string]string{}
 	for _, path := range slices.Sorted(maps.Keys(files)) {
 		if !fs.ValidPath(path) || path == "." {
 			return nil, fmt.Errorf("ledger: input path %q is not inside the root", path)
 		}
+		if why := unportable(path); why != "" {
+			return nil, fmt.Errorf("the package cannot keep the file %s: %s; rename it", path, why)
+		}
+		if other, ok := folded[strings.ToLower(path)]; ok {
+			return nil, fmt.Errorf("the package cannot keep both %s and %s: they differ in case only and are one file on many machines; rename one", other, path)
+		}
+		folded[strings.ToLower(path)] = path
 		out["inputs/"+path] = files[path]
 	}
-	if _, ok := out[BuildFile]; ok {
+	if _, ok := folded["build.json"]; ok {
 		return nil, fmt.Errorf("an input may not be called build.json at the root: the package keeps its own %s", BuildFile)
 	}
 	text, err := json.MarshalIndent(buildFacts{
@@ -51,6 +61,27 @@ func Inputs(files map[string][]byte, p *exhibit.Package) (map[string][]byte, err
 	}
 	out[BuildFile] = append(text, '\n')
 	return out, nil
+}
+
+// unportable says why a path cannot be a file on every system that a package is
+// opened on; "" where it can.
+func unportable(path string) string {
+	for part := range strings.SplitSeq(path, "/") {
+		switch stem, _, _ := strings.Cut(part, "."); {
+		case strings.ContainsFunc(part, func(r rune) bool { return r < ' ' || strings.ContainsRune(`<>:"|?*\`, r) }):
+			return fmt.Sprintf("not every system has names with %q", strings.Trim(strings.Map(func(r rune) rune {
+				if r < ' ' || strings.ContainsRune(`<>:"|?*\`, r) {
+					return r
+				}
+				return -1
+			}, part), ""))
+		case strings.HasSuffix(part, ".") || strings.HasSuffix(part, " "):
+			return "not every system has names that end in a full stop or a blank"
+		case exhibit.Device(strings.TrimSpace(stem)):
+			return "some systems keep the name " + stem + " for themselves"
+		}
+	}
+	return ""
 }
 
 // Digest names a package by what it was built from: the SHA-256, in hexadecimal,

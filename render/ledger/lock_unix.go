@@ -15,11 +15,15 @@ func lock(folder string) (release func(), free bool) {
 	if err != nil {
 		return func() {}, true
 	}
-	if err := unix.Flock(int(f.Fd()), unix.LOCK_EX|unix.LOCK_NB); err == unix.EWOULDBLOCK {
+	switch err := unix.Flock(int(f.Fd()), unix.LOCK_EX|unix.LOCK_NB); err {
+	case nil:
+		return func() { f.Close() }, true
+	case unix.EWOULDBLOCK:
 		f.Close()
 		return func() {}, false
 	}
-	return func() { f.Close() }, true
+	f.Close() // a filesystem without locks
+	return func() {}, forsaken(folder)
 }
 
 // syncFolder brings the entries of a folder to the disk.

@@ -1,0 +1,63 @@
+package main
+
+import (
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+	"strings"
+	"testing"
+)
+
+const example = module + "/examples/four-storey/package.md"
+
+// built builds a document by the command line, which must succeed.
+func built(b *testing.B, args ...string) {
+	b.Helper()
+	if code := run(append([]string{"build"}, args...), nil, io.Discard, io.Discard); code != exitBuilt {
+		b.Fatalf("exit code %d", code)
+	}
+}
+
+// BenchmarkBuildCold builds the first example with an empty cache into no folder.
+func BenchmarkBuildCold(b *testing.B) {
+	for b.Loop() {
+		b.Setenv("QUOIN_CACHE", b.TempDir())
+		built(b, example, "-o", filepath.Join(b.TempDir(), "out"))
+	}
+}
+
+// BenchmarkBuildChanged builds it with one block changed each time, and a line of
+// prose above all of them.
+func BenchmarkBuildChanged(b *testing.B) {
+	b.Setenv("QUOIN_CACHE", b.TempDir())
+	root := b.TempDir()
+	if err := os.CopyFS(root, os.DirFS(filepath.Dir(example))); err != nil {
+		b.Fatal(err)
+	}
+	file, out := filepath.Join(root, "package.md"), filepath.Join(root, "out")
+	text, err := os.ReadFile(file)
+	if err != nil {
+		b.Fatal(err)
+	}
+	if !strings.Contains(string(text), "S_DS: ") {
+		b.Fatal("the example has no S_DS to change")
+	}
+	for i := 0; b.Loop(); i++ {
+		changed := strings.Replace(string(text), "S_DS: ", fmt.Sprintf("S_DS: 1.%d * ", i), 1)
+		if err := os.WriteFile(file, []byte(changed), 0o644); err != nil {
+			b.Fatal(err)
+		}
+		built(b, file, "-o", out)
+	}
+}
+
+// BenchmarkBuildUnchanged builds it again, nothing changed.
+func BenchmarkBuildUnchanged(b *testing.B) {
+	b.Setenv("QUOIN_CACHE", b.TempDir())
+	out := filepath.Join(b.TempDir(), "out")
+	built(b, example, "-o", out)
+	for b.Loop() {
+		built(b, example, "-o", out)
+	}
+}
