@@ -40,8 +40,12 @@ func Write(w io.Writer, list List, source func(file string, line int) (string, b
 }
 
 // excerpt returns the line and the caret row under it, cut to a readable window
-// around the range (… marks a cut), tabs shown as single blanks.
+// around the range (… marks a cut), tabs shown as single blanks. Columns do not
+// count a byte order mark at the beginning of the file.
 func excerpt(text string, at Range) (line, caret string) {
+	if at.Line == 1 {
+		text = strings.TrimPrefix(text, "\uFEFF")
+	}
 	runes := []rune(Printable(strings.TrimRight(text, "\r\n")))
 	start := min(max(at.Column-1, 0), len(runes))
 	end := at.EndColumn - 1

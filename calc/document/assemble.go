@@ -4,7 +4,6 @@ import (
 	"cmp"
 	"encoding/json"
 	"fmt"
-	"math"
 	"slices"
 	"strings"
 
@@ -13,7 +12,6 @@ import (
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
 	"quoin/calc/expr"
-	"quoin/calc/quantity"
 )
 
 // assemble makes the package of a run without errors.
@@ -140,6 +138,13 @@ func (a *assembly) block(s *section) *exhibit.Block {
 	if len(res.Results) > 0 && show("results") {
 		b.Parts = append(b.Parts, exhibit.Part{Name: "results", Items: a.numbered(res.Results, b)})
 	}
+	if rows := a.checksOf(n); len(rows) > 0 {
+		b.Parts = append(b.Parts, exhibit.Part{Name: "checks", Items: []exhibit.Item{{Checks: rows}}})
+		a.p.Checks = append(a.p.Checks, rows...)
+		for _, c := range rows {
+			a.refs = append(a.refs, *c.Ref)
+		}
+	}
 	a.p.Assumptions = append(a.p.Assumptions, a.anchored(res.Assumptions, b.Anchor)...)
 	return b
 }
@@ -254,7 +259,7 @@ func (d *run) source(text string) (*cite.Ref, string) {
 func (d *run) checks() []exhibit.Check {
 	var out []exhibit.Check
 	for _, n := range d.nodes {
-		if n.kind == checkNode && !n.failed {
+		if (n.kind == checkNode || n.kind == blockNode) && !n.failed {
 			out = append(out, d.checksOf(n)...)
 		}
 	}
@@ -262,45 +267,30 @@ func (d *run) checks() []exhibit.Check {
 }
 
 func (d *run) checksOf(n *node) []exhibit.Check {
-	out := make([]exhibit.Check, len(n.rows))
+	if n.kind == blockNode {
+		out := slices.Clone(n.result.Checks)
+		for i := range out {
+			out[i].Place, out[i].Anchor = n.place(), n.anchor
+		}
+		return out
+	}
+	out := block.CheckRows(n.line.Text, n.line.Tree, n.rows, n.relation, d.system)
 	ref, refText := d.source(n.line.Source)
-	cmpNode := n.line.Tree
-	if cmpNode.Op == expr.Within {
-		cmpNode = cmpNode.Args[0]
-	}
-	unit := quantity.Unit{}
-	for _, side := range cmpNode.Args {
-		if side.Value != nil && unit.Text == "" {
-			unit = side.Value.Unit
-		}
-	}
-	for i, r := range n.rows {
-		if unit.Text == "" {
-			unit = d.system.Preferred(r.Dim)
-		}
-		c := exhibit.Check{ID: n.line.Text, Name: n.line.Text, Item: r.Item, Relation: n.relation, Ratio: r.Ratio, OK: r.OK,
-			Demand: exhibit.Number{Value: r.Demand, Unit: unit}, Limit: exhibit.Number{Value: r.Limit, Unit: unit},
-			Description: n.line.Description, Ref: ref, RefText: refText, Place: n.place(), Anchor: n.anchor, Tree: n.line.Tree}
-		if r.Index > 0 {
-			c.ID = fmt.Sprintf("%s [%d]", n.line.Text, r.Index)
-		}
-		c.Demand.Digits, c.Limit.Digits = checkDigits(unit.From(r.Demand), unit.From(r.Limit))
-		if r.Tolerance != nil {
-			c.Tolerance = &exhibit.Number{Value: *r.Tolerance, Unit: unit, Digits: min(quantity.Digits, quantity.Exact(unit.From(*r.Tolerance)))}
-		}
-		out[i] = c
+	for i := range out {
+		out[i].Description, out[i].Ref, out[i].RefText, out[i].Place, out[i].Anchor = n.line.Description, ref, refText, n.place(), n.anchor
 	}
 	return out
 }
 
-// checkDigits is how many digits the two sides of a check are shown with: the
-// usual number or what shows them exactly, and more where two sides that differ
-// would read the same.
-func checkDigits(demand, limit float64) (d, l int) {
-	for n := quantity.Digits; ; n++ {
-		d, l = min(n, quantity.Exact(demand)), min(n, quantity.Exact(limit))
-		if n >= 15 || math.Abs(demand-limit) <= 1e-12*math.Abs(limit) || quantity.Format(demand, d) != quantity.Format(limit, l) {
-			return d, l
+// sameChecks reports a check line that a block makes already: a check is known by
+// its text.
+func (d *run) sameChecks() {
+	for _, n := range d.nodes {
+		for _, c := range n.result.Checks {
+			if line := d.checked[c.Name]; line != nil && !line.failed {
+				line.failed = true
+				line.diags.Errorf("check-twice", line.at, "the block %s makes this check already", n.name).WithHint("leave it out here")
+			}
 		}
 	}
 }

@@ -57,6 +57,7 @@ func Run(src Source, o Options) Result {
 		d.links()
 		d.link()
 		d.execute()
+		d.sameChecks()
 		d.sameDimension()
 	}
 	for _, n := range d.nodes {

@@ -207,7 +207,7 @@ func TestCautionsTriggered(t *testing.T) {
 	kinds := map[string]string{
 		"open-assumption": "b-reg", "linear": "b-frame b-same b-r b-rr b-ra", "reduced": "b-r", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
 		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "short-record": "b-rs",
-		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read",
+		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr",
 	}
 	if got := triggeredBy(res.Package); !maps.Equal(got, kinds) {
 		t.Errorf("testdata/kinds.txtar triggers\n%v, want\n%v", got, kinds)

@@ -80,6 +80,7 @@ type Function struct {
 // blocks have lines instead; see package formula.
 var Kinds = []Kind{
 	recordKind, periodsKind, spectrumKind, targetKind, structureKind, modesKind, combineKind,
+	driftKind,
 	figureKind, assumptionsKind, referencesKind,
 }
 

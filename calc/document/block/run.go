@@ -40,6 +40,7 @@ type Result struct {
 	Inputs      []exhibit.Item // further inputs: tables
 	Method      []exhibit.Item
 	Results     []exhibit.Item
+	Checks      []exhibit.Check // always shown; their place is filled in by document
 	Values      []Named
 	Series      []exhibit.Curve
 	Made        any // the product
@@ -72,9 +73,14 @@ func (r *Run) Fail(f field.Field, code, format string, args ...any) *diag.Diagno
 // Warn says something that travels with the numbers of the block: a footnote on
 // the page, a line on the terminal.
 func (r *Run) Warn(code, format string, args ...any) {
+	r.WarnAt(field.Field{At: r.Place}, code, format, args...)
+}
+
+// WarnAt is Warn about what stands in a field.
+func (r *Run) WarnAt(f field.Field, code, format string, args ...any) {
 	text := fmt.Sprintf(format, args...)
 	r.Warnings = append(r.Warnings, text)
-	r.Diags.Warnf(code, r.Place, "%s: %s", r.Name, text)
+	r.Diags.Warnf(code, f.At, "%s: %s", r.Name, text)
 }
 
 // Caution triggers a sentence of the limitations section.
