@@ -24,6 +24,7 @@ type Response struct {
 	Modal    [][]float64 // one row a mode, signed, divided by the divisor
 	Combined []float64   // by the rule; >= 0
 	AbsSum   []float64   // sum of magnitudes over the modes: the upper bound
+	Residual []float64   // of the missing mass, signed, divided; nil without one
 }
 
 // Warning is something that the reader of a result must know.
@@ -66,7 +67,10 @@ type Combined struct {
 	ScaleFactor       float64
 	BaseShearUnscaled float64
 
-	MassSum  float64 // effective mass of the modes used over the total
+	MassSum float64 // effective mass of the modes used over the total
+	LeftOut float64 // largest mass ratio of a mode left out; -1 when not known
+	// Residual is the missing mass where it was added, see WithResidual.
+	Residual *Residual
 	Warnings []Warning
 	Checks   []Check
 }
@@ -75,10 +79,6 @@ type Combined struct {
 func (c *Combined) Responses() []Response {
 	return []Response{c.BaseShear, c.StoreyForce, c.StoreyShear, c.Overturning, c.Displacement, c.Drift, c.DriftRatio}
 }
-
-// MassNeeded is the fraction of the mass that the modes together should move
-// (ASCE/SEI 7-22 12.9.1.1, from memory).
-const MassNeeded = 0.90
 
 // closeModes is the relative distance of frequencies within which SRSS fails
 // (the ten-percent rule of US NRC RG 1.92 rev. 1, from memory).
@@ -97,7 +97,7 @@ func Combine(modes *Modes, psa, damping []float64, rule Rule, divisor float64) (
 	c := &Combined{
 		Rule: rule, Divisor: divisor, Levels: m.Levels, H: m.H, Hs: m.Hs,
 		T: modes.T, Damping: z, PSA: psa, Gamma: modes.Gamma, MassRatio: modes.MassRatio,
-		MassSum: modes.MassSum[modes.Count()-1],
+		MassSum: modes.MassSum[modes.Count()-1], LeftOut: modes.leftOut(),
 	}
 	switch rule {
 	case CQC:
@@ -128,7 +128,7 @@ func Combine(modes *Modes, psa, damping []float64, rule Rule, divisor float64) (
 			}
 		}
 	}
-	c.warn(modes)
+	c.judge()
 	c.check(modes)
 	return c, nil
 }
@@ -155,6 +155,9 @@ func (c *Combined) ScaledTo(v float64) (*Combined, error) {
 
 func (r Response) times(f float64) Response {
 	out := Response{Name: r.Name, Combined: scaled(r.Combined, f), AbsSum: scaled(r.AbsSum, f)}
+	if r.Residual != nil {
+		out.Residual = scaled(r.Residual, f)
+	}
 	for _, row := range r.Modal {
 		out.Modal = append(out.Modal, scaled(row, f))
 	}
@@ -201,17 +204,24 @@ type modalResponse struct{ u, drift, ratio, force, shear, moment []float64 }
 
 // respond is the response of mode i to a pseudo-acceleration a, m/s².
 func respond(modes *Modes, i int, a float64) modalResponse {
-	m, phi, w := modes.Model, modes.Phi[i], modes.Omega[i]
-	n := len(phi)
-	r := modalResponse{force: times(m.M, phi)}
-	below := 0.0
+	phi, w := modes.Phi[i], modes.Omega[i]
+	force, u := times(modes.Model.M, phi), make([]float64, len(phi))
 	for j, x := range phi {
-		r.force[j] *= modes.Gamma[i] * a
-		u := modes.Gamma[i] * x * a / (w * w)
-		r.u = append(r.u, u)
-		r.drift = append(r.drift, u-below)
-		r.ratio = append(r.ratio, (u-below)/m.Hs[j])
-		below = u
+		force[j] *= modes.Gamma[i] * a
+		u[j] = modes.Gamma[i] * x * a / (w * w)
+	}
+	return spread(modes, force, u)
+}
+
+// spread is all that follows from forces and displacements of the levels.
+func spread(modes *Modes, force, u []float64) modalResponse {
+	m, n := modes.Model, len(u)
+	r := modalResponse{force: force, u: u}
+	below := 0.0
+	for j, x := range u {
+		r.drift = append(r.drift, x-below)
+		r.ratio = append(r.ratio, (x-below)/m.Hs[j])
+		below = x
 	}
 	r.shear, r.moment = make([]float64, n), make([]float64, n)
 	shear, moment := 0.0, 0.0

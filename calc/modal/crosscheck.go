@@ -1,26 +1,6 @@
 package modal
 
-import (
-	"fmt"
-	"math"
-)
-
-// warn says what limits the result.
-func (c *Combined) warn(modes *Modes) {
-	if c.MassSum < MassNeeded-1e-12 {
-		c.Warnings = append(c.Warnings, Warning{"mass-sum", fmt.Sprintf(
-			"the %d modes used move %.1f %% of the mass; at least %.0f %% is asked for: use more modes", len(c.T), 100*c.MassSum, 100*MassNeeded)})
-	}
-	if c.Rule != SRSS {
-		return
-	}
-	for i := 1; i < len(c.T); i++ {
-		if apart := modes.Omega[i]/modes.Omega[i-1] - 1; apart <= closeModes {
-			c.Warnings = append(c.Warnings, Warning{"close-modes", fmt.Sprintf(
-				"modes %d and %d are %.1f %% apart in frequency; SRSS neglects their correlation: use CQC", i, i+1, 100*apart)})
-		}
-	}
-}
+import "math"
 
 // check compares the results with independent calculations.
 func (c *Combined) check(modes *Modes) {
@@ -58,16 +38,20 @@ func (c *Combined) check(modes *Modes) {
 			continue
 		}
 		forces = max(forces, math.Abs(got-want)/size, math.Abs(c.BaseShear.Modal[i][0]-want)/size)
-		resist := times(m.K, c.Displacement.Modal[i])
-		for j, f := range c.StoreyForce.Modal[i] {
-			elastic = max(elastic, math.Abs(resist[j]-f)/size)
+		if len(m.K) > 0 {
+			resist := times(m.K, c.Displacement.Modal[i])
+			for j, f := range c.StoreyForce.Modal[i] {
+				elastic = max(elastic, math.Abs(resist[j]-f)/size)
+			}
 		}
 		for j, k := range m.Ks {
 			elastic = max(elastic, math.Abs(k*c.Drift.Modal[i][j]-c.StoreyShear.Modal[i][j])/size)
 		}
 	}
 	add("forces of each mode add up to effective mass times PSA (relative)", forces, 1e-9)
-	add("stiffness times displacement gives the forces of each mode (relative)", elastic, 1e-6)
+	if len(m.K) > 0 {
+		add("stiffness times displacement gives the forces of each mode (relative)", elastic, 1e-6)
+	}
 
 	// moments at the base of each mode against effective height
 	moments := 0.0

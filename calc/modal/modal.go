@@ -47,7 +47,17 @@ type Modes struct {
 	RayleighT1 float64
 	Below      int
 	Checks     []Check // the above against their limits; all hold
+
+	// Imported modes come from a Table: the model has no stiffness, and of the
+	// cross-checks only Orthogonality stands.
+	Imported bool
+	// Left are the modes that were not kept, longest period first; not known of
+	// imported modes.
+	Left []Omitted
 }
+
+// Omitted is a mode that was not kept.
+type Omitted struct{ T, MassRatio float64 }
 
 // Count is the number of modes.
 func (m *Modes) Count() int { return len(m.T) }
@@ -74,14 +84,25 @@ func Solve(m *structure.Model, count int) (*Modes, error) {
 	if err != nil {
 		return nil, err
 	}
-	s := &Modes{Model: m}
-	for i := range count {
-		s.add(lambda[i], vectors[i])
+	all := &Modes{Model: m}
+	for i := range n {
+		all.add(lambda[i], vectors[i])
 	}
+	s := all.first(count)
 	if err := s.verify(lambda); err != nil {
 		return nil, err
 	}
 	return s, nil
+}
+
+// first keeps the count longest periods.
+func (s *Modes) first(count int) *Modes {
+	out := &Modes{Model: s.Model, T: s.T[:count], Omega: s.Omega[:count], Phi: s.Phi[:count], Gamma: s.Gamma[:count], ModalMass: s.ModalMass[:count],
+		L: s.L[:count], MassRatio: s.MassRatio[:count], MassSum: s.MassSum[:count], Height: s.Height[:count], BaseMoment: s.BaseMoment[:count]}
+	for i, x := range s.MassRatio[count:] {
+		out.Left = append(out.Left, Omitted{s.T[count+i], x})
+	}
+	return out
 }
 
 // wellFormed panics when the sizes of a model disagree and reports numbers that

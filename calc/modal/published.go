@@ -16,6 +16,7 @@ func Published() []published.Case {
 	cases := append(uniformCases(), contributionCases()...)
 	cases = append(cases, twoStorey()...)
 	cases = append(cases, threeStorey()...)
+	cases = append(cases, matrixCases()...)
 	cases = append(cases, correlationCases()...)
 	return append(cases, rayleighCases()...)
 }

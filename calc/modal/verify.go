@@ -65,11 +65,8 @@ func (s *Modes) substitute() {
 			size = math.Hypot(size, inertia)
 		}
 		s.Residual = max(s.Residual, off/size)
-		for j := range i {
-			cross := math.Abs(dot(s.Phi[j], mphi)) / math.Sqrt(s.ModalMass[i]*s.ModalMass[j])
-			s.Orthogonality = max(s.Orthogonality, cross)
-		}
 	}
+	s.orthogonality()
 }
 
 // recount counts the modes between the last one kept and the next that is

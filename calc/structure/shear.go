@@ -63,9 +63,9 @@ const maxStoreys = 500
 
 // limits of what a storey may be, SI
 var (
-	heights     = bounds{1e-3, 1e5, "m"}
-	stiffnesses = bounds{1e-3, 1e18, "N/m"}
-	masses      = bounds{1e-6, 1e15, "kg"}
+	heightBounds = bounds{1e-3, 1e5, "m"}
+	stiffnesses  = bounds{1e-3, 1e18, "N/m"}
+	masses       = bounds{1e-6, 1e15, "kg"}
 )
 
 type bounds struct {
@@ -112,7 +112,7 @@ func check(storeys []Storey, damping float64) error {
 			name   string
 			value  float64
 			bounds bounds
-		}{{"height", s.Height, heights}, {"stiffness", s.Stiffness, stiffnesses}} {
+		}{{"height", s.Height, heightBounds}, {"stiffness", s.Stiffness, stiffnesses}} {
 			if !finite(v.value) {
 				fail("%s is not a finite number", v.name)
 			} else if v.value <= 0 {

@@ -1,5 +1,6 @@
 """Writes modal.json: a seeded ten-storey shear building solved by
-scipy.linalg.eigh, and combinations of its modes by plain numpy.
+scipy.linalg.eigh, and combinations of its modes by plain numpy; and a model by
+full matrices, of which a few modes are combined with the missing mass.
 
     python3 modal.py
 
@@ -99,5 +100,51 @@ out = {
     "rho": rho.tolist(),
     "combined": {rule: {name: combine(rows).tolist() for name, rows in quantities.items()} for rule, combine in rules.items()},
 }
+
+
+def by_matrices():
+    """Seven levels of a cantilever that bends: K is the inverse of the flexibility
+    h_i^2 (3 h_j - h_i)/(6 EI), i <= j, and M is full. Two modes are kept; the
+    missing mass follows from M, K and them."""
+    n, keep, zpa = 7, 2, 2.9
+    rng = np.random.default_rng(20260302)
+    h = np.cumsum(np.round(rng.uniform(2.8, 4.6, n), 2))
+    low, high = np.minimum.outer(h, h), np.maximum.outer(h, h)
+    K = np.linalg.inv(low**2 * (3 * high - low) / (6 * 9.0e9))
+    K = (K + K.T) / 2
+    M = np.diag(np.round(rng.uniform(180e3, 320e3, n), 0))
+    for i in range(n - 1):
+        M[i, i + 1] = M[i + 1, i] = np.round(rng.uniform(5e3, 30e3), 0)
+    w2, vectors = eigh(K, M)
+    phi = np.array([v / v[np.argmax(np.abs(v))] for v in vectors.T])
+    one = np.ones(n)
+    part = phi @ M @ one
+    modal = np.einsum("ij,jk,ik->i", phi, M, phi)
+    gamma = part / modal
+    psa = np.array([4.1, 7.7])
+    force = (phi @ M)[:keep] * (gamma[:keep] * psa)[:, None] / divisor
+    u = phi[:keep] * (gamma[:keep] * psa / w2[:keep])[:, None] / divisor
+    e = one - gamma[:keep] @ phi[:keep]
+    static = M @ e * zpa / divisor
+    force, u = np.vstack([force, static]), np.vstack([u, np.linalg.solve(K, static)])
+    foot = np.concatenate([[0], h[:-1]])
+    rows = {
+        "storey_force": force,
+        "storey_shear": np.cumsum(force[:, ::-1], axis=1)[:, ::-1],
+        "overturning": np.array([[sum(f[j] * (h[j] - foot[i]) for j in range(i, n)) for i in range(n)] for f in force]),
+        "displacement": u,
+        "drift": np.diff(u, axis=1, prepend=0),
+        "drift_ratio": np.diff(u, axis=1, prepend=0) / np.diff(h, prepend=0),
+    }
+    rows["base_shear"] = rows["storey_shear"][:, :1]
+    return {
+        "elevation": h.tolist(), "mass": M.tolist(), "stiffness": K.tolist(), "psa": psa.tolist(), "zpa": zpa,
+        "period": (2 * np.pi / np.sqrt(w2)).tolist(), "gamma": gamma.tolist(), "mass_ratio": (part**2 / modal / M.sum()).tolist(),
+        "phi": phi.tolist(), "missing": e.tolist(), "missing_mass": float(e @ M @ one / M.sum()),
+        "srss": {name: np.sqrt((r**2).sum(axis=0)).tolist() for name, r in rows.items()},
+    }
+
+
+out["matrices"] = by_matrices()
 path = pathlib.Path(__file__).with_suffix(".json")
 path.write_text(json.dumps(out, indent=1) + "\n")

@@ -32,27 +32,64 @@ func chopra() cite.Ref { return cite.To("Chopra", "") }
 
 type modes struct {
 	common
-	Structure field.Field `name:"structure" is:"block" of:"structure" need:"yes" doc:"the name of a structure block"`
+	Structure field.Field `name:"structure" is:"block" of:"structure" doc:"the name of a structure block; or give modes from elsewhere, by the fields below"`
 	Count     field.Field `name:"count" is:"number" must:"whole" doc:"number of modes; all, if not given"`
+	Table     field.Field `name:"table" is:"file" doc:"modes from elsewhere: a CSV file with a row a mode, longest period first: a column T [s], then a column a level, lowest first"`
+	Periods   field.Field `name:"periods" is:"time" many:"yes" must:"positive" doc:"modes from elsewhere: their periods, longest first, in place of the table"`
+	Shapes    []rowFields `name:"shapes" doc:"modes from elsewhere: one row a mode, lowest level first, of any scale"`
+	Elevation field.Field `name:"elevation" is:"length" many:"yes" doc:"modes from elsewhere: elevation of each level above the base, lowest first"`
+	Levels    field.Field `name:"levels" is:"text" many:"yes" doc:"modes from elsewhere: names of the levels; those of the table, else L1, L2, ... if not given"`
+	Mass      field.Field `name:"mass" is:"mass" many:"yes" must:"positive" hint:"a mass is in t or kg; for forces (kN, kip) use the field weight" doc:"modes from elsewhere: mass at each level"`
+	Weight    field.Field `name:"weight" is:"force" many:"yes" must:"positive" hint:"a weight is a force (kN, kip); for masses (t, kg) use the field mass" doc:"modes from elsewhere: weight at each level, in place of its mass"`
 }
 
-// Run solves the eigenproblem.
+// elsewhere tells whether any field of modes from elsewhere is given.
+func (b *modes) elsewhere() bool {
+	return b.Table.Given || b.Periods.Given || len(b.Shapes) > 0 || b.Elevation.Given || b.Levels.Given || b.Mass.Given || b.Weight.Given
+}
+
+// Run solves the eigenproblem, or takes the modes given.
 func (b *modes) Run(r *Run) {
+	var s *modal.Modes
+	if b.elsewhere() {
+		s = b.imported(r)
+	} else {
+		s = b.solved(r)
+	}
+	if s != nil {
+		b.results(r, s)
+	}
+}
+
+// of names what the modes are those of.
+func (b *modes) of(r *Run) string {
+	if b.Structure.Given {
+		return b.Structure.Text()
+	}
+	return r.Name + ", imported"
+}
+
+// solved are the modes of a structure; nil where there is a fault.
+func (b *modes) solved(r *Run) *modal.Modes {
 	m := r.Product(b.Structure.Text()).(*structure.Model)
 	count := int(b.Count.SI())
 	if count > m.Freedoms() {
 		r.Fail(b.Count, "bounds", "count is %d, %s has %d modes", count, b.Structure.Text(), m.Freedoms())
-		return
+		return nil
 	}
 	if count == 0 {
-		count = m.Freedoms()
-		r.Echo.Rows = append(r.Echo.Rows, exhibit.EchoRow{Field: "count", Label: "count", Value: plain(strconv.Itoa(count)), Default: true})
+		r.Echo.Rows = append(r.Echo.Rows, exhibit.EchoRow{Field: "count", Label: "count", Value: plain(strconv.Itoa(m.Freedoms())), Default: true})
 	}
 	s, err := modal.Solve(m, count)
 	if err != nil {
 		r.Fail(b.Structure, "modes", "%s", err)
-		return
+		return nil
 	}
+	return s
+}
+
+func (b *modes) results(r *Run, s *modal.Modes) {
+	m := s.Model
 	r.Made = s
 	r.Export("T", quantity.List(s.T, seconds, nil))
 	r.Export("omega", quantity.List(s.Omega, perTime, nil))
@@ -65,11 +102,19 @@ func (b *modes) Run(r *Run) {
 	}
 	r.Export("phi", phi)
 
-	r.Explain("Undamped free vibration. Shapes are scaled so that the component of largest magnitude is +1; participation factors belong to that scale. Mass ratios are fractions of the total mass of the model.")
-	r.Equation(`K\phi_n = \omega_n^2 M\phi_n,\qquad T_n = 2\pi/\omega_n`, "natural frequencies and shapes", chopra())
+	if s.Imported {
+		r.Caution("imported-modes")
+		r.Explain("Periods and mode shapes were imported from " + b.source() + " and not computed here. Participation factors and mass ratios follow from them and the masses stated, lumped at the levels.")
+	} else {
+		r.Explain("Undamped free vibration.")
+	}
+	r.Explain("Shapes are scaled so that the component of largest magnitude is +1; participation factors belong to that scale. Mass ratios are fractions of the total mass of the model.")
+	if !s.Imported {
+		r.Equation(`K\phi_n = \omega_n^2 M\phi_n,\qquad T_n = 2\pi/\omega_n`, "natural frequencies and shapes", chopra())
+	}
 	r.Equation(`\Gamma_n = \frac{L_n}{M_n},\quad L_n = \phi_n^\mathrm{T} M r,\quad M_n = \phi_n^\mathrm{T} M \phi_n,\quad \frac{M_n^*}{\sum m} = \frac{L_n^2}{M_n \sum m}`, "participation factor and effective mass ratio; r is the displacement of the levels for a unit displacement of the ground", chopra())
 
-	t := exhibit.Table{ID: r.Name + "-modes", Caption: Lines(&b.common, "Modes of "+b.Structure.Text()), Columns: []exhibit.Column{Words("mode"), Col("period T", seconds), Col("frequency", hertz), Col("omega", perTime),
+	t := exhibit.Table{ID: r.Name + "-modes", Caption: Lines(&b.common, "Modes of "+b.of(r)), Columns: []exhibit.Column{Words("mode"), Col("period T", seconds), Col("frequency", hertz), Col("omega", perTime),
 		Col("participation factor", pure), Col("mass ratio", percent), Col("sum", percent)}}
 	for i := range s.T {
 		id := func(name string) string { return r.ID(name) + "[" + strconv.Itoa(i+1) + "]" }
@@ -81,23 +126,39 @@ func (b *modes) Run(r *Run) {
 	}
 	r.Table(t)
 	shapes := exhibit.Table{ID: r.Name + "-shapes", Caption: "Mode shapes, highest level on top", Columns: []exhibit.Column{Words("level"), Col("elevation", unitsOf(r.System()).length)}}
-	for i := range s.T {
+	if s.Count() > widest {
+		shapes.Caption = "Shapes of the first " + strconv.Itoa(widest) + " modes, highest level on top; all are in results.json"
+	}
+	for i := range min(s.Count(), widest) {
 		shapes.Columns = append(shapes.Columns, Col("mode "+strconv.Itoa(i+1), pure))
 	}
 	for l := len(m.Levels) - 1; l >= 0; l-- {
 		row := []exhibit.Cell{{Text: m.Levels[l]}, Cell(m.H[l], unitsOf(r.System()).length)}
-		for i := range s.T {
+		for i := range min(s.Count(), widest) {
 			row = append(row, Cell(s.Phi[i][l], pure))
 		}
 		shapes.Rows = append(shapes.Rows, row)
 	}
 	r.Table(shapes)
 	b.figure(r, s)
-	r.Crosscheck("residual of the eigenproblem", s.Residual, 1e-9)
-	r.Crosscheck("orthogonality of the shapes with respect to mass", s.Orthogonality, 1e-9)
-	r.Crosscheck("the first period found again by inverse iteration differs by", relative(s.RayleighT1, s.T[0]), 1e-6)
-	if last := s.MassSum[len(s.MassSum)-1]; last < 0.90 {
-		r.Warn("mass-sum", "the %d modes hold %s %% of the mass, less than 90 %%", count, quantity.Format(100*last, 3))
+	if s.Imported {
+		if s.Orthogonality <= modal.ImportedLimit { // else a doubt, below
+			r.Crosscheck("orthogonality of the imported shapes with respect to mass", s.Orthogonality, modal.ImportedLimit)
+		}
+	} else {
+		r.Crosscheck("residual of the eigenproblem", s.Residual, 1e-9)
+		r.Crosscheck("orthogonality of the shapes with respect to mass", s.Orthogonality, 1e-9)
+		r.Crosscheck("the first period found again by inverse iteration differs by", relative(s.RayleighT1, s.T[0]), 1e-6)
+	}
+	for _, w := range s.Doubts() {
+		r.Warn(w.Code, "%s", w.Text)
+	}
+	if last := s.MassSum[len(s.MassSum)-1]; last < modal.MassNeeded {
+		hold := "modes hold"
+		if s.Count() == 1 {
+			hold = "mode holds"
+		}
+		r.Warn("mass-sum", "the %d %s %s %% of the mass, less than %g %%", s.Count(), hold, quantity.Format(100*last, 3), 100*modal.MassNeeded)
 		r.Caution("mass-sum")
 	}
 }
@@ -114,7 +175,7 @@ func relative(a, b float64) float64 {
 func (b *modes) figure(r *Run, s *modal.Modes) {
 	m := s.Model
 	u := unitsOf(r.System())
-	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Mode shapes of "+b.Structure.Text()), Beside: true, Alt: "Shapes of the first modes over the height of the structure, one panel each."}
+	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Mode shapes of "+b.of(r)), Beside: true, Alt: "Shapes of the first modes over the height of the structure, one panel each."}
 	y := levelAxis(m.Levels, m.H, u.length)
 	one := 1.0
 	minus := -1.0

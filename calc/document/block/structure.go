@@ -12,7 +12,7 @@ import (
 
 var structureKind = Kind{
 	Name:    "structure",
-	Doc:     "a planar building by storeys, lowest first: rigid floors, storeys that deform in shear",
+	Doc:     "a planar building, lowest level first: by storeys that deform in shear between rigid floors, or by its mass and stiffness matrices",
 	Makes:   "structure",
 	New:     func() Body { return &building{} },
 	Product: func() any { return &structure.Model{} },
@@ -24,15 +24,22 @@ var structureKind = Kind{
 		{"m", "seismic mass at each level", "kg"},
 		{"h", "elevation of each level above the base", "m"},
 		{"h_s", "height of each storey", "m"},
-		{"k_s", "lateral stiffness of each storey", "N/m"},
+		{"k_s", "lateral stiffness of each storey; not for a model by matrices", "N/m"},
 		{"damping", "damping ratio, where given", ""},
 	},
 }
 
 type building struct {
 	common
-	Storeys []storeyFields `name:"storeys" doc:"the storeys, lowest first; or a CSV file with these columns"`
-	Damping field.Field    `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes"`
+	Storeys   []storeyFields  `name:"storeys" doc:"the storeys, lowest first; or a CSV file with these columns"`
+	Elevation field.Field     `name:"elevation" is:"length" many:"yes" doc:"of a model by matrices: elevation of each level above the base, lowest first"`
+	Levels    field.Field     `name:"levels" is:"text" many:"yes" doc:"of a model by matrices: names of the levels; L1, L2, ... if not given"`
+	Mass      massFields      `name:"mass" doc:"of a model by matrices: mass at each level, or a mass matrix; one freedom a level"`
+	Weight    field.Field     `name:"weight" is:"force" many:"yes" must:"positive" hint:"a weight is a force (kN, kip); for masses (t, kg) use the field mass" doc:"of a model by matrices: seismic weight at each level, in place of its mass"`
+	Stiffness stiffnessFields `name:"stiffness" doc:"of a model by matrices: the lateral stiffness matrix"`
+	Damping   field.Field     `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes"`
+
+	mass, stiffness *grid
 }
 
 type storeyFields struct {
@@ -44,10 +51,14 @@ type storeyFields struct {
 	Stiffness field.Field `name:"stiffness" is:"stiffness" must:"positive" doc:"lateral stiffness of the storey"`
 }
 
-// Check sees that every storey has its fields.
+// Check sees that the model is given in one way, and that every storey has its fields.
 func (b *building) Check(c *Checks) {
+	if b.byMatrices() {
+		b.checkMatrices(c)
+		return
+	}
 	if len(b.Storeys) == 0 {
-		c.Diags.Errorf("missing-field", c.Place, "the structure block needs the field storeys").WithHint("list the storeys, lowest first:  - {level: L1, height: 3.5 m, weight: 2000 kN, stiffness: 90 MN/m}")
+		c.Diags.Errorf("missing-field", c.Place, "the structure block needs the field storeys, or elevation, mass and stiffness").WithHint("list the storeys, lowest first:  - {level: L1, height: 3.5 m, weight: 2000 kN, stiffness: 90 MN/m}")
 	}
 	for i := range b.Storeys {
 		s := &b.Storeys[i]
@@ -70,6 +81,26 @@ func (b *building) Check(c *Checks) {
 
 // Run builds the model.
 func (b *building) Run(r *Run) {
+	model := b.fromStoreys(r)
+	if b.byMatrices() {
+		model = b.fromMatrices(r)
+	}
+	if model == nil {
+		return
+	}
+	model.DampingGiven = b.Damping.Given
+	r.Made = model
+	for _, k := range []string{"linear", "fixed-base", "planar", "second-order"} {
+		r.Caution(k)
+	}
+	b.results(r, model)
+}
+
+// fromStoreys is the shear building of the storeys; nil where they are at fault.
+func (b *building) fromStoreys(r *Run) *structure.Model {
+	if len(b.Storeys) == 0 {
+		return nil
+	}
 	var storeys []structure.Storey
 	var file field.Field
 	for i := range b.Storeys {
@@ -79,7 +110,7 @@ func (b *building) Run(r *Run) {
 			r.Used("storeys", "storeys", plain(s.File.Text()), "")
 			rows := r.storeysFrom(s.File)
 			if rows == nil {
-				return
+				return nil
 			}
 			storeys = append(storeys, rows...)
 			continue
@@ -95,15 +126,9 @@ func (b *building) Run(r *Run) {
 		for _, e := range unjoin(err) {
 			r.Fail(at, "structure", "%s", e)
 		}
-		return
+		return nil
 	}
-	model.DampingGiven = b.Damping.Given
-	r.Made = model
-	r.Caution("linear")
-	r.Caution("fixed-base")
-	r.Caution("planar")
-	r.Caution("second-order")
-	b.results(r, model)
+	return model
 }
 
 // unjoin splits joined errors.
@@ -153,6 +178,11 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 		if c == nil {
 			continue
 		}
+		if c.unit != nil && !c.unit.Dim.Is(col.dim) && (c.unit.Dim.Is(quantity.Force) || c.unit.Dim.Is(quantity.Mass)) {
+			r.Diags.Errorf("dimension", c.at, "the column %s must be %s, its unit %s is %s", c.name, col.dim.Name(), c.unit.Pretty(), c.unit.Dim.Name()).
+				WithHint("a column weight holds forces (kN, kip), a column mass masses (t, kg): rename the column, or correct its unit")
+			return nil
+		}
 		x, _, ok := r.numbers(c, col.dim)
 		if !ok {
 			return nil
@@ -160,7 +190,7 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 		found[col.name] = true
 		for i, v := range x {
 			if !(v > 0) {
-				r.Diags.Errorf("bounds", c.cells[i].at, "%s must be greater than zero", col.name)
+				r.Diags.Errorf("bounds", c.cells[i].at, "the %s at level %s must be greater than zero", col.name, out[i].Level)
 				return nil
 			}
 			col.set(&out[i], v)
@@ -175,6 +205,7 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 
 func (b *building) results(r *Run, m *structure.Model) {
 	u := unitsOf(r.System())
+	storeys := len(m.Ks) > 0
 	r.Number("weight", m.Weight, u.force)
 	r.Number("mass", m.TotalMass, u.mass)
 	r.Number("h_n", m.Hn, u.length)
@@ -183,35 +214,51 @@ func (b *building) results(r *Run, m *structure.Model) {
 	vector("m", m.Mass, u.mass)
 	vector("h", m.H, u.length)
 	vector("h_s", m.Hs, u.length)
-	vector("k_s", m.Ks, u.stiffness)
+	if storeys {
+		vector("k_s", m.Ks, u.stiffness)
+	}
 	if m.DampingGiven {
 		r.Number("damping", m.Damping, percent)
 		r.Caution("damping")
 	}
 	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storeys of "+r.Name+", highest on top"), Columns: []exhibit.Column{Words("level"), Col("elevation", u.length), Col("storey height", u.length),
-		Col("seismic weight", u.force), Col("mass", u.mass), Col("storey stiffness", u.stiffness)}}
-	for i := len(m.Levels) - 1; i >= 0; i-- {
-		t.Rows = append(t.Rows, []exhibit.Cell{{Text: m.Levels[i]}, Cell(m.H[i], u.length), Cell(m.Hs[i], u.length), Cell(m.W[i], u.force), Cell(m.Mass[i], u.mass), Cell(m.Ks[i], u.stiffness)})
+		Col("seismic weight", u.force), Col("mass", u.mass)}}
+	if storeys {
+		t.Columns = append(t.Columns, Col("storey stiffness", u.stiffness))
 	}
-	total := []exhibit.Cell{{Text: "total", Strong: true}, {}, {}, {Numbers: []exhibit.Number{r.Shown("weight", m.Weight, u.force)}, Strong: true}, {Numbers: []exhibit.Number{r.Shown("mass", m.TotalMass, u.mass)}, Strong: true}, {}}
-	t.Rows = append(t.Rows, total)
+	for i := len(m.Levels) - 1; i >= 0; i-- {
+		row := []exhibit.Cell{{Text: m.Levels[i]}, Cell(m.H[i], u.length), Cell(m.Hs[i], u.length), Cell(m.W[i], u.force), Cell(m.Mass[i], u.mass)}
+		if storeys {
+			row = append(row, Cell(m.Ks[i], u.stiffness))
+		}
+		t.Rows = append(t.Rows, row)
+	}
+	total := []exhibit.Cell{{Text: "total", Strong: true}, {}, {}, {Numbers: []exhibit.Number{r.Shown("weight", m.Weight, u.force)}, Strong: true}, {Numbers: []exhibit.Number{r.Shown("mass", m.TotalMass, u.mass)}, Strong: true}}
+	t.Rows = append(t.Rows, append(total, make([]exhibit.Cell, len(t.Columns)-len(total))...))
 	r.Inputs = append(r.Inputs, exhibit.Item{Table: &t})
-	r.Explain("A shear building: rigid floors, one lateral freedom a level in direction x, storey $i$ under level $i$ carrying the shear $k_i (u_i - u_{i-1})$. Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$. The base is fixed.")
-	r.Equation(`K_{ii} = k_i + k_{i+1},\quad K_{i,i+1} = -k_{i+1},\quad M_{ii} = m_i`, "stiffness and mass matrices, levels counted from the lowest", chopra())
+	if storeys {
+		r.Explain("A shear building: rigid floors, one lateral freedom a level in direction x, storey $i$ under level $i$ carrying the shear $k_i (u_i - u_{i-1})$. Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$. The base is fixed.")
+		r.Equation(`K_{ii} = k_i + k_{i+1},\quad K_{i,i+1} = -k_{i+1},\quad M_{ii} = m_i`, "stiffness and mass matrices, levels counted from the lowest", chopra())
+	} else {
+		b.matrices(r, m)
+	}
 	b.drawing(r, m)
 }
 
-// drawing shows the model: levels over elevation, weights beside them.
+// drawing shows the model: levels over elevation, weights beside them, and the
+// stiffness of storeys where they have one.
 func (b *building) drawing(r *Run, m *structure.Model) {
 	u := unitsOf(r.System())
 	axis := levelAxis(m.Levels, m.H, u.length)
-	stiff := storeySteps(m.H, m.Ks)
-	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Seismic weight at each level of "+r.Name+" and stiffness of each storey"), Beside: true,
-		Alt: "Two profiles over the height of the building: seismic weight by level and lateral stiffness by storey.",
-		Panels: []exhibit.Panel{
-			{Title: "seismic weight", X: exhibit.Axis{Label: "w", Unit: u.force, Min: zero()}, Y: axis, Series: stems(m)},
-			{Title: "storey stiffness", X: exhibit.Axis{Label: "k", Unit: u.stiffness, Min: zero()}, Y: axis, Series: []exhibit.FigSerie{{Label: "", X: stiff.x, Y: stiff.y, Role: exhibit.Data}}},
-		}}
+	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Seismic weight at each level of "+r.Name), Beside: true,
+		Alt:    "Profile over the height of the building: seismic weight by level.",
+		Panels: []exhibit.Panel{{Title: "seismic weight", X: exhibit.Axis{Label: "w", Unit: u.force, Min: zero()}, Y: axis, Series: stems(m)}}}
+	if len(m.Ks) > 0 {
+		stiff := storeySteps(m.H, m.Ks)
+		fig.Caption += " and stiffness of each storey"
+		fig.Alt = "Two profiles over the height of the building: seismic weight by level and lateral stiffness by storey."
+		fig.Panels = append(fig.Panels, exhibit.Panel{Title: "storey stiffness", X: exhibit.Axis{Label: "k", Unit: u.stiffness, Min: zero()}, Y: axis, Series: []exhibit.FigSerie{{Label: "", X: stiff.x, Y: stiff.y, Role: exhibit.Data}}})
+	}
 	r.Figure(fig)
 }
 
