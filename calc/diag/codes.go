@@ -34,6 +34,7 @@ var Codes = []Code{
 	{"no-mass", "A freedom has no mass or a negative one, or the mass matrix is not positive definite.", "Give every level a mass; condense freedoms without one before the matrices are given."},
 	{"no-theta", "A drift block has no vertical loads, so that stability is not evaluated.", "Give the field P: the vertical load at and above each level, lowest first."},
 	{"not-finite", "A number given is too large to compute with, or no number.", "Correct the number, or see whether its unit is right."},
+	{"record-size", "A record has more samples than a calculation takes.", "Use a stretch of it with from and to, or a longer step."},
 	{"reduced-twice", "A spectrum that holds a behaviour factor q already would be divided by R/I_e again.", "Leave R and I_e out, or use the elastic spectrum."},
 	{"residual", "The missing mass cannot be added: its acceleration is not known, or the modes have no stiffness matrix.", "State zpa, give the structure by its matrices, or take modes until they hold the mass."},
 	{"residual-amplified", "Modes left out that the residual takes as rigid are amplified by the spectrum.", "Use as many modes as the message says, or state a zpa that holds for those left out."},
@@ -45,6 +46,8 @@ var Codes = []Code{
 	{"site-specific", "ASCE/SEI 7-16 11.4.8 asks for a site-specific study of the ground motion, or cannot be evaluated, and nothing is said about it.", "State site_specific: study with the values of the study, or site_specific: exception; state the site class and S_1."},
 	{"structure-form", "A structure is given in two ways, or a matrix in none or in several.", "Give storeys, or elevation, mass and stiffness; each matrix by one of diagonal, rows, triplets and file."},
 	{"target-vertical", "A spectrum of vertical motion is asked for lateral response.", "Name the horizontal spectrum."},
+	{"treat", "A step of the conditioning of a record does not fit the record, such as a corner at or above half the sampling rate or tapers longer than the record; as a warning, it fits but will not do what it is meant for.", "Change the parameter that is marked, or the steps before it."},
+	{"treat-step", "An item of the field treat is not one complete treatment.", "Begin each step with a dash of its own and give what it needs: a length for a taper, a corner for a bandpass."},
 	{"unstable", "The stability coefficient exceeds its limit: the structure is potentially unstable.", "Stiffen or lighten the structure; no factor on drifts or forces mends it."},
 	{"vertical-q", "The behaviour factor of a vertical design spectrum is above 1.5.", "Use q up to 1.5, or justify the larger one by analysis (EN 1998-1 3.2.2.5)."},
 }

@@ -138,7 +138,7 @@ func TestModalTables(t *testing.T) {
 func TestSeries(t *testing.T) {
 	_, res := runKinds(t, Options{})
 	want := map[string]quantity.Dim{"design.PSA": quantity.Acceleration, "read.PSA": quantity.Acceleration}
-	for _, r := range []string{"east", "push"} {
+	for _, r := range []string{"east", "push", "filtered"} {
 		want[r+".a"], want[r+".v"], want[r+".d"] = quantity.Acceleration, quantity.Velocity, quantity.Length
 	}
 	for _, q := range []string{"@2%", "@5%"} {
@@ -181,7 +181,10 @@ func TestEcho(t *testing.T) {
 	})
 	for field, want := range map[string]string{
 		"r.rule": "CQC default", "r.direction": "x default", "r.I_e": "1; default", "r.R": "5;", "r.damping": "5 %; of the structure", "rr.rule": "SRSS", "rr.damping": "2 %;",
-		"push.scale": "1; default", "east.scale": "1.5;", "east.step": "0.01 s; from the file", "east.unit": "cm/s^2 from the file", "grid.spacing": "log default",
+		"filtered.treat[1]": "straight line taken off the acceleration, by least squares on the acceleration", "filtered.treat[2]": "cosine taper over 0.01 s at the start and 0.02 s at the end",
+		"filtered.treat[3]":        "zero-phase Butterworth band-pass 8 to 20 Hz, order 2 run forward and backward, gain of both passes 0.5 (−6 dB) at a corner, 0.375 s of pad kept at each end",
+		"filtered.shortest_period": "0.0625 s; from the upper limit of the band, common practice",
+		"push.scale":               "1; default", "east.scale": "1.5;", "east.step": "0.01 s; from the file", "east.unit": "cm/s^2 from the file", "grid.spacing": "log default",
 		"grid.include": "0.3149 s;0.2123 s; written [m.T[1], 1.5 * m.T[2]]", "rs.damping": "5 %;2 %;", "m.count": "2 default", "read.rows": "3", "read.damping": "5 %;",
 	} {
 		if got[field] != want {
@@ -206,7 +209,7 @@ func TestCautionsTriggered(t *testing.T) {
 	_, res := runKinds(t, Options{})
 	kinds := map[string]string{
 		"open-assumption": "b-reg", "linear": "b-frame b-same b-r b-rr b-ra", "reduced": "b-r", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
-		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "short-record": "b-rs",
+		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "processed": "b-filtered", "short-record": "b-rs",
 		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr",
 	}
 	if got := triggeredBy(res.Package); !maps.Equal(got, kinds) {

@@ -7,9 +7,9 @@ import (
 	"quoin/calc/published"
 )
 
-// Published is the closed-form intensity measures and integrals.
+// Published is the closed-form intensity measures and integrals, and the conditioning.
 func Published() []published.Case {
-	return []published.Case{sineBurst(), constant(), smoothPulse(), integration()}
+	return append([]published.Case{sineBurst(), constant(), smoothPulse(), integration()}, treatments()...)
 }
 
 // sineBurst is ten cycles of 1 m/s² at 2 Hz.

@@ -36,8 +36,14 @@ type Origin struct {
 	Header      []string `json:"header,omitempty"` // all lines before the numbers
 	FileSamples int      `json:"file_samples,omitempty"`
 	// UsablePeriod is the longest period at which the record is reliable, s; 0 when not stated.
-	UsablePeriod float64   `json:"usable_period,omitempty"`
-	Warnings     []Warning `json:"warnings,omitempty"`
+	UsablePeriod float64 `json:"usable_period,omitempty"`
+	// ShortestPeriod is the shortest period at which the record is reliable, s; 0 when not stated.
+	ShortestPeriod float64 `json:"shortest_period,omitempty"`
+	// Lead is the pad before the first sample of the file, s: records that belong
+	// together are in step when their leads are.
+	Lead      float64   `json:"lead,omitempty"`
+	Treatment []string  `json:"treatment,omitempty"` // what was done here, step by step
+	Warnings  []Warning `json:"warnings,omitempty"`
 }
 
 // Warning is a doubt about a record that travels with it.

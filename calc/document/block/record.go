@@ -46,6 +46,7 @@ type record struct {
 	Scale   field.Field `name:"scale" is:"number" default:"1" doc:"factor on the acceleration"`
 	From    field.Field `name:"from" is:"time" must:"not-negative" doc:"start of the stretch that is used; the start of the record if not given"`
 	To      field.Field `name:"to" is:"time" must:"positive" doc:"end of the stretch that is used; the end of the record if not given"`
+	Treat   []treatStep `name:"treat" must:"filled" doc:"conditioning, a list of steps in the order in which they are taken: baseline, taper, bandpass, resample"`
 
 	Form      field.Field `name:"form" is:"choice" of:"sine|half_sine|pulse|ramp|triangle|blast|versine|smooth" doc:"a closed form instead of a file"`
 	Amplitude field.Field `name:"amplitude" is:"acceleration" show:"g" doc:"peak acceleration of the form"`
@@ -72,6 +73,7 @@ func (b *record) Check(c *Checks) {
 		c.Fail(b.File, "record-source", "a record has either a file or a form").WithHint("give one of the fields file and form")
 		return
 	}
+	b.checkTreat(c)
 	other, what := []field.Field{b.Amplitude, b.Period, b.Frequency, b.Cycles, b.Length, b.Rise}, "belongs to a closed form, and the record has a file"
 	if b.Form.Given {
 		other, what = []field.Field{b.Format, b.Channel, b.Unit}, "belongs to a file, and the record has a form"
@@ -100,6 +102,22 @@ func (b *record) Run(r *Run) {
 	if rec = b.cut(r, rec); rec == nil {
 		return
 	}
+	if n := rec.Samples(); n > motion.MaxSamples {
+		at := b.File
+		if b.Form.Given {
+			at = b.Step
+		}
+		r.Fail(at, "record-size", "the record has %d samples; a calculation takes %d at most", n, motion.MaxSamples).WithHint("cut it with from and to, or take a longer step")
+		return
+	}
+	rec.Origin.UsablePeriod = b.Usable.SI()
+	if len(b.Treat) > 0 {
+		if rec = b.treated(r, rec); rec == nil {
+			return
+		}
+	} else {
+		r.Caution("unprocessed")
+	}
 	scale := b.Scale.SI()
 	if scale == 0 {
 		r.Fail(b.Scale, "bounds", "scale must not be zero")
@@ -113,9 +131,7 @@ func (b *record) Run(r *Run) {
 		r.Fail(b.Scale, "record", "%s", err)
 		return
 	}
-	rec.Origin.UsablePeriod = b.Usable.SI()
 	r.Made = rec
-	r.Caution("unprocessed")
 	b.results(r, rec)
 }
 
@@ -142,8 +158,7 @@ func (b *record) read(r *Run) *motion.Record {
 		if errors.As(err, &ae) {
 			hint, text = ae.Hint, ae.Summary
 			if ae.Line > 0 {
-				col := max(ae.Column, 1)
-				at = diag.Range{File: full, Line: ae.Line, Column: col, EndLine: ae.Line, EndColumn: col + 1}
+				at = diag.Range{File: full, Line: ae.Line, Column: ae.Column, EndLine: ae.Line, EndColumn: ae.Column + ae.Width}
 			}
 		}
 		r.Diags.Errorf("record", at, "%s", text).WithHint("%s", hint)
@@ -267,12 +282,11 @@ func (b *record) results(r *Run, rec *motion.Record) {
 
 	if !b.Form.Given && m.PGD > 0 && m.TimePGD > rec.Duration()-rec.Step/2 {
 		r.Warn("displacement-drift", "the displacement is largest at the end of the record: it drifts, and wants a baseline correction before its displacements or long periods are used")
+	} else if v, d := motion.Integrate(rec); len(b.Treat) > 0 && math.Abs(d[len(d)-1]) > 0.1*m.PGD {
+		r.Warn("displacement-drift", "after treatment the displacement ends at %s %% of its peak, with %s m/s of velocity: confirm that it may", quantity.Format(100*math.Abs(d[len(d)-1])/m.PGD, 2), quantity.Format(v[len(v)-1], 2))
 	}
 	v, d := motion.Integrate(rec)
-	t := make([]float64, rec.Samples())
-	for i := range t {
-		t[i] = rec.Time(i)
-	}
+	t := times(rec, 0)
 	accel := r.System().Preferred(quantity.Acceleration)
 	aID := r.Curve("a", t, seconds, rec.A, accel)
 	vID := r.Curve("v", t, seconds, v, u.velocity)

@@ -93,6 +93,10 @@ func (b *spectrumFields) show(r *Run, s *spectrum.Spectrum) {
 		r.Warn("usable-period", "ordinates beyond %s s lie outside the usable range of %s", quantity.Format(limit, 3), b.Record.Text())
 		r.Caution("usable-period")
 	}
+	if limit := s.Record.Origin.ShortestPeriod; limit > 0 && s.Periods[0] < limit*(1-1e-9) {
+		r.Warn("usable-period", "ordinates below %s s answer to motion that was filtered out of %s", quantity.Format(limit, 3), b.Record.Text())
+		r.Caution("usable-period")
+	}
 	r.Caution("few-motions")
 	r.Caution("damping")
 	for i, z := range s.Damping {

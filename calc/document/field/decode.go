@@ -2,6 +2,7 @@ package field
 
 import (
 	"reflect"
+	"slices"
 	"strings"
 
 	"quoin/calc/diag"
@@ -46,6 +47,23 @@ func slots(v reflect.Value, out []slot) []slot {
 func (d *decoder) group(n Node, v reflect.Value) {
 	all := slots(v, nil)
 	if n.Scalar() || n.IsList {
+		var groups []string
+		for _, s := range all {
+			m, ok := s.value.Addr().Interface().(marked)
+			if !ok {
+				continue
+			}
+			if groups = append(groups, s.spec.Name); n.Scalar() && strings.TrimSpace(n.Text) == s.spec.Name { // the word alone: the group with its defaults
+				m.mark(n.At)
+				d.what = s.spec.Name
+				d.group(Node{IsMap: true, At: n.At}, s.value)
+				return
+			}
+		}
+		if n.Scalar() && len(groups) > 0 && len(groups) == len(all) {
+			d.unknown(n.Text, n.At, groups)
+			return
+		}
 		for _, s := range all {
 			if s.spec.Short {
 				d.one(n, s)
@@ -56,13 +74,28 @@ func (d *decoder) group(n Node, v reflect.Value) {
 		d.diags.Errorf("shape", n.At, "%s is a mapping: lines of  field: value", d.what)
 		return
 	}
+	what := d.what
 	for _, p := range n.Pairs {
 		var names []string
 		found := false
 		for _, s := range all {
 			names = append(names, s.spec.Name)
 			if s.spec.Name == p.Key {
+				m, marks := s.value.Addr().Interface().(marked)
+				if marks {
+					m.mark(p.KeyAt)
+					if len(p.Value.Pairs) == 0 && !p.Value.IsList && strings.TrimSpace(p.Value.Text) == "" {
+						p.Value = Node{IsMap: true, At: p.KeyAt}
+					}
+				}
+				if slices.Contains(s.spec.Must, "filled") && len(p.Value.Items)+len(p.Value.Pairs) == 0 && strings.TrimSpace(p.Value.Text) == "" {
+					d.diags.Errorf("empty-field", p.KeyAt, "%s is an empty list", s.spec.Name).WithHint("%s", s.spec.Doc)
+				}
+				if marks || slices.Contains(s.spec.Must, "filled") {
+					d.what = s.spec.Name
+				}
 				d.one(p.Value, s)
+				d.what = what
 				if f, ok := s.value.Addr().Interface().(*Field); ok && f.At.Line == 0 {
 					f.At = p.KeyAt
 				}
@@ -70,14 +103,19 @@ func (d *decoder) group(n Node, v reflect.Value) {
 			}
 		}
 		if !found {
-			hint := "its fields are " + strings.Join(names, ", ")
-			if near := diag.Nearest(p.Key, names); near != "" {
-				hint = "did you mean " + near + "?"
-			}
-			d.diags.Errorf("unknown-field", p.KeyAt, "%s has no field %s", d.what, p.Key).WithHint("%s", hint)
+			d.unknown(p.Key, p.KeyAt, names)
 		}
 	}
 	d.missing(n, all)
+}
+
+// unknown reports a name that is none of the fields.
+func (d *decoder) unknown(name string, at diag.Range, fields []string) {
+	hint := "its fields are " + strings.Join(fields, ", ")
+	if near := diag.Nearest(name, fields); near != "" {
+		hint = "did you mean " + near + "?"
+	}
+	d.diags.Errorf("unknown-field", at, "%s has no field %s", d.what, name).WithHint("%s", hint)
 }
 
 // missing reports needed fields that are not there and sets defaults.
@@ -119,8 +157,10 @@ func (d *decoder) one(n Node, s slot) {
 			items = []Node{n}
 		}
 		out := reflect.MakeSlice(s.value.Type(), len(items), len(items))
+		what := d.what
 		for i, it := range items {
 			d.group(it, out.Index(i))
+			d.what = what
 		}
 		s.value.Set(out)
 	}

@@ -20,7 +20,7 @@ import (
 //	many     "yes": a list, or one quoted vector
 //	need     "yes": must be given
 //	default  the text used when it is not given
-//	must     positive, not-negative, fraction, whole (by blanks)
+//	must     positive, not-negative, fraction, whole (by blanks); filled for a list of groups
 //	show     the unit it is echoed in: SI|US by a bar, "small" for displacements
 //	label    in words, for the echo; doc: a line for the reference
 //	hint     what to say when the dimension is wrong
@@ -34,6 +34,19 @@ type Field struct {
 	Trees   []*expr.Node   // of a YAML list of expressions
 	Value   quantity.Value // of a quantity, once resolved
 }
+
+// Group is embedded in a struct of fields that stands under a name of its own: it
+// tells whether the name was given, and where. Such a group may be given by its name alone, with
+// the defaults of its fields.
+type Group struct {
+	Given bool
+	At    diag.Range // of the name
+}
+
+func (g *Group) mark(at diag.Range) { g.Given, g.At = true, at }
+
+// marked is a struct that embeds a Group.
+type marked interface{ mark(at diag.Range) }
 
 // Item is one text of a field.
 type Item struct {

@@ -127,7 +127,7 @@ func (f *file) format(name string) (Format, error) {
 			continue
 		}
 		if format.read == nil {
-			return Format{}, f.at(1, 1, "this is "+format.Doc, format.hint)
+			return Format{}, f.at(1, "this is "+format.Doc, format.hint)
 		}
 		return format, nil
 	}
@@ -200,7 +200,7 @@ func (c *content) record(t trace, ask Options) (*motion.Record, error) {
 	case t.unit == "":
 		return nil, fail("the file does not say the unit of its acceleration", `give the unit, such as "g", "cm/s^2" or "m/s^2"`)
 	case !stated:
-		return nil, c.file.at(t.unitLine, 1, t.unit+" is not a unit of acceleration that can be taken as it stands", "give the unit")
+		return nil, c.file.at(t.unitLine, t.unit+" is not a unit of acceleration that can be taken as it stands", "give the unit")
 	}
 	if err := c.missing(t); err != nil {
 		return nil, err
@@ -213,7 +213,10 @@ func (c *content) record(t trace, ask Options) (*motion.Record, error) {
 	}
 	r, err := motion.New(a, step)
 	if err != nil {
-		return nil, c.file.at(t.lineOf(0), 1, err.Error(), "")
+		return nil, c.file.at(t.lineOf(0), err.Error(), "")
+	}
+	if peak == 0 {
+		return nil, c.file.at(t.lineOf(0), "every sample of the channel is zero", "another channel, or a file that was never filled?")
 	}
 	if g := peak / quantity.Gravity; g > 3 {
 		warn("size", 0, "the largest acceleration is %.3g g: was another unit meant than %s (gal or counts read as g, g read twice)?", g, o.UnitInFile)
@@ -248,6 +251,6 @@ func (c *content) missing(t trace) error {
 	if len(at) > 5 {
 		lines = append(lines, "...")
 	}
-	return c.file.at(t.lineOf(at[0]), 1, fmt.Sprintf("%d missing samples (%v) in lines %s", len(at), t.values[at[0]], strings.Join(lines, ", ")),
+	return c.file.at(t.lineOf(at[0]), fmt.Sprintf("%d missing samples (%v) in lines %s", len(at), t.values[at[0]], strings.Join(lines, ", ")),
 		"a sample cannot be left out nor set to zero; repair the record at its source")
 }

@@ -56,7 +56,7 @@ func readAT2(f *file) (*content, error) {
 			before, after := strings.ToUpper(line[:loc[0]]), line[loc[1]:]
 			for _, other := range []string{"VELOCITY", "DISPLACEMENT"} {
 				if strings.Contains(before, other) {
-					return nil, f.at(n, 1, "the file holds "+strings.ToLower(other)+", not acceleration", "take the acceleration file of the record")
+					return nil, f.at(n, "the file holds "+strings.ToLower(other)+", not acceleration", "take the acceleration file of the record")
 				}
 			}
 			t.unit, t.unitLine = at2Unit(after), n
@@ -71,13 +71,13 @@ func readAT2(f *file) (*content, error) {
 		if ok {
 			count, c.step, countLine, c.stepLine = int(numbers[0]), numbers[1], n, n
 			if !(c.step > 0 && c.step <= maxStep) {
-				return nil, f.at(n, 1, fmt.Sprintf("a step of %v s cannot be that of a record", c.step), "")
+				return nil, f.at(n, fmt.Sprintf("a step of %v s cannot be that of a record", c.step), "")
 			}
 			break
 		}
 	}
 	if countLine == 0 {
-		return nil, f.at(1, 1, "no count and step (NPTS, DT) in the first ten lines", "the header is damaged; as bare numbers the file can be read with format values, step and unit")
+		return nil, f.at(1, "no count and step (NPTS, DT) in the first ten lines", "the header is damaged; as bare numbers the file can be read with format values, step and unit")
 	}
 	c.origin.Header = f.head[:countLine]
 	at2Origin(&c.origin, f.head[:countLine])
@@ -94,7 +94,7 @@ func readAT2(f *file) (*content, error) {
 	}
 	if extra := len(t.values) - count; extra > 0 {
 		if extra == count && rising(every(t.values, 2)) {
-			return nil, f.at(t.lineOf(0), 1, "the numbers look like pairs of time and acceleration, not like a row of samples", "read the file with format columns")
+			return nil, f.at(t.lineOf(0), "the numbers look like pairs of time and acceleration, not like a row of samples", "read the file with format columns")
 		}
 		text := fmt.Sprintf("the first %d of %d samples are used, as the header counts", count, len(t.values))
 		if extra%count == 0 {
@@ -116,7 +116,7 @@ func at2Count(f *file, n int, line string) (out [2]float64, ok bool, err error) 
 		return out, false, nil
 	}
 	bad := func(what string) error {
-		return f.at(n, 1, "the "+what+" cannot be read from the header", "NPTS wants a whole number above 0, DT a number")
+		return f.at(n, "the "+what+" cannot be read from the header", "NPTS wants a whole number above 0, DT a number")
 	}
 	texts := map[string]string{}
 	first := at2Names.FindStringIndex(line)
@@ -131,7 +131,7 @@ func at2Count(f *file, n int, line string) (out [2]float64, ok bool, err error) 
 		} else if text := rest[:m[1]]; texts[name] == "" {
 			texts[name] = text
 		} else if !sameNumber(texts[name], text) {
-			return out, false, f.at(n, 1, fmt.Sprintf("the header says two values of %s, %s and %s", name, texts[name], text), "the header is damaged; take the record from its source again")
+			return out, false, f.at(n, fmt.Sprintf("the header says two values of %s, %s and %s", name, texts[name], text), "the header is damaged; take the record from its source again")
 		}
 	}
 	count, err := strconv.ParseFloat(texts["NPTS"], 64)
@@ -208,8 +208,7 @@ func (t *trace) fill(f *file, from int) error {
 		tokens(line, func(offset int, token string) bool {
 			x, _, ok := number(token)
 			if !ok {
-				summary, hint := unreadable(token)
-				err = f.at(n, column(line, offset), summary, hint)
+				err = f.unreadable(n, line, offset, token)
 				return false
 			}
 			t.values = append(t.values, x)

@@ -30,7 +30,7 @@ func readColumns(f *file) (*content, error) {
 		switch free := t.channels(); {
 		case len(free) == 1 || t.names != nil:
 		case t.width == 2:
-			return nil, f.at(t.first, 1, "two numbers in a line may be two channels or one channel wrapped; the first column is no time (it does not rise evenly)",
+			return nil, f.at(t.first, "two numbers in a line may be two channels or one channel wrapped; the first column is no time (it does not rise evenly)",
 				"read the file with format values (row by row), or name the columns in a line above the numbers")
 		default:
 			return nil, errWrapped
@@ -54,7 +54,7 @@ func readColumns(f *file) (*content, error) {
 		c.traces = append(c.traces, trace{name: name, component: name, unit: unit, unitLine: line, values: t.values[i], lines: t.lines})
 	}
 	if len(c.traces) == 0 {
-		return nil, f.at(t.first, 1, "the file has no column of acceleration", "velocities and displacements are not read")
+		return nil, f.at(t.first, "the file has no column of acceleration", "velocities and displacements are not read")
 	}
 	return c, nil
 }

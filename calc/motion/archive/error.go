@@ -1,11 +1,16 @@
 package archive
 
-import "fmt"
+import (
+	"fmt"
+	"strings"
+	"unicode/utf8"
+)
 
 // Error says what is wrong with a record file and where. Line and Column count from
 // 1, columns in characters; a zero Line means the file as a whole.
 type Error struct {
 	Line, Column int
+	Width        int    // characters that are meant from Column on, 1 or more where there is a Line
 	Summary      string // one line, no full stop
 	Hint         string // what to do; may be empty
 	Excerpt      string // the line, cut to a readable length
@@ -28,15 +33,31 @@ func fail(summary, hint string) *Error { return &Error{Summary: summary, Hint: h
 // excerptLength is how much of a line an error shows, in characters.
 const excerptLength = 120
 
-// at is an error at a place of the file.
-func (f *file) at(line, column int, summary, hint string) *Error {
-	e := &Error{Line: line, Column: max(column, 1), Summary: summary, Hint: hint}
+// at is an error about a line: all of it, but for the blanks around.
+func (f *file) at(line int, summary, hint string) *Error {
+	e := &Error{Line: line, Column: 1, Width: 1, Summary: summary, Hint: hint}
 	for n, text := range f.lines(line) {
 		if n == line {
-			r := []rune(text[:min(len(text), 4*(excerptLength+column))])
-			e.Excerpt = string(r[:min(len(r), excerptLength)])
+			e.Excerpt = excerpt(text)
+			words := strings.TrimSpace(e.Excerpt)
+			if words != "" {
+				e.Column = column(e.Excerpt, strings.Index(e.Excerpt, words))
+				e.Width = utf8.RuneCountInString(words)
+			}
 		}
 		break
 	}
 	return e
+}
+
+// excerpt cuts a line to a readable length.
+func excerpt(text string) string {
+	r := []rune(text[:min(len(text), 4*excerptLength)])
+	return string(r[:min(len(r), excerptLength)])
+}
+
+// unreadable is the error about a token that is no number, at a byte offset of its line.
+func (f *file) unreadable(line int, text string, offset int, token string) *Error {
+	summary, hint := unreadable(token)
+	return &Error{Line: line, Column: column(text, offset), Width: max(utf8.RuneCountInString(token), 1), Summary: summary, Hint: hint, Excerpt: excerpt(text)}
 }

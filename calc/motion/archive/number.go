@@ -93,6 +93,8 @@ func unreadable(token string) (summary, hint string) {
 		return "a value is missing", "a sample cannot be left out nor set to zero"
 	case strings.Trim(token, "*") == "":
 		return "a value did not fit its field when the file was written (" + token + ")", "it is missing; take the record from its source"
+	case gap(token) && token != "":
+		return strconv.Quote(token) + " is not a number", "a sample that is not known cannot be left out nor set to zero; repair the record at its source"
 	case thousands(token):
 		return strconv.Quote(token) + " holds a separator of thousands", "write numbers without it"
 	case numberLike(token):
@@ -100,6 +102,15 @@ func unreadable(token string) (summary, hint string) {
 	}
 	r := []rune(token)
 	return strconv.Quote(string(r[:min(len(r), 40)])) + " is not a number", "two files joined, or notes among the numbers?"
+}
+
+// gap tells what programs write for a number that they do not know.
+func gap(field string) bool {
+	switch strings.ToLower(strings.TrimLeft(strings.TrimSpace(field), "+-")) {
+	case "", "nan", "inf", "infinity", "na", "n/a", "#n/a", "null", "none", "nil", "1.#qnan", "1.#inf":
+		return true
+	}
+	return strings.Trim(field, "*") == ""
 }
 
 // numberLike tells digits with a comma, which a column of words does not hold.

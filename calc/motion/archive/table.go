@@ -70,9 +70,13 @@ func newTable(f *file) (*table, error) {
 	t.comma = !point && (t.separator == ';' || t.separator == '\t')
 	t.numeric = make([]bool, t.width)
 	any := false
+	rows := make([][]string, 0, len(lines)-len(lines)/2)
+	for _, l := range lines[len(lines)/2:] {
+		rows = append(rows, t.fields(l.text))
+	}
 	for i, field := range t.fields(late[len(late)-1].text) {
 		if i < t.width {
-			_, _, t.numeric[i] = t.number(field)
+			t.numeric[i] = t.numbers(rows, i, field)
 			any = any || t.numeric[i]
 			if !t.numeric[i] && numberLike(field) {
 				l := late[len(late)-1]
@@ -82,7 +86,7 @@ func newTable(f *file) (*table, error) {
 	}
 	if !any {
 		l := late[len(late)-1]
-		return nil, f.at(l.n, 1, "no numbers in this line", "the file is not a record of plain columns")
+		return nil, f.at(l.n, "no numbers in this line", "the file is not a record of plain columns")
 	}
 	for i, l := range lines {
 		switch row, err := t.isRow(l.n, l.text); {
@@ -94,14 +98,14 @@ func newTable(f *file) (*table, error) {
 				t.findNames(lines[i-1].n, lines[i-1].text)
 			}
 		case i >= headLines:
-			return nil, f.at(l.n, 1, "no row of numbers in the first fifty lines", "")
+			return nil, f.at(l.n, "no row of numbers in the first fifty lines", "")
 		}
 		if t.first > 0 {
 			break
 		}
 	}
 	if t.first == 0 {
-		return nil, f.at(lines[0].n, 1, "no row of numbers", "the file is not a record of plain columns")
+		return nil, f.at(lines[0].n, "no row of numbers", "the file is not a record of plain columns")
 	}
 	for n := t.first - 1; n >= 1 && t.names == nil; n-- { // names may stand in a comment
 		if line := strings.TrimSpace(f.head[min(n, len(f.head))-1]); line != "" {
@@ -165,10 +169,33 @@ func (t *table) isRow(n int, line string) (bool, error) {
 		return false, nil
 	}
 	if all {
-		return false, t.f.at(n, 1, fmt.Sprintf("%d numbers in this line, %d in those below", len(fields), t.width),
+		return false, t.f.at(n, fmt.Sprintf("%d numbers in this line, %d in those below", len(fields), t.width),
 			"if these are count and step, take the line out and give the step")
 	}
 	return false, nil
+}
+
+// numbers tells whether a column holds numbers: more of them than of words, where NaN
+// and the like are neither. In between, the last row decides.
+func (t *table) numbers(rows [][]string, i int, last string) bool {
+	count, words, gaps := 0, 0, 0
+	for _, row := range rows {
+		if len(row) != t.width {
+			continue
+		}
+		if _, _, ok := t.number(row[i]); ok {
+			count++
+		} else if gap(row[i]) {
+			gaps++
+		} else {
+			words++
+		}
+	}
+	if count == words {
+		_, _, ok := t.number(last)
+		return ok || count == 0 && gaps > 0 && last != ""
+	}
+	return count > words
 }
 
 // bad is the error about the first unreadable numeric field of a row.
@@ -179,12 +206,11 @@ func (t *table) bad(n int, line string, fields []string) error {
 			offset += k
 		}
 		if _, _, ok := t.number(field); !ok && i < t.width && (t.numeric[i] || numberLike(field)) {
-			summary, hint := unreadable(field)
-			return t.f.at(n, column(line, offset), summary, hint)
+			return t.f.unreadable(n, line, offset, field)
 		}
 		offset = min(offset+len(field), len(line))
 	}
-	return t.f.at(n, 1, "this is not a row of numbers", "")
+	return t.f.at(n, "this is not a row of numbers", "")
 }
 
 // fields splits a line. An empty field at the end comes from a trailing separator.
@@ -283,20 +309,20 @@ func (t *table) fill() error {
 			continue
 		}
 		if short > 0 {
-			return t.f.at(short, 1, fmt.Sprintf("fewer fields in this line than %d in those before", t.width), "a cut or joined file?")
+			return t.f.at(short, fmt.Sprintf("fewer fields in this line than %d in those before", t.width), "a cut or joined file?")
 		}
 		fields := t.fields(line)
 		if len(fields) != t.width {
 			if len(fields) < t.width && t.separator == ' ' {
 				for _, field := range fields {
 					if _, _, ok := t.number(field); !ok {
-						return t.f.at(n, 1, "this is not a row of numbers", "two files joined, or notes among the numbers?")
+						return t.f.at(n, "this is not a row of numbers", "two files joined, or notes among the numbers?")
 					}
 				}
 				short = n
 				continue
 			}
-			return t.f.at(n, 1, fmt.Sprintf("%d fields in this line, %d in those before", len(fields), t.width), "a cut or joined file?")
+			return t.f.at(n, fmt.Sprintf("%d fields in this line, %d in those before", len(fields), t.width), "a cut or joined file?")
 		}
 		for i, field := range fields {
 			x, place, ok := t.number(field)
@@ -304,7 +330,7 @@ func (t *table) fill() error {
 				if t.numeric[i] {
 					return t.bad(n, line, fields)
 				}
-				return t.f.at(n, 1, fmt.Sprintf("column %d holds numbers in some rows and text in others", i+1), "")
+				return t.f.at(n, fmt.Sprintf("column %d holds numbers in some rows and text in others", i+1), "")
 			}
 			if ok {
 				t.values[i] = append(t.values[i], x)
@@ -316,7 +342,7 @@ func (t *table) fill() error {
 		t.lines = append(t.lines, int32(n))
 	}
 	if short > 0 && !t.wraps() {
-		return t.f.at(short, 1, fmt.Sprintf("fewer fields in the last line than %d in those before", t.width), "the file is cut off")
+		return t.f.at(short, fmt.Sprintf("fewer fields in the last line than %d in those before", t.width), "the file is cut off")
 	}
 	return nil
 }
@@ -357,7 +383,7 @@ func (t *table) time(c *content) error {
 				t.values[i] = nil // 1, 2, 3, ... beside a time
 				continue
 			}
-			return t.f.at(t.first, 1, fmt.Sprintf("column %d counts 1, 2, 3: numbers of the samples or seconds?", i+1),
+			return t.f.at(t.first, fmt.Sprintf("column %d counts 1, 2, 3: numbers of the samples or seconds?", i+1),
 				"take the column out and give the step, or name it in a line above the numbers (t [s], or n)")
 		}
 		return t.take(c, i)
@@ -375,11 +401,11 @@ func (t *table) take(c *content, i int) error {
 		}
 	}
 	if len(times) < 2 {
-		return t.f.at(t.first, 1, "one row alone has no time step", "")
+		return t.f.at(t.first, "one row alone has no time step", "a record needs two samples or more")
 	}
 	step, bad, why := evenStep(times, t.printed[i])
 	if bad >= 0 {
-		return t.f.at(int(t.lines[bad]), 1, why, "an uneven record cannot be used; repair it or resample it at its source")
+		return t.f.at(int(t.lines[bad]), why, "an uneven record cannot be used; repair it or resample it at its source")
 	}
 	step, rounded := printedStep(times, step, t.printed[i])
 	if step *= scale; rounded {
@@ -387,7 +413,7 @@ func (t *table) take(c *content, i int) error {
 			Text: fmt.Sprintf("the times are rounded; the step is taken as %.9g s", step)})
 	}
 	if step > maxStep {
-		return t.f.at(t.first, 1, fmt.Sprintf("a step of %v s cannot be that of a record", step), "")
+		return t.f.at(t.first, fmt.Sprintf("a step of %v s cannot be that of a record", step), "")
 	}
 	c.step, c.stepLine, c.fuzz = step, t.first, 2*t.printed[i].at(times[len(times)-1])*scale/float64(len(times)-1)
 	c.origin.StepSource = "time column"

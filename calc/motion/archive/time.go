@@ -39,14 +39,22 @@ func (p printed) whole() bool { return p.fixed && p.place >= 1 && p.relative == 
 
 // evenStep is the step of a column of times, taken from its ends. Times are even if
 // each lies within one unit of its last printed digit, or within a ten-thousandth
-// of the step, of where it should be. Otherwise bad is the first that does not, and
-// why says what happens there.
+// of the step, of where it should be, and so do the steps. Where that unit is more than half of
+// the step it excuses nothing: a lost sample would look like rounding. Otherwise bad is the
+// first that does not, and why says what happens there.
 func evenStep(t []float64, p printed) (step float64, bad int, why string) {
 	n := len(t) - 1
 	step = (t[n] - t[0]) / float64(n)
 	even := step > 0
+	off := func(i int) float64 {
+		unit := p.at(t[i]) * (1 + 1e-9)
+		if unit > step/2 {
+			unit = 0
+		}
+		return math.Max(unit, 1e-4*step)
+	}
 	for i := 1; i <= n; i++ {
-		even = even && t[i] > t[i-1] && math.Abs(t[i]-(t[0]+float64(i)*step)) <= math.Max(p.at(t[i])*(1+1e-9), 1e-4*step)
+		even = even && t[i] > t[i-1] && math.Abs(t[i]-(t[0]+float64(i)*step)) <= off(i) && math.Abs(t[i]-t[i-1]-step) <= off(i)
 	}
 	if even {
 		return step, -1, ""
@@ -58,7 +66,7 @@ func evenStep(t []float64, p printed) (step float64, bad int, why string) {
 			return step, i, "the time is that of the line before"
 		case d < 0:
 			return step, i, "the time goes back"
-		case math.Abs(d-usual) > math.Max(p.at(t[i])*(1+1e-9), 1e-3*usual):
+		case math.Abs(d-usual) > math.Max(off(i), 1e-3*usual):
 			if r := d / usual; r > 1.5 && math.Abs(r-math.Round(r)) < 0.1 {
 				return step, i, fmt.Sprintf("a gap of %.0f samples before this time", math.Round(r)-1)
 			}

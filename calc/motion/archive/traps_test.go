@@ -25,6 +25,12 @@ func rows(n int) string {
 	return b.String()
 }
 
+// lost leaves a line out, counted from 0.
+func lost(text string, line int) string {
+	lines := strings.SplitAfter(text, "\n")
+	return strings.Join(slices.Delete(lines, line, line+1), "")
+}
+
 // Every trap that must end in a refusal, with where and with words that must be in the message.
 func TestRefusals(t *testing.T) {
 	g := Options{Unit: "g"}
@@ -107,6 +113,18 @@ func TestRefusals(t *testing.T) {
 		{"two per line", "0.1 0.2\n0.3 -0.2\n0.1 0.2\n0.0 0.1\n", full, 1, "two channels or one"},
 		{"text in some rows", "t,a,q\n0.00,0.1,ok\n0.01,0.2,7\n0.02,0.3,ok\n0.03,0.1,ok\n", g, 3, "text in others"},
 		{"one sample", "0.1\n", full, 1, "two samples"},
+		{"one row", "t,a\n0.00,0.1\n", g, 2, "one row alone"},
+		{"not known, in the middle", "t,a\n0.00,0.1\n0.01,NaN\n0.02,0.2\n", g, 3, "not known"},
+		{"not known, the most of it", "t,a\n0.00,0.1\n0.01,0.2\n0.02,0.2\n0.03,nan\n0.04,-inf\n0.05,n/a\n", g, 5, "not known"},
+		{"not known, one column", "0.1\n0.2\nNaN\n0.1\n", full, 3, "not known"},
+		{"at2 not known", at2(inG, "NPTS= 3, DT= .01 SEC", ".1 NaN .2\n"), full, 5, "not known"},
+		{"word among numbers", "t,a\n0.00,0.1\n0.01,0.2\n0.02,hello\n0.03,0.2\n", g, 4, "not a number"},
+		{"at rest", "t,a\n0.00,0\n0.01,0.0\n0.02,-0\n", g, 2, "is zero"},
+		{"at2 at rest", at2(inG, "NPTS= 3, DT= .01 SEC", ".0 .0 .0\n"), full, 5, "is zero"},
+		{"lost sample, coarse times", "t,a\n0.00,1\n0.01,2\n0.02,1\n0.04,1\n0.05,2\n0.06,1\n", g, 5, "a gap of 1 samples"},
+		{"lost samples, coarse times", "t,a\n0.00,1\n0.01,2\n0.02,1\n0.05,1\n0.06,2\n", g, 5, "a gap of 2 samples"},
+		{"lost sample, two digits a step", "t,a\n0.00,1\n0.02,2\n0.04,1\n0.08,1\n0.10,2\n0.12,1\n", g, 5, "a gap of 1 samples"},
+		{"lost sample in a long record", lost(rows(400), 150), g, 151, "a gap of 1 samples"},
 		{"DYNA", "EVENT_NAME: INVENTED\nEVENT_ID: X\n", full, 1, "DYNA"},
 		{"K-NET", "Origin Time       2031/02/03 04:05:00\nLat. 39\nScale Factor      3920(gal)/6182761\n", full, 1, "K-NET"},
 		{"COSMOS", "Corrected acceleration  (Format v01.20 with 13 text lines)\n", full, 1, "COSMOS"},
@@ -129,8 +147,8 @@ func TestRefusals(t *testing.T) {
 			if text := e.Error(); e.Line != c.line || !strings.Contains(text, c.words) {
 				t.Errorf("got line %d: %q\nwant line %d and %q", e.Line, text, c.line, c.words)
 			}
-			if e.Line > 0 && e.Column < 1 {
-				t.Errorf("no column")
+			if e.Line > 0 && (e.Column < 1 || e.Width < 1 || e.Column+e.Width > max(len([]rune(e.Excerpt)), 1)+1) {
+				t.Errorf("columns %d to %d of %q", e.Column, e.Column+e.Width, e.Excerpt)
 			}
 		})
 	}
