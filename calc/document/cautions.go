@@ -32,6 +32,8 @@ var triggered = []sentence{
 	{"close-modes", "Square-root-of-sum-of-squares combination is used although modes lie within 10 % of each other in frequency: the result may be unsafe. Use the complete quadratic combination."},
 	{"mass-sum", "The modes used hold less than 90 % of the mass: storey forces, mainly low in the structure, are underestimated."},
 	{"residual", "Mass that the modes used do not move is taken as rigid: it follows the ground at the zero-period acceleration. Modes left out that are amplified above it are underestimated."},
+	{"static", "Static lateral forces: that the procedure is permitted and the structure regular enough for it is the author's statement. Redundancy, overstrength, vertical motion and the combination of directions are not included."},
+	{"accidental-torsion", "Accidental torsion is not included in the static lateral forces, nor is torsion from the eccentricity of mass: forces of frames and walls away from the centre, and drifts at the edges, are larger."},
 	{"unprocessed", "Records are used as given, with the scale stated: no baseline correction and no filter was applied here. Velocity, displacement and long periods depend on the processing they had before."},
 	{"processed", "Records were conditioned here (baseline, taper, filter or resampling, as echoed with each). A filter removes motion beyond its corners for good, that of long periods and any permanent displacement among it; nothing outside the usable band may be read from such a record, and the choices made affect velocity, displacement and long periods."},
 	{"usable-period", "A period beyond the usable range of a record is used: ordinates of that record are unreliable there."},

@@ -61,13 +61,7 @@ type Drift struct {
 	Limit     []float64 // m
 
 	Warnings []Warning
-	Checks   []DriftCheck
-}
-
-// DriftCheck is the residual of an independent calculation.
-type DriftCheck struct {
-	Name            string
-	Residual, Limit float64
+	Checks   []Check
 }
 
 // DriftError says what is wrong with one input.

@@ -6,7 +6,7 @@ import "math"
 func (d *Drift) check(in DriftInput, rule driftRule) {
 	n := len(d.Levels)
 	add := func(name string, residual, limit float64) {
-		d.Checks = append(d.Checks, DriftCheck{name, residual, limit})
+		d.Checks = append(d.Checks, Check{name, residual, limit})
 	}
 	if len(in.Displacement) == n {
 		roof, sum := math.Abs(in.Displacement[n-1])*d.Factor, 0.0

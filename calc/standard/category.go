@@ -9,6 +9,12 @@ import (
 
 var riskCategories = []string{"I", "II", "III", "IV"}
 
+// Importance is the importance factor of a risk category, ASCE/SEI 7 Table 1.5-2.
+func Importance(category string) (ie float64, ok bool) {
+	ie, ok = importance[category]
+	return ie, ok
+}
+
 // importance is I_e of ASCE/SEI 7 Table 1.5-2, by risk category.
 var importance = map[string]float64{"I": 1, "II": 1, "III": 1.25, "IV": 1.5}
 

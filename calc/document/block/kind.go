@@ -79,8 +79,7 @@ type Function struct {
 // Kinds is every kind that has fields, in the order of the reference. Formula
 // blocks have lines instead; see package formula.
 var Kinds = []Kind{
-	recordKind, periodsKind, spectrumKind, targetKind, structureKind, modesKind, combineKind,
-	driftKind,
+	recordKind, periodsKind, spectrumKind, targetKind, structureKind, modesKind, combineKind, staticKind, driftKind,
 	figureKind, assumptionsKind, referencesKind,
 }
 

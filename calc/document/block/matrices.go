@@ -45,33 +45,36 @@ func (b *building) checkMatrices(c *Checks) {
 	}
 }
 
+// matrixPair is the two matrices as the document gives them.
+type matrixPair struct{ mass, stiffness *grid }
+
 // fromMatrices is the model of the matrices; nil where they are at fault.
-func (b *building) fromMatrices(r *Run) *structure.Model {
+func (b *building) fromMatrices(r *Run) (*structure.Model, *matrixPair) {
 	n := len(b.Elevation.Value.SI)
 	if n > 500 { // said by the engine, before files are read
 		_, err := structure.Matrices(structure.Assembled{Elevation: b.Elevation.Value.SI})
 		r.faults(err, nil, b.Elevation)
-		return nil
+		return nil, nil
 	}
-	b.mass, b.stiffness = b.massGrid(r, n), r.matrix(&b.Stiffness.matrixFields, b.Stiffness.File, n, stiffnesses)
-	if b.mass == nil || b.stiffness == nil {
-		return nil
+	p := &matrixPair{b.massGrid(r, n), r.matrix(&b.Stiffness.matrixFields, b.Stiffness.File, n, stiffnesses)}
+	if p.mass == nil || p.stiffness == nil {
+		return nil, nil
 	}
-	given := structure.Assembled{Elevation: b.Elevation.Value.SI, Mass: b.mass.si, Stiffness: b.stiffness.si, Damping: b.Damping.SI()}
+	given := structure.Assembled{Elevation: b.Elevation.Value.SI, Mass: p.mass.si, Stiffness: p.stiffness.si, Damping: b.Damping.SI()}
 	if b.Levels.Given {
 		given.Levels = b.Levels.Texts()
 	}
 	m, err := structure.Matrices(given)
 	if err != nil {
-		r.faults(err, map[structure.Part]*grid{structure.InElevation: vector(b.Elevation), structure.InLevels: vector(b.Levels), structure.InMass: b.mass, structure.InStiffness: b.stiffness}, b.Damping)
-		return nil
+		r.faults(err, map[structure.Part]*grid{structure.InElevation: vector(b.Elevation), structure.InLevels: vector(b.Levels), structure.InMass: p.mass, structure.InStiffness: p.stiffness}, b.Damping)
+		return nil, nil
 	}
-	r.Used("stiffness", "stiffness", plain(b.stiffness.sized()), b.stiffness.source)
+	r.Used("stiffness", "stiffness", plain(p.stiffness.sized()), p.stiffness.source)
 	if !b.Weight.Given {
-		r.Used("mass", "mass", plain(b.mass.sized()), b.mass.source)
+		r.Used("mass", "mass", plain(p.mass.sized()), p.mass.source)
 	}
 	r.Caution("matrices")
-	return m
+	return m, p
 }
 
 // massGrid is the mass matrix as given: a diagonal of masses or weights, or a matrix.
@@ -110,8 +113,8 @@ func (b *building) massGrid(r *Run, n int) *grid {
 const widest = 8
 
 // matrices shows where the matrices came from, and what they are.
-func (b *building) matrices(r *Run, m *structure.Model) {
-	r.Explain(fmt.Sprintf("The model was assembled elsewhere and is used as given: one lateral freedom a level in direction x, the base fixed at elevation 0. The stiffness matrix comes from %s, the mass matrix from %s. Both were found square, finite, symmetric and positive definite.", b.stiffness.source, b.mass.source))
+func (b *building) matrices(r *Run, m *structure.Model, given *matrixPair) {
+	r.Explain(fmt.Sprintf("The model was assembled elsewhere and is used as given: one lateral freedom a level in direction x, the base fixed at elevation 0. The stiffness matrix comes from %s, the mass matrix from %s. Both were found square, finite, symmetric and positive definite.", given.stiffness.source, given.mass.source))
 	lumped := true
 	for i, row := range m.M {
 		for j, x := range row {
@@ -127,9 +130,9 @@ func (b *building) matrices(r *Run, m *structure.Model) {
 		r.Equation(`m_i = \sum_j M_{ij}`, "mass at a level: the force there for a unit acceleration of the ground", chopra())
 	}
 	u := unitsOf(r.System())
-	b.shown(r, "stiffness", "K", m.Levels, m.K, stated(b.stiffness.unit, u.stiffness), b.stiffness.source)
+	b.shown(r, "stiffness", "K", m.Levels, m.K, stated(given.stiffness.unit, u.stiffness), given.stiffness.source)
 	if !lumped {
-		b.shown(r, "mass", "M", m.Levels, m.M, stated(b.mass.unit, u.mass), b.mass.source)
+		b.shown(r, "mass", "M", m.Levels, m.M, stated(given.mass.unit, u.mass), given.mass.source)
 	}
 }
 

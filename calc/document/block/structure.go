@@ -38,8 +38,6 @@ type building struct {
 	Weight    field.Field     `name:"weight" is:"force" many:"yes" must:"positive" hint:"a weight is a force (kN, kip); for masses (t, kg) use the field mass" doc:"of a model by matrices: seismic weight at each level, in place of its mass"`
 	Stiffness stiffnessFields `name:"stiffness" doc:"of a model by matrices: the lateral stiffness matrix"`
 	Damping   field.Field     `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes"`
-
-	mass, stiffness *grid
 }
 
 type storeyFields struct {
@@ -81,9 +79,9 @@ func (b *building) Check(c *Checks) {
 
 // Run builds the model.
 func (b *building) Run(r *Run) {
-	model := b.fromStoreys(r)
+	model, given := b.fromStoreys(r), (*matrixPair)(nil)
 	if b.byMatrices() {
-		model = b.fromMatrices(r)
+		model, given = b.fromMatrices(r)
 	}
 	if model == nil {
 		return
@@ -93,7 +91,7 @@ func (b *building) Run(r *Run) {
 	for _, k := range []string{"linear", "fixed-base", "planar", "second-order"} {
 		r.Caution(k)
 	}
-	b.results(r, model)
+	b.results(r, model, given)
 }
 
 // fromStoreys is the shear building of the storeys; nil where they are at fault.
@@ -203,7 +201,7 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 	return out
 }
 
-func (b *building) results(r *Run, m *structure.Model) {
+func (b *building) results(r *Run, m *structure.Model, given *matrixPair) {
 	u := unitsOf(r.System())
 	storeys := len(m.Ks) > 0
 	r.Number("weight", m.Weight, u.force)
@@ -240,7 +238,7 @@ func (b *building) results(r *Run, m *structure.Model) {
 		r.Explain("A shear building: rigid floors, one lateral freedom a level in direction x, storey $i$ under level $i$ carrying the shear $k_i (u_i - u_{i-1})$. Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$. The base is fixed.")
 		r.Equation(`K_{ii} = k_i + k_{i+1},\quad K_{i,i+1} = -k_{i+1},\quad M_{ii} = m_i`, "stiffness and mass matrices, levels counted from the lowest", chopra())
 	} else {
-		b.matrices(r, m)
+		b.matrices(r, m, given)
 	}
 	b.drawing(r, m)
 }
