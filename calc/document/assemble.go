@@ -5,24 +5,25 @@ import (
 	"encoding/json"
 	"fmt"
 	"slices"
-	"strings"
 
 	"quoin/calc/cite"
 	"quoin/calc/document/block"
 	"quoin/calc/document/field"
+	"quoin/calc/document/formula"
 	"quoin/calc/exhibit"
 	"quoin/calc/expr"
 )
 
 // assemble makes the package of a run without errors.
 func (d *run) assemble() *exhibit.Package {
-	a := &assembly{run: d, p: &exhibit.Package{Meta: d.meta, System: d.system, Provenance: d.options.Provenance}, anchors: map[string]int{}, methods: map[string]*node{}, stems: map[string]bool{}}
+	a := &assembly{run: d, p: &exhibit.Package{Meta: d.meta, System: d.system, Provenance: d.options.Provenance}, anchors: map[string]int{}, methods: map[string]*node{}, stems: map[string]bool{}, symbols: map[string]*exhibit.Symbol{}}
 	a.p.Provenance.Overrides = d.options.Overrides
 	a.p.Provenance.Source = d.src.Main
 	for _, pt := range d.parts {
 		a.part(pt)
 	}
 	a.registry()
+	a.notation()
 	a.p.Inputs = d.files.inputs(d.src.Main)
 	a.references()
 	a.cautions()
@@ -38,6 +39,7 @@ type assembly struct {
 	refs                       []cite.Ref
 	methods                    map[string]*node // the first block with each method
 	stems                      map[string]bool  // file names of tables, in lower case
+	symbols                    map[string]*exhibit.Symbol
 }
 
 // unique makes an anchor that no other heading has.
@@ -160,6 +162,7 @@ func (a *assembly) method(n *node, b *exhibit.Block) []exhibit.Item {
 	first, ok := a.methods[key]
 	if !ok {
 		a.methods[key] = n
+		a.methodSymbols(n)
 		return a.numbered(n.result.Method, b)
 	}
 	return []exhibit.Item{{Prose: []exhibit.Prose{{Kind: exhibit.Paragraph, Children: []exhibit.Prose{
@@ -178,15 +181,7 @@ func (a *assembly) anchored(list []exhibit.Assumption, anchor string) []exhibit.
 
 // stem makes the id of a table or figure fit for a file name, and unlike every
 // other, case aside.
-func (a *assembly) stem(id string) string {
-	clean := exhibit.FileStem(id)
-	name := clean
-	for n := 2; a.stems[strings.ToLower(name)]; n++ {
-		name = fmt.Sprintf("%s-%d", clean, n)
-	}
-	a.stems[strings.ToLower(name)] = true
-	return name
-}
+func (a *assembly) stem(id string) string { return exhibit.UniqueStem(id, a.stems) }
 
 // numbered counts equations, figures and tables through the package.
 func (a *assembly) numbered(items []exhibit.Item, b *exhibit.Block) []exhibit.Item {
@@ -283,11 +278,11 @@ func (d *run) checksOf(n *node) []exhibit.Check {
 }
 
 // sameChecks reports a check line that a block makes already: a check is known by
-// its text.
+// what it says.
 func (d *run) sameChecks() {
 	for _, n := range d.nodes {
 		for _, c := range n.result.Checks {
-			if line := d.checked[c.Name]; line != nil && !line.failed {
+			if line := d.checked[formula.Key(c.Tree)]; line != nil && !line.failed {
 				line.failed = true
 				line.diags.Errorf("check-twice", line.at, "the block %s makes this check already", n.name).WithHint("leave it out here")
 			}

@@ -10,6 +10,7 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document/block"
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/quantity"
 )
 
@@ -37,6 +38,7 @@ const (
 	askCurves  = "curves"
 	askKind    = "kind"
 	askFile    = "file"
+	askLine    = "line"
 )
 
 // witness is the Env of a block, which remembers what was asked. It states every
@@ -81,6 +83,11 @@ func (w *witness) Read(name, role string) ([]byte, string, error) {
 	return w.scope.Read(name, role)
 }
 
+func (w *witness) Line(name string) (*expr.Node, string) {
+	w.ask(question{askLine, name, ""})
+	return w.scope.Line(name)
+}
+
 // answer is what Env would answer now, in a few words. ok is false where it cannot
 // be told.
 func (s scope) answer(q question) (text string, ok bool) {
@@ -103,6 +110,9 @@ func (s scope) answer(q question) (text string, ok bool) {
 			return "error " + err.Error(), true
 		}
 		return full + " " + sum, true
+	case askLine:
+		tree, words := s.Line(q.Name)
+		return hashed(content(viewpoint{}, tree, words)), true
 	}
 	return "", false
 }

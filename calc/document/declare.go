@@ -217,10 +217,11 @@ func (d *run) lines(p *part, s *section, isName formula.Names) {
 		if line.Check {
 			n.kind = checkNode
 			n.anchor = s.anchor
-			if old := d.checked[line.Text]; old != nil && line.Text != "" {
+			key := formula.Key(line.Tree)
+			if old := d.checked[key]; old != nil && key != "" {
 				n.diags.Errorf("check-twice", n.at, "this check stands already in line %d of %s", old.at.Line, old.part.name).WithHint("a check is known by its text: leave one out")
 			} else {
-				d.checked[line.Text] = n
+				d.checked[key] = n
 			}
 		} else if line.Name == "" {
 			n.name = formula.LineName(src.Text) // keeps what uses it from a second error

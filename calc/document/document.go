@@ -95,7 +95,7 @@ type run struct {
 	// anchors leads from the words of a heading and the names of blocks to their
 	// anchors on the page.
 	anchors map[string]string
-	// checked holds the checks by their text, which is their id.
+	// checked holds the checks by what they say.
 	checked map[string]*node
 }
 

@@ -279,12 +279,15 @@ func (s scope) block(name string) *node {
 	return nil
 }
 
-// Curves are the computed series with this id.
+// Curves are the computed series with this id, or all of a block.
 func (s scope) Curves(id string) []exhibit.Curve {
 	first, rest := cutPath(id)
 	to := s.d.names[formula.Normal(first)]
 	if to == nil || to.kind != blockNode {
 		return nil
+	}
+	if rest == "" {
+		return to.result.Series
 	}
 	var out []exhibit.Curve
 	for _, c := range to.result.Series {
@@ -293,6 +296,14 @@ func (s scope) Curves(id string) []exhibit.Curve {
 		}
 	}
 	return out
+}
+
+// Line is a formula name's tree and description.
+func (s scope) Line(name string) (*expr.Node, string) {
+	if to := s.d.names[formula.Normal(name)]; to != nil && to.kind == lineNode {
+		return to.line.Tree, to.line.Description
+	}
+	return nil, ""
 }
 
 // KindOf is the kind of a block.

@@ -290,3 +290,15 @@ func TestRefused(t *testing.T) {
 		}
 	}
 }
+
+// TestCheckOnce: a check that differs in blanks only stands there already.
+func TestCheckOnce(t *testing.T) {
+	_, res := book2(head+calc("formula", "a = 3", "check a <= 4", "check a<=4", "check a < 4"), nil)
+	if len(res.Diagnostics) != 1 || res.Diagnostics[0].Code != "check-twice" || res.Diagnostics[0].Range.Line != 9 {
+		t.Errorf("%v", res.Diagnostics)
+	}
+	p := ran(t, calc("formula", "a = 3", "check a<=4"), nil)
+	if p.Checks[0].ID != "a <= 4" {
+		t.Errorf("the id of a check is %q", p.Checks[0].ID)
+	}
+}

@@ -79,17 +79,14 @@ func date(f field.Field, diags *diag.List) string {
 }
 
 // signature is a person, by initials or a short name, and a date that may be
-// missing; nobody is not a person.
-var (
-	signature = regexp.MustCompile(`^(?:\p{Latin}[.'’]?[ -]?){1,40}(?:[ ,]+\S*\d\S*)?$`)
-	nobody    = regexp.MustCompile(`(?i)^(pending|tbd|tbc|none|na|nobody|open|todo|no|yes|ok)\b`)
-)
+// missing.
+var signature = regexp.MustCompile(`^(?:\p{Latin}[.'’]?[ -]?){1,40}(?:[ ,]+\S*\d\S*)?$`)
 
 func (s signField) sign(diags *diag.List) exhibit.Sign {
 	if !s.Line.Given {
 		return exhibit.Sign{Initials: s.Initials.Text(), Date: date(s.Date, diags)}
 	}
-	if t := s.Line.Text(); t != "" && (!signature.MatchString(t) || nobody.MatchString(t) && !strings.ContainsAny(t, "0123456789")) {
+	if t := s.Line.Text(); t != "" && (!signature.MatchString(t) || exhibit.Nobody(t)) {
 		diags.Errorf("sign", s.Line.At, "%q is no initials and date", s.Line.Text()).WithHint("write the initials of one person, then the date: MK 2031-03-02; leave it blank until it is done")
 		return exhibit.Sign{}
 	}

@@ -62,10 +62,9 @@ type FigSerie struct {
 	X     []float64 `json:"x"`
 	Y     []float64 `json:"y"`
 	Role  Role      `json:"role"`
-	Dash  int       `json:"dash,omitempty"`  // 0 solid, 1 long dash, 2 dots, 3 dash-dot
-	Step  bool      `json:"step,omitempty"`  // storey shear: constant over the storey
-	Dots  bool      `json:"dots,omitempty"`  // marks at the points
-	Width float64   `json:"width,omitempty"` // 0: by role
+	Dash  int       `json:"dash,omitempty"` // 0 solid, 1 long dash, 2 dots, 3 dash-dot
+	Step  bool      `json:"step,omitempty"` // storey shear: constant over the storey
+	Dots  bool      `json:"dots,omitempty"` // marks at the points
 }
 
 // RefLine is a dotted line across the panel, named with its value.

@@ -26,6 +26,7 @@ type Package struct {
 	Checks []Check `json:"checks"` // in document order
 
 	Assumptions []Assumption `json:"assumptions"`
+	Notation    []Symbol     `json:"notation"`   // Latin letters, then Greek
 	References  []Reference  `json:"references"` // in order of key
 	Inputs      []Input      `json:"inputs"`     // files read, sorted by path, the main file first
 	Cautions    []Caution    `json:"cautions"`   // standing ones first, then the triggered
@@ -212,6 +213,7 @@ type Column struct {
 	Symbol *expr.Node    `json:"symbol,omitempty"` // typeset head, if any, after the words
 	Unit   quantity.Unit `json:"unit,omitzero"`
 	Right  bool          `json:"right,omitempty"`
+	Bare   bool          `json:"bare,omitempty"` // the symbol stands in place of the words
 }
 
 // Footnote is a footnote of the prose.
@@ -281,6 +283,27 @@ type Assumption struct {
 	By     string `json:"by"`
 	When   string `json:"when"`
 	Place  Place  `json:"place"`
+	Anchor string `json:"anchor"`
+}
+
+// Symbol is a symbol of the package with all that it stands for.
+type Symbol struct {
+	Name     string    `json:"name"`          // as in formulas, without its block: T_a
+	TeX      string    `json:"tex,omitempty"` // set in place of the name
+	Meanings []Meaning `json:"meanings"`
+}
+
+// Meaning is one thing that a symbol stands for, and where.
+type Meaning struct {
+	Text   string        `json:"text"`
+	Unit   quantity.Unit `json:"unit,omitzero"`
+	Places []SymbolPlace `json:"places"`
+}
+
+// SymbolPlace is where a symbol is set.
+type SymbolPlace struct {
+	ID     string `json:"id,omitempty"`    // of the value in the registry
+	Block  string `json:"block,omitempty"` // the block whose symbol it is
 	Anchor string `json:"anchor"`
 }
 

@@ -2,6 +2,7 @@ package exhibit
 
 import (
 	"slices"
+	"strconv"
 	"strings"
 )
 
@@ -22,12 +23,25 @@ func FileStem(id string) string {
 		}
 		return '_'
 	}, id)
-	if len(s) > 100 {
-		s = s[:100]
-	}
 	first, _, _ := strings.Cut(strings.ToLower(s), ".")
 	if s == "" || s[0] == '.' || s[0] == '-' || Device(first) {
 		s = "_" + s
 	}
-	return s
+	return s[:min(len(s), longestStem)]
+}
+
+// longestStem is how long a stem may be, so that a path stays short enough.
+const longestStem = 100
+
+// UniqueStem is FileStem with a number added where the name is used, case aside;
+// it notes the name as used.
+func UniqueStem(id string, used map[string]bool) string {
+	stem := FileStem(id)
+	name := stem
+	for n := 2; used[strings.ToLower(name)]; n++ {
+		end := "-" + strconv.Itoa(n)
+		name = stem[:min(len(stem), longestStem-len(end))] + end
+	}
+	used[strings.ToLower(name)] = true
+	return name
 }

@@ -250,7 +250,7 @@ func TestPlaces(t *testing.T) {
 	f := exhibit.Figure{ID: "places", Panels: []exhibit.Panel{{
 		X:      exhibit.Axis{Unit: unit("ms"), Log: true},
 		Y:      exhibit.Axis{Unit: unit("kN"), Log: true, Min: ptr(1e3), Max: ptr(1e5)},
-		Series: []exhibit.FigSerie{{X: []float64{0.1, 1, 10}, Y: []float64{1e3, 1e4, 1e5}, Width: 7}},
+		Series: []exhibit.FigSerie{{X: []float64{0.1, 1, 10}, Y: []float64{1e3, 1e4, 1e5}, Role: exhibit.Governing}},
 	}}}
 	svg, err := Picture(f, "p")
 	if err != nil {
@@ -259,7 +259,7 @@ func TestPlaces(t *testing.T) {
 	var curve [][]string
 	ticks := map[string][]float64{} // text: x, y
 	for _, e := range parse(t, svg) {
-		if e.attrs["stroke-width"] == "7" {
+		if e.attrs["stroke-width"] == "2.8" {
 			curve = pair.FindAllStringSubmatch(strings.ReplaceAll(e.attrs["d"], "L", " L"), -1)
 		}
 		if m := regexp.MustCompile(`translate\((\S+) (\S+)\)`).FindStringSubmatch(e.attrs["transform"]); m != nil && e.name == "text" {

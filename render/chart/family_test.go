@@ -169,7 +169,7 @@ func suite() exhibit.Figure {
 	for i := range 11 {
 		p.Series = append(p.Series, exhibit.FigSerie{X: T, Y: ordinates(T, 0.6+0.06*float64(i), 0.1+0.03*float64(i)), Role: exhibit.Secondary})
 	}
-	p.Series = append(p.Series, exhibit.FigSerie{Label: "mean of 11 records", X: T, Y: ordinates(T, 0.9, 0.1), Role: exhibit.Data, Width: 2},
+	p.Series = append(p.Series, exhibit.FigSerie{Label: "mean of 11 records", X: T, Y: ordinates(T, 0.9, 0.1), Role: exhibit.Data},
 		exhibit.FigSerie{Label: "target", X: T, Y: ordinates(T, 0.92, 0), Role: exhibit.Governing})
 	p.Lines = []exhibit.RefLine{{Vertical: true, At: 0.13, Label: "0.2 T₁ 0.13 s"}, {Vertical: true, At: 1.3, Label: "2 T₁ 1.3 s"}, {At: 0.4 * quantity.Gravity, Label: "PGA"}}
 	return exhibit.Figure{ID: "suite", Caption: "Scaled suite and target", Alt: "The mean lies about the target.", Panels: []exhibit.Panel{p}}

@@ -31,7 +31,7 @@ type pen struct {
 	strong bool
 }
 
-// penOf is the pen of a series by its role, dash and width.
+// penOf is the pen of a series by its role and dash.
 func penOf(s exhibit.FigSerie) pen {
 	p := pen{color: ink, width: 1.5, z: 3}
 	switch s.Role {
@@ -51,9 +51,6 @@ func penOf(s exhibit.FigSerie) pen {
 	}
 	if s.Dash > 0 && s.Dash < len(dashes) {
 		p.dash = dashes[s.Dash]
-	}
-	if s.Width > 0 {
-		p.width = s.Width
 	}
 	return p
 }

@@ -138,40 +138,81 @@ func (p *panel) limits() []curve {
 // endLimit is the widest name at the end of a curve, in px: longer ones break.
 const endLimit = 112
 
-// ends names the curves at their right ends, moved apart where they would meet. A
-// series each, of the curve's name, so that a name goes with its curve.
-func (p *panel) ends() []curve {
-	var kept []int
+// samples are the dashes as text, for names that do not stand at their curve.
+var samples = []string{"—— ", "– – ", "···· ", "–·– "}
+
+// endName is the name at the right end of a curve: its lines, where the curve
+// ends and where the name stands, px from the top.
+type endName struct {
+	series    int
+	lines     []string
+	at, place float64
+}
+
+// endNames are the names at the right ends, moved apart where they would meet.
+// Where one is moved from its curve, all begin with a sample of their curve's
+// dash, so that a reader still knows which is which.
+func (p *panel) endNames() []endName {
+	names := p.spreadNames(false)
+	moved, differ := false, false
+	for _, n := range names {
+		moved = moved || math.Abs(n.place-n.at) > leading/2
+		differ = differ || sample(p.Series[n.series]) != sample(p.Series[names[0].series])
+	}
+	if moved && differ {
+		return p.spreadNames(true)
+	}
+	return names
+}
+
+func sample(s exhibit.FigSerie) string {
+	dash := s.Dash
+	if s.Role == exhibit.Limit && dash == 0 {
+		dash = 1
+	}
+	return samples[max(0, min(dash, len(samples)-1))]
+}
+
+func (p *panel) spreadNames(sampled bool) []endName {
+	var out []endName
 	var at, high []float64
-	var texts [][]string
 	for i, s := range p.Series {
-		name := clean(s.Label)
-		d := p.data(s)
+		name, d := clean(s.Label), p.data(s)
 		if name == "" || len(d) == 0 {
 			continue
 		}
-		lines := wrap(name, endLimit, penOf(s).strong)
+		n := endName{series: i, lines: wrap(name, endLimit, penOf(s).strong)}
+		if sampled {
+			n.lines[0] = sample(s) + n.lines[0]
+		}
 		_, y := p.lastSeen(d)
-		kept, texts = append(kept, i), append(texts, lines)
-		at = append(at, p.height-p.y.at(y, p.height))
-		high = append(high, float64(len(lines))*leading)
+		n.at = p.height - p.y.at(y, p.height)
+		out, at, high = append(out, n), append(at, n.at), append(high, float64(len(n.lines))*leading)
 	}
-	places := spread(at, high, -8, p.height+8)
+	for k, place := range spread(at, high, -8, p.height+8) {
+		out[k].place = place
+	}
+	return out
+}
+
+// ends names the curves at their right ends. A series each, of the curve's name,
+// so that a name goes with its curve.
+func (p *panel) ends() []curve {
 	var out []curve
-	for k, i := range kept {
-		s := p.Series[i]
+	for _, n := range p.endNames() {
+		s := p.Series[n.series]
 		pen := penOf(s)
 		x, y := p.lastSeen(p.data(s))
 		c := p.marks("~end", 7)
-		c.Id = p.id("~end", i)
+		c.Id = p.id("~end", n.series)
 		c.Name = clean(s.Label)
 		c.Clip = false
 		c.Label.Color = pen.color
 		if pen.strong {
 			c.Label.Weight = 600
 		}
-		c.Data = []spot{{Name: strings.Join(texts[k], "\n"), Value: numbers{x, y},
-			Label: spotLabel{Position: "inside", Align: "left", VAlign: "middle", Offset: numbers{7, places[k] - at[k]}}}}
+		c.Data = []spot{{Name: strings.Join(n.lines, "\n"), Value: numbers{x, y},
+			Label: spotLabel{Position: "inside", Align: "left", VAlign: "middle", Offset: numbers{7, n.place - n.at}}}}
 		out = append(out, c)
 	}
 	return out
@@ -190,12 +231,9 @@ func (p *panel) lastSeen(d points) (x, y float64) {
 // endWidth is the room that the names at the ends need, in px.
 func (p *panel) endWidth() float64 {
 	w := 0.0
-	for _, s := range p.Series {
-		strong := penOf(s).strong
-		for _, line := range wrap(clean(s.Label), endLimit, strong) {
-			if line != "" {
-				w = math.Max(w, textWidth(line, strong)+10)
-			}
+	for _, n := range p.endNames() {
+		for _, line := range n.lines {
+			w = math.Max(w, textWidth(line, penOf(p.Series[n.series]).strong)+10)
 		}
 	}
 	return w

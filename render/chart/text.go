@@ -32,7 +32,7 @@ func textWidth(s string, strong bool) float64 {
 			w += 0.27
 		case r >= 'A' && r <= 'Z' || r == 'm' || r == 'w' || r == '%':
 			w += 0.62
-		case r > 0x2e80:
+		case r > 0x2e80 || r == '—':
 			w += 1
 		default:
 			w += 0.5

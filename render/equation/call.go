@@ -65,6 +65,7 @@ func (w writer) pure(n *expr.Node) piece {
 				bare.SI[i] = u.From(x)
 			}
 			bare.Dim = quantity.None
+			bare, _ = w.turned(bare, 0)
 			return value(bare, quantity.Unit{}, arg.Digits, 0)
 		}
 	}

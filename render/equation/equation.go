@@ -34,9 +34,13 @@ type Math struct {
 // Setter sets formulas in a column. Width is the column in em; an expression
 // estimated wider is broken at its loosest operators, or after the arguments of a
 // call. Width 0 never breaks. System gives the units of numbers that name none.
+//
+// TopDown sets substituted vectors by level with the highest level on top; see
+// [Levels].
 type Setter struct {
-	System quantity.System
-	Width  float64
+	System  quantity.System
+	Width   float64
+	TopDown bool
 }
 
 // Symbols is the formula as written, in symbols.

@@ -14,10 +14,11 @@ type writer struct {
 	system  quantity.System
 	room    float64 // em; 0: endless
 	inside  bool    // of a fraction
+	topDown bool
 }
 
 func (s Setter) writer(numbers bool) writer {
-	return writer{numbers: numbers, system: s.System, room: s.Width}
+	return writer{numbers: numbers, system: s.System, room: s.Width, topDown: s.TopDown}
 }
 
 // within is the writer with less room.
@@ -82,7 +83,8 @@ func (w writer) value(n *expr.Node, item int) piece {
 	if u.Scale == 0 {
 		u = w.system.Preferred(n.Value.Dim)
 	}
-	return value(*n.Value, u, n.Digits, item)
+	v, item := w.turned(*n.Value, item)
+	return value(v, u, n.Digits, item)
 }
 
 func (w writer) item(n *expr.Node) piece {

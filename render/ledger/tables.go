@@ -1,9 +1,9 @@
 package ledger
 
 import (
+	"cmp"
 	"fmt"
 	"slices"
-	"strconv"
 	"strings"
 
 	"quoin/calc/exhibit"
@@ -51,14 +51,8 @@ func TablePaths(p *exhibit.Package) []string {
 		} else {
 			id = f.ID
 		}
-		stem := exhibit.FileStem(id)
-		name := stem
 		// Two names that differ in case only are one file on many machines.
-		for n := 2; used[strings.ToLower(name)]; n++ {
-			name = stem + "-" + strconv.Itoa(n)
-		}
-		used[strings.ToLower(name)] = true
-		out = append(out, "tables/"+name+".csv")
+		out = append(out, "tables/"+exhibit.UniqueStem(id, used)+".csv")
 	})
 	return out
 }
@@ -157,7 +151,7 @@ func commonUnit(t *exhibit.Table, j int) quantity.Unit {
 func cell(c exhibit.Cell, unit quantity.Unit, given bool, what string) (string, error) {
 	if len(c.Numbers) == 0 {
 		if c.Text == "" && c.Symbol != nil {
-			return safe(c.Symbol.Text), nil
+			return safe(cmp.Or(c.Symbol.ID, c.Symbol.Text)), nil
 		}
 		return safe(c.Text), nil
 	}

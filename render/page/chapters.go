@@ -44,7 +44,9 @@ func (b *book) chapters() (out []item, toc []entry) {
 			}
 			for _, n := range piece.Prose {
 				if n.Kind != exhibit.Heading {
-					out = append(out, item{name: "node", data: n, high: proseHigh(n), anchors: b.inner(n)})
+					for _, part := range cut(n) {
+						out = append(out, item{name: "node", data: part, high: proseHigh(part), anchors: b.inner(part)})
+					}
 					continue
 				}
 				h := headingView{ID: b.claim(n.Anchor), Title: n.Children}

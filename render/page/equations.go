@@ -12,26 +12,31 @@ import (
 
 // The columns of an equation line in print, em of its mathematics.
 const (
-	symbolRoom = 14
-	numberRoom = 18
-	wholeRoom  = 40
-	besideRoom = 31  // beside a result
-	em         = 3.7 // mm
+	symbolRoom    = 14
+	numberRoom    = 18
+	wholeRoom     = 40
+	besideRoom    = 31 // beside a result
+	across        = 4  // columns of a long vector
+	tallestColumn = 24
+	em            = 3.7 // mm
 )
 
 type equationView struct {
 	ID, Label, Description, Value, Unit, Over string
 	Governs                                   string // how what governs is marked
+	Shrink                                    string // on paper, where a sheet would not hold it
 	Symbols, Numbers, Matrix                  template.HTML
 	Columns                                   [][]labelled
 	Source                                    any
 	Number                                    int
-	Wide, Method, Overridden                  bool
+	Wide, Method, Overridden, TopDown         bool
 }
 
 type labelled struct{ Label, Text string }
 
-func (b *book) equation(e *exhibit.Equation, label string) item {
+// equation is an equation as items: one, and further ones for a vector that is
+// longer than one can show.
+func (b *book) equation(e *exhibit.Equation, label string) []item {
 	v := equationView{Label: label, Description: e.Description, Number: e.Number, Overridden: e.Overridden, Method: e.Result == nil}
 	v.Source = sourceOf(e.Ref, e.RefText)
 	v.ID = b.exhibits[e]
@@ -58,12 +63,28 @@ func (b *book) equation(e *exhibit.Equation, label string) item {
 		}
 		high = max(high, 3.3*margin+4.5)
 	}
-	return item{name: "equation", data: v, high: high, anchors: []string{v.ID}}
+	rest := v.Columns
+	if len(rest) > across {
+		v.Columns, rest = rest[:across], rest[across:]
+	} else {
+		rest = nil
+	}
+	if most := b.room() - 15; high > most {
+		v.Shrink, high = strconv.FormatFloat(most/high, 'f', 2, 64), most
+	}
+	out := []item{{name: "equation", data: v, high: high, anchors: []string{v.ID}}}
+	for len(rest) > 0 {
+		n := min(across, len(rest))
+		out = append(out, item{name: "equation", data: equationView{Over: v.Over, Unit: v.Unit, TopDown: v.TopDown, Columns: rest[:n]}, high: 8 + em*1.55*float64(len(rest[0])+1)})
+		rest = rest[n:]
+	}
+	return out
 }
 
 // formula sets the symbols and the numbers of a line and says how high it is, em.
 func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
-	free := equation.Setter{System: b.p.System}
+	down := equation.Levels(e.Tree)
+	free := equation.Setter{System: b.p.System, TopDown: down}
 	tree := e.Tree
 	given, constant := constantTree(tree)
 	if given && e.Symbol != nil && sameUnit(tree, e.Result) { // "h = 15 m": the result says it all
@@ -85,7 +106,7 @@ func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
 	v.Wide = symbols.Width > symbolRoom && !(plain && symbols.Width <= symbolRoom+numberRoom) || !plain && numbers.Width > numberRoom
 	if v.Wide {
 		narrow := equation.Setter{System: b.p.System, Width: wholeRoom}
-		symbols, numbers = narrow.Equation(e.Symbol, tree), equation.Setter{System: b.p.System, Width: besideRoom}.Numbers(tree)
+		symbols, numbers = narrow.Equation(e.Symbol, tree), equation.Setter{System: b.p.System, Width: besideRoom, TopDown: down}.Numbers(tree)
 	}
 	v.Symbols = template.HTML(symbols.XML)
 	if plain {
@@ -149,10 +170,15 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 		}
 		tall := 12
 		if len(r.SI) > 2*tall {
-			tall = (len(r.SI) + 3) / 4
+			tall = min((len(r.SI)+across-1)/across, tallestColumn)
 		}
-		for i, x := range r.SI {
-			if i%tall == 0 {
+		v.TopDown = v.Over == "level" && equation.Levels(e.Tree)
+		for k := range r.SI {
+			i := k
+			if v.TopDown {
+				i = len(r.SI) - 1 - k
+			}
+			if k%tall == 0 {
 				v.Columns = append(v.Columns, nil)
 			}
 			label := strconv.Itoa(i + 1)
@@ -160,7 +186,7 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 				label = r.Labels[i]
 			}
 			last := len(v.Columns) - 1
-			v.Columns[last] = append(v.Columns[last], labelled{label, text(x)})
+			v.Columns[last] = append(v.Columns[last], labelled{label, text(r.SI[i])})
 		}
 		return 1.55 * float64(min(len(r.SI), tall)+1)
 	case len(r.SI) > 0:

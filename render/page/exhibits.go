@@ -20,7 +20,7 @@ func (b *book) exhibit(it exhibit.Item, label string) []item {
 	case it.Echo != nil:
 		return b.echo(it.Echo, label)
 	case it.Equation != nil:
-		return []item{b.equation(it.Equation, label)}
+		return b.equation(it.Equation, label)
 	case it.Table != nil:
 		return b.table(it.Table, label)
 	case it.Figure != nil:
@@ -193,7 +193,11 @@ func (b *book) table(t *exhibit.Table, label string) []item {
 	v := view{Label: label, ID: b.exhibits[t], Caption: t.Caption, CSV: "tables/" + t.ID + ".csv", Number: t.Number,
 		Aria: fmt.Sprintf("Table %d, %s", t.Number, t.Caption)}
 	for _, c := range t.Columns {
-		v.Heads = append(v.Heads, columnHead{c.Head, c.Symbol, c.Unit.Pretty(), c.Right})
+		head := c.Head
+		if c.Bare && c.Symbol != nil {
+			head = ""
+		}
+		v.Heads = append(v.Heads, columnHead{head, c.Symbol, c.Unit.Pretty(), c.Right})
 	}
 	rows := make([][]cellView, len(t.Rows))
 	heights := make([]float64, len(t.Rows))

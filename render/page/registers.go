@@ -1,15 +1,13 @@
 package page
 
 import (
-	"cmp"
 	"html/template"
 	"math"
-	"slices"
 	"strconv"
 	"strings"
-	"unicode/utf8"
 
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/quantity"
 	"quoin/render/equation"
 )
@@ -51,13 +49,27 @@ func (b *book) registers() (out []item, toc []entry) {
 	}
 	p := b.p
 	if len(p.Footnotes) > 0 {
-		add("q-notes", "Notes", []item{b.footnotes()})
+		add("q-notes", "Notes", b.footnotes())
 	}
 	add("q-assumptions", "Assumptions", chunked("assumptions", p.Assumptions, func(a exhibit.Assumption) float64 {
 		return 4.6 * max(lines(a.Text, 40), lines(a.Basis, 22))
 	}, nil))
-	notation := b.notation()
-	add("q-notation", "Notation", chunked("notation", notation, func(n notationRow) float64 { return 4.6 * lines(n.Meaning, 60) }, nil))
+	notation := chunked("notation", b.notation(), func(rows []notationRow) float64 {
+		high := 0.0
+		for _, n := range rows {
+			places := ""
+			for _, p := range n.Places {
+				places += p.Block + " 00, "
+			}
+			high += 4.6*max(lines(n.Meaning, 52), lines(places, 22)) + 1.9
+		}
+		return high
+	}, nil)
+	if len(notation) > 0 {
+		words := "Latin letters first, then Greek. In equations a last subscript in words names the block whose value it is."
+		notation = append([]item{{name: "text", data: struct{ Label, Text string }{"", words}, high: paragraph(words), keep: true}}, notation...)
+	}
+	add("q-notation", "Notation", notation)
 	var refs []item
 	for _, r := range p.References {
 		v := struct {
@@ -76,7 +88,7 @@ func (b *book) registers() (out []item, toc []entry) {
 	if p.System == quantity.US {
 		software.Units = "Shown in US customary units unless written otherwise"
 	}
-	add("q-software", "Software", []item{{name: "software", data: software, high: 73}})
+	add("q-software", "Software", []item{{name: "software", data: software, high: 86}})
 	add("q-cautions", "Limitations and caution", b.cautions())
 	return out, toc
 }
@@ -112,87 +124,106 @@ type footnoteView struct {
 func footnoteID(i int) string   { return "q-fn-" + strconv.Itoa(i) }
 func footnoteBack(i int) string { return "q-fnref-" + strconv.Itoa(i) }
 
-func (b *book) footnotes() item {
-	it := item{name: "footnotes", high: 4}
+func (b *book) footnotes() []item {
 	var list []footnoteView
 	for _, f := range b.p.Footnotes {
-		v := footnoteView{footnoteID(f.Index), footnoteBack(f.Index), f.Index, f.Body}
-		list = append(list, v)
-		it.anchors = append(it.anchors, v.ID)
-		for _, n := range f.Body {
-			it.high += proseHigh(n)
-		}
+		list = append(list, footnoteView{footnoteID(f.Index), footnoteBack(f.Index), f.Index, f.Body})
 	}
-	it.data = list
-	return it
+	return chunked("footnotes", list, func(f footnoteView) float64 {
+		high := 0.0
+		for _, n := range f.Body {
+			high += proseHigh(n)
+		}
+		return high
+	}, func(f footnoteView) []string { return []string{f.ID} })
 }
 
+// notationRow is one meaning of a symbol. The symbol stands at its first.
 type notationRow struct {
 	Symbol         template.HTML
+	First          bool
 	Meaning, Value string
-	ID             string // where it is shown
+	Places         []placeView
 }
 
-// notation is every value named in a formula line.
-func (b *book) notation() []notationRow {
-	var out []notationRow
-	values := slices.SortedStableFunc(slices.Values(b.p.Values), func(x, y exhibit.Entry) int { return naturally(x.ID, y.ID) })
-	for _, e := range values {
-		if e.Tree == nil {
-			continue
+// placeView is a block whose symbol it is, or the sheet where a formula sets it.
+type placeView struct{ Block, ID string }
+
+// most places that a meaning names; the rest is counted.
+const mostPlaces = 6
+
+// notation is every symbol with its meanings, each a row.
+func (b *book) notation() [][]notationRow {
+	var out [][]notationRow
+	for _, s := range b.p.Notation {
+		var rows []notationRow
+		for i, m := range s.Meanings {
+			r := notationRow{First: i == 0, Meaning: m.Text, Value: m.Unit.Pretty()}
+			if s.TeX != "" {
+				set, err := b.tex(s.TeX, false)
+				b.fail(err, "notation")
+				r.Symbol = set
+			} else {
+				r.Symbol = symbol(s.Name)
+			}
+			var known []exhibit.Entry
+			for _, p := range m.Places {
+				if e, ok := b.entries[p.ID]; ok {
+					known = append(known, e)
+				}
+			}
+			if len(known) == 1 {
+				r.Value = b.worth(known[0])
+			}
+			for j, p := range m.Places {
+				if j == mostPlaces {
+					r.Places = append(r.Places, placeView{Block: "and " + strconv.Itoa(len(m.Places)-j) + " more"})
+					break
+				}
+				r.Places = append(r.Places, placeView{p.Block, or(b.origins[p.ID], p.Anchor)})
+			}
+			rows = append(rows, r)
 		}
-		unit := e.Value.Unit
-		if unit.Scale == 0 {
-			unit = b.p.System.Preferred(e.Value.Dim)
-		}
-		r := notationRow{Symbol: template.HTML(equation.Name(e.ID)), Meaning: e.Doc, ID: b.origins[e.ID]}
-		if r.ID == "" {
-			r.ID = e.Anchor
-		}
-		if e.Value.Shape == quantity.Number && len(e.Value.SI) == 1 {
-			r.Value = numbersText([]exhibit.Number{{Value: e.Value.SI[0], Unit: unit, Digits: digits(e, unit)}})
-		} else {
-			r.Value = strconv.Itoa(e.Value.Len()) + " values, " + or(unit.Pretty(), "pure numbers")
-		}
-		out = append(out, r)
+		out = append(out, rows)
 	}
 	return out
+}
+
+// symbol is a name typeset, or where that is wider than its column, as written,
+// free to break at its parts.
+func symbol(name string) template.HTML {
+	set := equation.Setter{}.Symbols(&expr.Node{Op: expr.Name, Text: name})
+	if set.Width <= symbolColumn {
+		return template.HTML(set.XML)
+	}
+	return template.HTML(strings.ReplaceAll(template.HTMLEscapeString(name), "_", "_<wbr>"))
+}
+
+// symbolColumn is how wide a symbol of the notation may be, em.
+const symbolColumn = 11
+
+// worth is the value of an entry, or how many it holds and in what unit.
+func (b *book) worth(e exhibit.Entry) string {
+	unit := e.Value.Unit
+	if unit.Scale == 0 {
+		unit = b.p.System.Preferred(e.Value.Dim)
+	}
+	if e.Value.Shape == quantity.Number && len(e.Value.SI) == 1 {
+		return numbersText([]exhibit.Number{{Value: e.Value.SI[0], Unit: unit, Digits: digits(e, unit)}})
+	}
+	return strconv.Itoa(e.Value.Len()) + " values, " + or(unit.Pretty(), "pure numbers")
 }
 
 // digits is how a value of the notation is shown: as given where it was given, a
 // whole pure number without decimals, else as usual.
 func digits(e exhibit.Entry, unit quantity.Unit) int {
 	x := unit.From(e.Value.SI[0])
-	given, _ := constantTree(e.Tree)
+	given := false
+	if e.Tree != nil {
+		given, _ = constantTree(e.Tree)
+	}
 	if given || e.Value.Dim.Is(quantity.None) && unit.Pretty() == "" && x == math.Round(x) && math.Abs(x) < 1e6 {
 		return quantity.Exact(x)
 	}
 	return quantity.Digits
-}
-
-// naturally orders names as people count: a1, a2, a10.
-func naturally(a, b string) int {
-	for a != "" && b != "" {
-		da, db := leading(a), leading(b)
-		if da == "" || db == "" {
-			x, n := utf8.DecodeRuneInString(a)
-			y, m := utf8.DecodeRuneInString(b)
-			if x != y {
-				return cmp.Compare(x, y)
-			}
-			a, b = a[n:], b[m:]
-			continue
-		}
-		na, nb := strings.TrimLeft(da, "0"), strings.TrimLeft(db, "0")
-		if c := cmp.Or(cmp.Compare(len(na), len(nb)), cmp.Compare(na, nb), cmp.Compare(len(da), len(db))); c != 0 {
-			return c
-		}
-		a, b = a[len(da):], b[len(db):]
-	}
-	return cmp.Compare(len(a), len(b))
-}
-
-// leading is the digits a text begins with.
-func leading(text string) string {
-	return text[:len(text)-len(strings.TrimLeft(text, "0123456789"))]
 }

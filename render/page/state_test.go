@@ -71,19 +71,47 @@ func TestPeople(t *testing.T) {
 	}
 }
 
+// TestNotation: a symbol stands once, at its first meaning; a single value is
+// shown with its digits, of others the unit.
 func TestNotation(t *testing.T) {
 	three := quantity.Scalar(3, quantity.Unit{})
 	third := quantity.Scalar(1.0/3, quantity.Unit{})
-	metres := quantity.Scalar(7, quantity.MustUnit("m"))
-	given := quantity.Scalar(15.24, quantity.MustUnit("m"))
+	metre := quantity.MustUnit("m")
 	name, literal := &expr.Node{Op: expr.Name, Text: "x"}, &expr.Node{Op: expr.Literal, Text: "15.24", Unit: "m"}
-	b := newBook(&exhibit.Package{System: quantity.SI, Values: []exhibit.Entry{
-		{ID: "a1", Value: three, Tree: name, Doc: "count"}, {ID: "a10", Value: third, Tree: name}, {ID: "a2", Value: metres, Tree: name}, {ID: "a2b", Value: given, Tree: literal}}}, Options{})
-	var got []string
-	for _, r := range b.notation() {
-		got = append(got, r.Meaning+"|"+r.Value)
+	meaning := func(text string, unit quantity.Unit, ids ...string) exhibit.Meaning {
+		m := exhibit.Meaning{Text: text, Unit: unit}
+		for _, id := range ids {
+			block, _, dotted := strings.Cut(id, ".")
+			if !dotted {
+				block = ""
+			}
+			m.Places = append(m.Places, exhibit.SymbolPlace{ID: id, Block: block})
+		}
+		return m
 	}
-	if want := "count|3; |7.000\u202fm; |15.24\u202fm; |0.3333"; strings.Join(got, "; ") != want {
+	b := newBook(&exhibit.Package{System: quantity.SI,
+		Values: []exhibit.Entry{{ID: "a1", Value: three, Tree: name}, {ID: "m.a1", Value: third}, {ID: "a2", Value: quantity.Scalar(7, metre), Tree: name}, {ID: "a2b", Value: quantity.Scalar(15.24, metre), Tree: literal},
+			{ID: "v.a3", Value: quantity.List([]float64{1, 2}, metre, nil)}},
+		Notation: []exhibit.Symbol{
+			{Name: "a1", Meanings: []exhibit.Meaning{meaning("count", quantity.Unit{}, "a1"), meaning("part", quantity.Unit{}, "m.a1")}},
+			{Name: "a2", Meanings: []exhibit.Meaning{meaning("", metre, "a2")}}, {Name: "a2b", Meanings: []exhibit.Meaning{meaning("", metre, "a2b")}},
+			{Name: "a3", Meanings: []exhibit.Meaning{meaning("heights", metre, "v.a3")}},
+			{Name: "a4", Meanings: []exhibit.Meaning{meaning("length", metre, "p.a4", "q.a4", "r.a4", "s.a4", "t.a4", "u.a4", "v.a4", "w.a4")}},
+		}}, Options{})
+	var got []string
+	for _, rows := range b.notation() {
+		for i, r := range rows {
+			places := ""
+			for _, p := range r.Places {
+				places += p.Block + " "
+			}
+			got = append(got, r.Meaning+"|"+r.Value+"|"+strings.TrimSpace(places))
+			if r.First != (i == 0) {
+				t.Errorf("row %d of %s: first is %v", i, r.Meaning, r.First)
+			}
+		}
+	}
+	if want := "count|3|; part|0.3333|m; |7.000\u202fm|; |15.24\u202fm|; heights|2 values, m|v; length|m|p q r s t u and 2 more"; strings.Join(got, "; ") != want {
 		t.Errorf("got %q, want %q", got, want)
 	}
 }

@@ -258,6 +258,7 @@ func (b *combine) results(r *Run, c *modal.Combined, in demand) {
 
 func (b *combine) method(r *Run, c *modal.Combined, z float64) {
 	r.Explain("Each mode's displacements, drifts, forces, shears and moments are found with their signs and then combined, each quantity by itself. Forces and displacements are divided by $R/I_\\mathrm{e} = " + short(c.Divisor) + "$; displacements are elastic and not amplified by a deflection factor.")
+	r.modalSymbols()
 	r.Equation(`u_n = \Gamma_n\phi_n\frac{S_\mathrm{pa}(T_n)}{\omega_n^2 (R/I_\mathrm{e})},\qquad f_n = \Gamma_n M \phi_n \frac{S_\mathrm{pa}(T_n)}{R/I_\mathrm{e}}`, "displacements and forces of mode n", chopra())
 	if c.Q > 0 {
 		r.Explain("The spectrum is divided by the behaviour factor q = " + short(c.Q) + " already: forces and displacements are those of the reduced spectrum.")
@@ -277,6 +278,7 @@ func (b *combine) method(r *Run, c *modal.Combined, z float64) {
 	}
 	switch c.Rule {
 	case modal.CQC:
+		r.cqcSymbols()
 		r.Equation(`r = \sqrt{\sum_i\sum_j \rho_{ij}\, r_i r_j},\qquad \rho_{ij} = \frac{8\zeta^2(1+x)x^{3/2}}{(1-x^2)^2 + 4\zeta^2 x(1+x)^2},\quad x = \omega_i/\omega_j`,
 			"complete quadratic combination, ζ = "+damped(z), cite.To("Der Kiureghian 1981", ""))
 		r.Refs = append(r.Refs, cite.To("Wilson et al. 1981", ""))

@@ -9,6 +9,7 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/lateral"
 	"quoin/calc/modal"
 	"quoin/calc/quantity"
@@ -22,6 +23,7 @@ func (m oneAnalysis) Product(string) any                         { return m.prod
 func (oneAnalysis) Read(string, string) ([]byte, string, error)  { panic("no files") }
 func (oneAnalysis) Curves(string) []exhibit.Curve                { return nil }
 func (oneAnalysis) KindOf(string) string                         { return "static" }
+func (oneAnalysis) Line(string) (*expr.Node, string)             { return nil, "" }
 func (oneAnalysis) Value(string) (quantity.Value, string, error) { panic("no values") }
 func (oneAnalysis) Call(string, []quantity.Value) (quantity.Value, string, error) {
 	panic("no functions")

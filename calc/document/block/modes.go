@@ -109,6 +109,7 @@ func (b *modes) results(r *Run, s *modal.Modes) {
 		r.Explain("Undamped free vibration.")
 	}
 	r.Explain("Shapes are scaled so that the component of largest magnitude is +1; participation factors belong to that scale. Mass ratios are fractions of the total mass of the model.")
+	r.modeSymbols()
 	if !s.Imported {
 		r.Equation(`K\phi_n = \omega_n^2 M\phi_n,\qquad T_n = 2\pi/\omega_n`, "natural frequencies and shapes", chopra())
 	}

@@ -277,6 +277,7 @@ func (b *record) results(r *Run, rec *motion.Record) {
 	r.Number("duration", rec.Duration(), seconds)
 
 	r.Explain("The acceleration is linear between samples. Velocity and displacement follow by exact integration from rest, so that their peaks, the integrals of $a^2$ and $|a|$, and the times at which the Arias integral passes 5, 75 and 95 % are exact for that motion.")
+	r.recordSymbols()
 	r.Equation(`I_\mathrm{A} = \frac{\pi}{2g}\int a^2\,\mathrm{d}t \qquad \mathrm{CAV} = \int |a|\,\mathrm{d}t \qquad I_\mathrm{H} = \int_{0.1\,\mathrm{s}}^{2.5\,\mathrm{s}} S_\mathrm{pv}(T,\,5\,\%)\,\mathrm{d}T`,
 		"Arias intensity, cumulative absolute velocity, Housner intensity (trapezoid rule with a step of 0.01 s in T); g = 9.80665 m/s²", cite.To("Arias 1970", ""))
 

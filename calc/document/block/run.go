@@ -8,6 +8,7 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/quantity"
 )
 
@@ -21,8 +22,12 @@ type Env interface {
 	// Read opens a file named in the document, relative to the file that names
 	// it. Its error is fit for a reader.
 	Read(path, role string) (data []byte, full string, err error)
-	// Curves are the computed series whose id is this, or begins with it and "@".
+	// Curves are the computed series whose id is this, or begins with it and "@";
+	// of the name of a block, all of its series.
 	Curves(id string) []exhibit.Curve
+	// Line is the evaluated tree and the description of a formula name; nil for
+	// other names.
+	Line(name string) (*expr.Node, string)
 	// KindOf is the kind of a block.
 	KindOf(name string) string
 }
@@ -47,6 +52,7 @@ type Result struct {
 	Warnings    []string
 	Cautions    []string // keys of the document's list
 	Refs        []cite.Ref
+	Symbols     []Symbol // of the method's equations in TeX
 	Assumptions []exhibit.Assumption
 	References  []exhibit.Reference
 	Diags       diag.List
@@ -80,7 +86,7 @@ func (r *Run) Warn(code, format string, args ...any) {
 func (r *Run) WarnAt(f field.Field, code, format string, args ...any) {
 	text := fmt.Sprintf(format, args...)
 	r.Warnings = append(r.Warnings, text)
-	r.Diags.Warnf(code, f.At, "%s: %s", r.Name, text)
+	r.Diags.Warnf(code, f.At, "%s: %s", or(r.Name, r.Kind.Name), text)
 }
 
 // Caution triggers a sentence of the limitations section.
@@ -127,6 +133,18 @@ func (r *Run) Explain(text string, refs ...cite.Ref) {
 func (r *Run) Equation(tex, description string, ref cite.Ref) {
 	r.Method = append(r.Method, exhibit.Item{Equation: &exhibit.Equation{TeX: tex, Description: description, Ref: &ref}})
 	r.Refs = append(r.Refs, ref)
+}
+
+// Symbol is a symbol of an equation, for the notation.
+type Symbol struct {
+	Name    string // as in formulas (omega_n), or TeX between dollar signs
+	Meaning string
+	Unit    quantity.Unit
+}
+
+// Symbol says what a symbol of the method's equations stands for, and its unit.
+func (r *Run) Symbol(name, meaning string, unit quantity.Unit) {
+	r.Symbols = append(r.Symbols, Symbol{name, meaning, unit})
 }
 
 // Figure adds a figure to the results.

@@ -24,3 +24,13 @@ func TestCrosscheck(t *testing.T) {
 		}
 	}
 }
+
+// TestLinear: a series is linear between its points and itself at them.
+func TestLinear(t *testing.T) {
+	xs, ys := []float64{1, 2, 4}, []float64{10, 20, 0}
+	for x, want := range map[float64]float64{1: 10, 1.25: 12.5, 2: 20, 3.5: 5, 4: 0} {
+		if got := linear(xs, ys, x); got != want {
+			t.Errorf("at %v: %v, want %v", x, got, want)
+		}
+	}
+}

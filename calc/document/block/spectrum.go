@@ -108,6 +108,7 @@ func (b *spectrumFields) show(r *Run, s *spectrum.Spectrum) {
 		r.Curve("SA"+q, s.Periods, seconds, s.SA[i], inG)
 	}
 	r.Explain("Each oscillator is stepped exactly for acceleration that is linear between samples; the coefficients of the step come from series where closed forms would lose digits. Maxima are over continuous time (turning points inside a step by the closed form) and include the free vibration after the record.", cite.To("Nigam & Jennings 1969", ""))
+	r.spectrumSymbols()
 	r.Equation(`\ddot u + 2\zeta\omega\dot u + \omega^2 u = -a_\mathrm{g}(t),\quad \omega = 2\pi/T`, "relative displacement u of an oscillator of period T and damping ratio ζ", cite.To("Nigam & Jennings 1969", ""))
 	r.Equation(`\mathrm{SD} = \max|u|,\quad \mathrm{PSV} = \omega\,\mathrm{SD},\quad \mathrm{PSA} = \omega^2\,\mathrm{SD},\quad \mathrm{SV} = \max|\dot u|,\quad \mathrm{SA} = \max|2\zeta\omega\dot u + \omega^2 u|`, "spectral ordinates", cite.To("Nigam & Jennings 1969", ""))
 

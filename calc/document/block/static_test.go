@@ -8,6 +8,7 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/modal"
 	"quoin/calc/quantity"
 	"quoin/calc/standard"
@@ -22,6 +23,7 @@ func (p products) Product(name string) any                   { return p[name] }
 func (products) Read(string, string) ([]byte, string, error) { panic("block: no files") }
 func (products) Curves(string) []exhibit.Curve               { return nil }
 func (products) KindOf(string) string                        { return "" }
+func (products) Line(string) (*expr.Node, string)            { return nil, "" }
 
 // said is a field with a text, asked one with a number; each stands on its own line.
 func said(line int, text string) field.Field {

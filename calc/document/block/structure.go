@@ -236,6 +236,7 @@ func (b *building) results(r *Run, m *structure.Model, given *matrixPair) {
 	r.Inputs = append(r.Inputs, exhibit.Item{Table: &t})
 	if storeys {
 		r.Explain("A shear building: rigid floors, one lateral freedom a level in direction x, storey $i$ under level $i$ carrying the shear $k_i (u_i - u_{i-1})$. Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$. The base is fixed.")
+		r.shearSymbols()
 		r.Equation(`K_{ii} = k_i + k_{i+1},\quad K_{i,i+1} = -k_{i+1},\quad M_{ii} = m_i`, "stiffness and mass matrices, levels counted from the lowest", chopra())
 	} else {
 		b.matrices(r, m, given)

@@ -265,6 +265,10 @@ func (f *Field) resolve(s Spec, scope formula.Scope, diags *diag.List) {
 			diags.Errorf("shape", f.spot(i, 0, len(f.List[i].Text)), "%s must be one number, this is a vector of %d", s.Name, v.Len()).WithHint("take an item of it: [1] is the first")
 			return
 		}
+		if v.Shape == quantity.Rows && len(f.trees()) == 1 {
+			diags.Errorf("shape", f.spot(i, 0, len(f.List[i].Text)), "%s must be a vector, these are rows of numbers", s.Name).WithHint("take one row by its index, counted from 1: m.phi[1]")
+			return
+		}
 		if v.Shape == quantity.Rows || f.Tree == nil && v.Shape != quantity.Number {
 			diags.Errorf("shape", f.spot(i, 0, len(f.List[i].Text)), "an item of %s must be one number", s.Name)
 			return

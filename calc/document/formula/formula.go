@@ -47,7 +47,8 @@ type Line struct {
 	AsFrom, AsTo int
 	Source       string // inside the [ ] of the comment
 	Description  string // the rest of the comment
-	// Text of a check is its id: as written, runs of blanks folded to one.
+	// Text of a check is its id: as written, with one blank for any run of them
+	// and around what compares.
 	Text string
 }
 
@@ -66,7 +67,7 @@ func ParseLine(text string, names Names) (Line, []Finding) {
 	line.Source, line.Description = p.comment(comment, len(body))
 	if from, ok := checkStart(body); ok {
 		line.Check = true
-		line.Text = strings.Join(strings.Fields(body[from:]), " ")
+		line.Text = normal(body[from:])
 		p.seek(from)
 		line.Tree = p.check()
 	} else if p.name(&line) {

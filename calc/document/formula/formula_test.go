@@ -167,3 +167,30 @@ func BenchmarkLine(b *testing.B) {
 		ChooseDigits(line.Tree, quantity.SI, line.As, 4)
 	}
 }
+
+// TestCheckText: a check is the same however it is spaced, and its text has one form.
+func TestCheckText(t *testing.T) {
+	read := func(text string) Line {
+		line, findings := ParseLine("check "+text, nil)
+		if len(findings) > 0 {
+			t.Fatalf("%s: %v", text, findings)
+		}
+		return line
+	}
+	for _, pair := range [][2]string{{"a <= 4", "a<=4"}, {"a  <=4 ", "a <= 4"}, {"a+b > c*2", "a + b>c * 2"}, {"a == b within 2 %", "a==b within 2 %"}} {
+		x, y := read(pair[0]), read(pair[1])
+		if Key(x.Tree) != Key(y.Tree) {
+			t.Errorf("%q and %q are two checks", pair[0], pair[1])
+		}
+	}
+	for _, pair := range [][2]string{{"a <= 4", "a < 4"}, {"a <= 4", "a <= 4.0 m"}, {"a - (b - c) < 1", "a - b - c < 1"}, {"3 kN*m < a", "3 kN * m < a"}, {"f.x < 1", "fx < 1"}} {
+		if Key(read(pair[0]).Tree) == Key(read(pair[1]).Tree) {
+			t.Errorf("%q and %q are one check", pair[0], pair[1])
+		}
+	}
+	for text, want := range map[string]string{"a<=4": "a <= 4", " a   >  b": "a > b", "a==b within 2 %": "a == b within 2 %"} {
+		if got := read(text).Text; got != want {
+			t.Errorf("%q: text %q, want %q", text, got, want)
+		}
+	}
+}

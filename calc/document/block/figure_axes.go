@@ -1,0 +1,218 @@
+package block
+
+import (
+	"regexp"
+	"slices"
+	"strings"
+
+	"quoin/calc/document/field"
+	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
+)
+
+// panel puts the curves on their axes.
+func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
+	xs, ys := all[0].X, all[0].Y
+	xu, ok1 := axisUnit(r, b.XUnit, xs)
+	yu, ok2 := axisUnit(r, b.YUnit, ys)
+	if !ok1 || !ok2 {
+		return p, false
+	}
+	dash := map[exhibit.Role]int{}
+	for _, d := range all {
+		f := exhibit.FigSerie{ID: d.ID, Label: d.label, X: d.X.SI, Y: d.Y.SI, Role: d.role, Step: d.step, Dots: d.dots}
+		if f.Role == exhibit.Data || f.Role == exhibit.Governing {
+			f.Dash = dash[f.Role] % 4
+			dash[f.Role]++
+		}
+		p.Series = append(p.Series, f)
+	}
+	p.X = exhibit.Axis{Label: or(b.XLabel.Text(), axisName(xs.Dim)), Unit: xu, Log: b.XAxis.Text() == "log"}
+	p.Y = exhibit.Axis{Label: or(b.YLabel.Text(), or(agreed(all), axisName(ys.Dim))), Unit: yu, Log: b.YAxis.Text() == "log"}
+	if xs.Dim.Is(quantity.Time) && !b.XLabel.Given && r.histories(all) {
+		p.X.Label = "time t"
+	}
+	if b.Over.Given {
+		b.height(r, &p, all)
+	}
+	if b.Series[0].Ratio.Given {
+		p.Lines = append(p.Lines, exhibit.RefLine{At: 1, Label: "1"})
+	}
+	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p)
+	if !ok {
+		return p, false
+	}
+	value := &p.Y
+	if b.Over.Given {
+		value = &p.X
+	}
+	if !value.Log && value.Min == nil && positive(p.Series, b.Over.Given) && (value.Max == nil || *value.Max > 0) {
+		value.Min = zero()
+	}
+	return p, b.inView(r, &p) && b.marks(r, &p, b.Mark, p.X, true) && b.marks(r, &p, b.MarkY, p.Y, false)
+}
+
+// histories tells whether all curves are of records: over time, not period.
+func (r *Run) histories(all []drawn) bool {
+	return !slices.ContainsFunc(all, func(d drawn) bool {
+		block, _, _ := strings.Cut(d.ID, ".")
+		return r.KindOf(block) != "record"
+	})
+}
+
+func axisUnit(r *Run, f field.Field, v quantity.Value) (quantity.Unit, bool) {
+	if !f.Given {
+		if v.Unit.Text != "" {
+			return v.Unit, true
+		}
+		return r.System().Preferred(v.Dim), true
+	}
+	u, err := quantity.ParseUnit(f.Text())
+	if err != nil || !u.Dim.Is(v.Dim) {
+		r.Fail(f, "unit", "%s is no unit for %s", f.Text(), v.Dim.Name())
+		return u, false
+	}
+	return u, true
+}
+
+// ends sets the ends of an axis.
+func (b *figure) ends(r *Run, a *exhibit.Axis, from, to, scale field.Field, v quantity.Value, which string) bool {
+	for _, l := range []struct {
+		f  field.Field
+		to **float64
+	}{{from, &a.Min}, {to, &a.Max}} {
+		if !l.f.Given {
+			continue
+		}
+		if !l.f.Value.Dim.Is(v.Dim) {
+			r.Fail(l.f, "dimension", "the %s axis shows %s, this is %s", which, v.Dim.Name(), l.f.Value.Dim.Name())
+			return false
+		}
+		x := l.f.SI()
+		if a.Log && x <= 0 {
+			r.Fail(l.f, "log-axis", "a log axis lies above zero")
+			return false
+		}
+		*l.to = &x
+	}
+	if from.Given && to.Given && from.SI() >= to.SI() {
+		r.Fail(to, "figure-range", "the %s axis ends at %s, where it begins or before", which, to.Written)
+		return false
+	}
+	return true
+}
+
+// inView sees that something of the curves lies between the ends of the axes.
+func (b *figure) inView(r *Run, p *exhibit.Panel) bool {
+	within := func(a exhibit.Axis, lo, hi float64) bool {
+		return (a.Max == nil || lo <= *a.Max) && (a.Min == nil || hi >= *a.Min)
+	}
+	for _, s := range p.Series {
+		if within(p.X, slices.Min(s.X), slices.Max(s.X)) && within(p.Y, slices.Min(s.Y), slices.Max(s.Y)) {
+			return true
+		}
+	}
+	for _, f := range []field.Field{b.From, b.To, b.YFrom, b.YTo} {
+		if f.Given {
+			r.Fail(f, "figure-range", "no curve lies between the ends of the axes")
+			return false
+		}
+	}
+	return true
+}
+
+// logarithmic leaves out the points that have no place on log axes, as a period
+// of zero.
+func (b *figure) logarithmic(r *Run, p *exhibit.Panel) bool {
+	if !p.X.Log && !p.Y.Log {
+		return true
+	}
+	for i := range p.Series {
+		s := &p.Series[i]
+		var u, v []float64
+		for j := range s.X {
+			if !(p.X.Log && s.X[j] <= 0 || p.Y.Log && s.Y[j] <= 0) {
+				u, v = append(u, s.X[j]), append(v, s.Y[j])
+			}
+		}
+		if s.X, s.Y = u, v; len(u) == 0 {
+			at := b.XAxis
+			if !p.X.Log {
+				at = b.YAxis
+			}
+			r.Fail(at, "log-axis", "%s has no values greater than zero; a log axis cannot show it", s.Label)
+			return false
+		}
+	}
+	return true
+}
+
+// marks draws dotted lines across the panel, named with their values.
+func (b *figure) marks(r *Run, p *exhibit.Panel, f field.Field, a exhibit.Axis, vertical bool) bool {
+	if !f.Given {
+		return true
+	}
+	if !f.Value.Dim.Is(a.Unit.Dim) {
+		which := "y"
+		if vertical {
+			which = "x"
+		}
+		r.Fail(f, "dimension", "the %s axis shows %s, this is %s", which, a.Unit.Dim.Name(), f.Value.Dim.Name())
+		return false
+	}
+	for i, x := range f.Value.SI {
+		text := quantity.Format(a.Unit.From(x), 3)
+		if u := a.Unit.Pretty(); u != "" {
+			text += " " + u
+		}
+		if i < len(f.List) && len(f.List) == len(f.Value.SI) && !literalText(f, i) {
+			text = markName(f.List[i].Text) + " " + text
+		}
+		p.Lines = append(p.Lines, exhibit.RefLine{Vertical: vertical, At: x, Label: text})
+	}
+	return true
+}
+
+// markName is how an expression is named at its line: m.T[1] is T₁.
+func markName(text string) string {
+	m := indexed.FindStringSubmatch(text)
+	if m == nil {
+		return text
+	}
+	return m[1] + plainSymbol("_"+m[2])
+}
+
+var indexed = regexp.MustCompile(`^[\pL\d_]+\.(\pL+)\[(\d+)\]$`)
+
+// positive tells whether no curve goes below zero on the axis of its values.
+func positive(series []exhibit.FigSerie, alongX bool) bool {
+	return !slices.ContainsFunc(series, func(s exhibit.FigSerie) bool {
+		v := s.Y
+		if alongX {
+			v = s.X
+		}
+		return len(v) > 0 && slices.Min(v) < 0
+	})
+}
+
+func axisName(d quantity.Dim) string {
+	switch {
+	case d.Is(quantity.Time):
+		return "period T"
+	case d.Is(quantity.Length):
+		return "length"
+	case d.Is(quantity.Force):
+		return "force"
+	}
+	return "value"
+}
+
+// agreed names the value axis, where the curves agree.
+func agreed(all []drawn) string {
+	for _, d := range all {
+		if d.name != all[0].name {
+			return ""
+		}
+	}
+	return all[0].name
+}

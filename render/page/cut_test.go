@@ -1,0 +1,104 @@
+package page
+
+import (
+	"reflect"
+	"strconv"
+	"strings"
+	"testing"
+
+	"quoin/calc/exhibit"
+	"quoin/calc/expr"
+	"quoin/calc/quantity"
+)
+
+// TestCut: what is higher than a sheet may be is cut; nothing is lost or said
+// twice but a table's head, and a list goes on counting.
+func TestCut(t *testing.T) {
+	text := func(s string) exhibit.Prose { return exhibit.Prose{Kind: exhibit.Text, Text: s} }
+	of := func(kind exhibit.ProseKind, c ...exhibit.Prose) exhibit.Prose {
+		return exhibit.Prose{Kind: kind, Children: c}
+	}
+	var list, terms, rows []exhibit.Prose
+	var listing []string
+	for i := range 200 {
+		n := strconv.Itoa(i)
+		list = append(list, of(exhibit.ListItem, text("item "+n)))
+		terms = append(terms, of(exhibit.Term, text("term "+n)), of(exhibit.Description, text("said "+n)))
+		rows = append(rows, of(exhibit.TableRow, of(exhibit.TableCell, text("row "+n))))
+		listing = append(listing, "line "+n)
+	}
+	for _, n := range []exhibit.Prose{of(exhibit.BulletList, list...), of(exhibit.OrderedList, list...), of(exhibit.DefinitionList, terms...), of(exhibit.ProseTable, rows...), {Kind: exhibit.CodeBlock, Text: strings.Join(listing, "\n")}} {
+		parts := cut(n)
+		if len(parts) < 4 {
+			t.Errorf("%s: %d parts", n.Kind, len(parts))
+		}
+		next, all := 1, ""
+		for i, p := range parts {
+			if high := proseHigh(p); high > tallest {
+				t.Errorf("%s: part %d is %v mm high", n.Kind, i, high)
+			}
+			if n.Kind == exhibit.OrderedList && p.Level != next {
+				t.Errorf("part %d counts from %d, want %d", i, p.Level, next)
+			}
+			next += len(p.Children)
+			if n.Kind == exhibit.DefinitionList && p.Children[len(p.Children)-1].Kind == exhibit.Term {
+				t.Errorf("part %d ends with a term", i)
+			}
+			if n.Kind == exhibit.ProseTable && i > 0 {
+				if plain(p.Children[:1]) != "row 0" {
+					t.Errorf("part %d has the head %q", i, plain(p.Children[:1]))
+				}
+				p.Children = p.Children[1:]
+			}
+			all += plain([]exhibit.Prose{p})
+		}
+		if want := plain([]exhibit.Prose{n}); strings.ReplaceAll(all, "\n", "") != strings.ReplaceAll(want, "\n", "") {
+			t.Errorf("%s: cut says\n%s\nnot\n%s", n.Kind, all, want)
+		}
+	}
+	short := of(exhibit.BulletList, list[:5]...)
+	if got := cut(short); len(got) != 1 || !reflect.DeepEqual(got[0], short) {
+		t.Errorf("a short list is cut")
+	}
+}
+
+// TestLongVector: the items of a long vector go on in further items that fit, from
+// the highest level down; an equation that no sheet holds is set smaller on paper.
+func TestLongVector(t *testing.T) {
+	b := newBook(&exhibit.Package{System: quantity.SI}, Options{})
+	var si []float64
+	var labels []string
+	for i := range 300 {
+		si, labels = append(si, float64(i)), append(labels, "L"+strconv.Itoa(i+1))
+	}
+	v := quantity.List(si, quantity.MustUnit("m"), labels)
+	name := &expr.Node{Op: expr.Name, Text: "h", Value: &v}
+	out := b.equation(&exhibit.Equation{ID: "h", Symbol: name, Tree: name, Result: &v}, "")
+	next := 300
+	for i, it := range out {
+		if it.high > b.room() {
+			t.Errorf("item %d is %v mm high", i, it.high)
+		}
+		for _, c := range it.data.(equationView).Columns {
+			for _, l := range c {
+				if l.Label != "L"+strconv.Itoa(next) {
+					t.Fatalf("%s where L%d belongs", l.Label, next)
+				}
+				next--
+			}
+		}
+	}
+	if next != 0 || len(out) < 3 {
+		t.Errorf("%d items, %d labels missing", len(out), next)
+	}
+	sum := &expr.Node{Op: expr.Name, Text: "a_long_name_of_a_value", Value: &quantity.Value{SI: []float64{1}}}
+	tree := sum
+	for range 400 {
+		tree = &expr.Node{Op: expr.Add, Args: []*expr.Node{tree, sum}}
+	}
+	one := quantity.Pure(1)
+	it := b.equation(&exhibit.Equation{Symbol: name, Tree: tree, Result: &one}, "")[0]
+	if shrink := it.data.(equationView).Shrink; shrink == "" || it.high > b.room() {
+		t.Errorf("shrink %q, %v mm high", shrink, it.high)
+	}
+}
