@@ -67,18 +67,18 @@ func TestWrite(t *testing.T) {
 		}
 		return lines[line], true
 	})
-	want := `package.md:2:10: error: "KN" is not a unit
+	want := `package.md:2:10: error: "KN" is not a unit (unknown-unit)
      y =  12 KN
              ^^
     hint: write kN
-package.md:1:1: warning: an empty range has one caret
+package.md:1:1: warning: an empty range has one caret (comment)
     abc
     ^
-data.csv: error: the file is empty
-package.md:3:3: error: over several lines
+data.csv: error: the file is empty (file)
+package.md:3:3: error: over several lines (syntax)
     a bcd
       ^^^
-package.md:9:1: error: a line that is not there
+package.md:9:1: error: a line that is not there (syntax)
 `
 	if err != nil || b.String() != want {
 		t.Errorf("%v\ngot:\n%s\nwant:\n%s", err, b.String(), want)

@@ -14,12 +14,12 @@ import (
 // widest is how much of a source line is shown, in characters.
 const widest = 160
 
-// Write lays messages out for a reader: file:line:column, severity and summary;
-// the source line; a caret under the range; the hint. source gives the text of
+// Write lays messages out for a reader: file:line:column, severity, summary and,
+// in parentheses, the code by which the page of diagnostics explains it; the source line; a caret under the range; the hint. source gives the text of
 // a line of a file (counted from 1), or false if it has none.
 func Write(w io.Writer, list List, source func(file string, line int) (string, bool)) error {
 	for _, d := range list {
-		if _, err := fmt.Fprintf(w, "%s: %s: %s\n", Printable(d.Range.String()), d.Severity, Printable(d.Summary)); err != nil {
+		if _, err := fmt.Fprintf(w, "%s: %s: %s (%s)\n", Printable(d.Range.String()), d.Severity, Printable(d.Summary), d.Code); err != nil {
 			return err
 		}
 		if d.Range.Line > 0 && source != nil {

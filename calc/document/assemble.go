@@ -117,7 +117,7 @@ func (a *assembly) block(s *section) *exhibit.Block {
 		ref, ok := cite.Parse(it.Text, a.ownKeys)
 		if !ok {
 			ref = cite.Ref{Key: it.Text}
-			a.diags.Warnf("unknown-source", it.At, "no reference is known as %q", it.Text).WithHint("add it to a references block; it is printed as written")
+			a.diags.Warnf("unknown-source", it.At, "no reference is known as %q", it.Text).WithHint("%s", a.sourceHint(it.Text, "add it to a references block; it is printed as written"))
 		} else {
 			ref.Memory = false
 			a.refs = append(a.refs, ref)

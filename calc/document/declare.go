@@ -182,7 +182,7 @@ func (d *run) fence(p *part, f markdown.Fence, isName formula.Names, anchors map
 			yaml.At = f.Place // what is missing is missing from the block
 		}
 		n.diags = append(n.diags, field.Decode(yaml, n.body, "the "+k.Name+" block", isName)...)
-		if c, ok := n.body.(block.Checked); ok {
+		if c, ok := n.body.(block.Checked); ok && (yaml.IsMap || len(yaml.Text) == 0) {
 			said := &block.Checks{Place: f.Place}
 			c.Check(said)
 			n.diags = append(n.diags, said.Diags...)
@@ -227,7 +227,7 @@ func (d *run) lines(p *part, s *section, isName formula.Names) {
 			n.name = formula.LineName(src.Text) // keeps what uses it from a second error
 		}
 		if _, text := d.source(line.Source); text != "" {
-			n.diags.Warnf("unknown-source", n.at, "no reference is known as %q", text).WithHint("add it to a references block; it is printed as written")
+			n.diags.Warnf("unknown-source", n.sourceSpot(text), "no reference is known as %q", text).WithHint("%s", d.sourceHint(text, "add it to a references block; it is printed as written"))
 		}
 		n.failed = n.diags.HasErrors()
 		if n.name != "" {
@@ -257,6 +257,14 @@ func (n *node) spot(from, to int) diag.Range {
 	start := n.source.Column + len([]rune(t[:from]))
 	end := start + len([]rune(t[from:max(from, to)]))
 	return diag.Range{File: n.part.name, Line: n.source.Line, Column: start, EndLine: n.source.Line, EndColumn: max(end, start+1)}
+}
+
+// sourceSpot is the place of the source in the comment of a formula line.
+func (n *node) sourceSpot(text string) diag.Range {
+	if i := strings.LastIndex(n.source.Text, "["+text+"]"); i >= 0 {
+		return n.spot(i+1, i+1+len(text))
+	}
+	return n.at
 }
 
 // lineSpot is spot, or the whole override for a line that is overridden.

@@ -9,6 +9,7 @@ import (
 	"io/fs"
 	"path"
 	"slices"
+	"strings"
 
 	"quoin/calc/cite"
 	"quoin/calc/diag"
@@ -55,6 +56,7 @@ func Run(src Source, o Options) Result {
 	if len(d.parts) > 0 {
 		d.declare()
 		d.links()
+		d.brackets()
 		d.link()
 		d.execute()
 		d.sameChecks()
@@ -124,8 +126,12 @@ func (d *run) read() {
 		return
 	case !md.HasFront:
 		d.diags = append(d.diags, list...)
-		d.diags.Errorf("no-front-matter", diag.Range{File: main, Line: 1, Column: 1, EndLine: 1, EndColumn: 2}, "the file does not begin with front matter").
-			WithHint("begin it with three lines:  ---   quoin: 1   title: ...  and close with ---")
+		what := "the file does not begin with front matter"
+		if len(strings.TrimSpace(string(data))) == 0 {
+			what = "the file is empty"
+		}
+		d.diags.Errorf("no-front-matter", diag.Range{File: main, Line: 1, Column: 1, EndLine: 1, EndColumn: 2}, "%s", what).
+			WithHint("begin it with three lines:  ---   quoin: 1   title: ...  and close with ---; quoin new DIR makes a package to start from")
 		return
 	default:
 		d.diags = append(d.diags, front.decode(main, md)...)

@@ -43,6 +43,8 @@ func (d *run) execute() {
 			for n := range ready {
 				if !n.failed {
 					d.runNode(n)
+				} else if n.kind == blockNode && n.body != nil && !n.diags.HasErrors() {
+					n.diags = append(n.diags, field.ResolveLiterals(n.body)...)
 				}
 				mu.Lock()
 				done++

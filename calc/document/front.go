@@ -31,6 +31,9 @@ type frontMatter struct {
 	Parts     field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
 }
 
+// FrontMatter lists the fields of the front matter, for the reference.
+func FrontMatter() []field.Row { return field.Rows(&frontMatter{}, nil) }
+
 // signField is written as "RT 2031-03-02" or as a mapping.
 type signField struct {
 	Line     field.Field `name:"sign" is:"text" short:"yes" doc:"initials, then the date as YYYY-MM-DD"`
@@ -87,7 +90,7 @@ func (s signField) sign(diags *diag.List) exhibit.Sign {
 		return exhibit.Sign{Initials: s.Initials.Text(), Date: date(s.Date, diags)}
 	}
 	if t := s.Line.Text(); t != "" && (!signature.MatchString(t) || exhibit.Nobody(t)) {
-		diags.Errorf("sign", s.Line.At, "%q is no initials and date", s.Line.Text()).WithHint("write the initials of one person, then the date: MK 2031-03-02; leave it blank until it is done")
+		diags.Errorf("signature", s.Line.At, "%q is no initials and date", s.Line.Text()).WithHint("write the initials of one person, then the date: MK 2031-03-02; leave it blank until it is done")
 		return exhibit.Sign{}
 	}
 	words := strings.FieldsFunc(s.Line.Text(), func(r rune) bool { return r == ' ' || r == ',' })

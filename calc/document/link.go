@@ -8,6 +8,7 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document/block"
 	"quoin/calc/document/field"
+	"quoin/calc/quantity"
 )
 
 // link resolves every dependency to its node, and finds cycles.
@@ -37,6 +38,8 @@ func (d *run) resolve(n *node, dep field.Dep) *node {
 			e.WithHint("did you mean %s?", near)
 		} else if dep.Block != nil {
 			e.WithHint("%s", d.blocksMaking(dep.Block))
+		} else if quantity.IsSymbol(first) {
+			e.WithHint("%s is a unit: it stands behind its number, and a product of units is written without blanks, as kN*m", first)
 		} else {
 			e.WithHint("set it in a formula line, or name a block and its value: NAME.value")
 		}

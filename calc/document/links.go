@@ -78,7 +78,7 @@ func (d *run) checkLink(p *part, target string, at exhibit.Place) {
 		_, err = d.files.read(full, "attachment")
 	}
 	if err != nil {
-		d.diags.Errorf("link", d.linkRange(p, target, at), "%s", err).WithHint("a link leads to a file of the package, a heading (#words-of-it), a block (#NAME) or an address on the net")
+		d.diags.Errorf("unreadable", d.linkRange(p, target, at), "%s", err).WithHint("a link leads to a file of the package, a heading (#words-of-it), a block (#NAME) or an address on the net")
 	}
 }
 

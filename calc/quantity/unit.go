@@ -72,10 +72,14 @@ func IsSymbol(word string) bool { _, ok := symbols[word]; return ok }
 // UnitError says what is wrong with a written unit. Offset counts bytes.
 type UnitError struct {
 	Text, Word, Hint string
+	Power            string // the power at fault, if it is one: "^99"
 	Offset           int
 }
 
 func (e *UnitError) Error() string {
+	if e.Power != "" {
+		return fmt.Sprintf("%q is no power that a unit can have", e.Power)
+	}
 	if e.Word == "" {
 		return fmt.Sprintf("%q is not a unit", e.Text)
 	}
@@ -124,17 +128,20 @@ func ParseUnit(text string) (Unit, error) {
 			}
 			p, err := strconv.ParseFloat(s[j+1:k], 64)
 			if err != nil {
-				fail.Hint = "after ^ stands a small number"
+				fail.Hint, fail.Power = powerHint, s[j:max(k, j+1)]
 				return Unit{}, fail
 			}
 			power, j = p, k
+			fail.Power = s[i+len(word) : k]
 		} else if p, n := superscript(s[j:]); n > 0 {
 			power, j = p, j+n
+			fail.Power = s[j-n : j]
 		}
 		if math.Abs(power) > 12 {
-			fail.Hint = "after ^ stands a small number"
+			fail.Hint = powerHint
 			return Unit{}, fail
 		}
+		fail.Power = ""
 		if over {
 			out.Scale /= math.Pow(u.Scale, power)
 			out.Dim = out.Dim.Over(u.Dim.Power(power))
@@ -163,6 +170,8 @@ func ParseUnit(text string) (Unit, error) {
 	}
 	return Unit{}, &UnitError{Text: s, Offset: lead}
 }
+
+const powerHint = "after ^ stands a number from -12 to 12, such as m^2 or s^-1"
 
 // hint says what to write instead of a word that is no unit, or "".
 func hint(word string) string {

@@ -51,9 +51,9 @@ func warnings(rec *motion.Record, periods []float64) (out []motion.Warning) {
 	}
 	if r := shortest / rec.Step; longest == 0 {
 	} else if r < 2 {
-		warn("period-unresolved", "the shortest period, %.4g s, is %.3g steps of the record: it cannot hold such motion (2 steps at least)", shortest, r)
+		warn("period-unresolved", "the shortest period, %.4g s, is %.3g times the step of the record, which cannot hold such motion: 2 times at least", shortest, r)
 	} else if r < 10 {
-		warn("period-coarse", "the shortest period, %.4g s, is %.3g steps of the record; below 10 steps the straight line between samples loses several per cent of band-limited motion", shortest, r)
+		warn("period-coarse", "the shortest period, %.4g s, is %.3g times the step of the record; below 10 times the straight line between samples loses several per cent of band-limited motion", shortest, r)
 	}
 	if d := rec.Duration(); longest > d {
 		warn("record-short", "the longest period, %.4g s, exceeds the duration of the record, %.4g s", longest, d)

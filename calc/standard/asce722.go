@@ -124,7 +124,7 @@ func warn722(in Given, multi bool) []Warning {
 		all = append(all, Warning{"long-period", fmt.Sprintf("T_L = %s s lies below 10 s: beyond 10 s the ordinates fall with (10 s/T)² from the last one, without the step down that 10 T_L/T² would make there", shown(tl)), of722("11.4.5.1")})
 	}
 	if in.Texts["site"] == "F" {
-		all = append(all, Warning{"site-class-F", "site class F needs a site-specific ground motion procedure", of722("11.4.7")})
+		all = append(all, Warning{"site-class-f", "site class F needs a site-specific ground motion procedure", of722("11.4.7")})
 	}
 	return all
 }

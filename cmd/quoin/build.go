@@ -23,8 +23,10 @@ func (a *app) build(file string) int {
 		dir = src.folder()
 	}
 	// Before the work, not after it.
-	if err := errors.Join(ledger.Repair(dir), ledger.Replaceable(dir)); err != nil {
-		return a.fail(file, err)
+	for _, ready := range []func(string) error{ledger.Repair, ledger.Replaceable} {
+		if err := ready(dir); err != nil {
+			return a.fail(file, err)
+		}
 	}
 	bar := a.progress()
 	defer bar.done()
@@ -46,15 +48,7 @@ func (a *app) build(file string) int {
 		err = ledger.Write(dir, files)
 	}
 	bar.done()
-	var faults *render.Faults
-	if errors.As(err, &faults) {
-		res.Package, res.Diagnostics = nil, append(res.Diagnostics, faults.List...)
-		return a.report(src, res, "", false)
-	}
-	if err != nil {
-		return a.fail(file, err)
-	}
-	return a.report(src, res, dir, unchanged)
+	return a.outcome(src, res, err, dir, unchanged)
 }
 
 // check runs FILE, draws nothing and writes nothing.
@@ -66,11 +60,24 @@ func (a *app) check(file string) int {
 	bar := a.progress()
 	defer bar.done()
 	res, err := a.compute(src, bar)
-	bar.done()
-	if err != nil {
-		return a.fail(file, err)
+	if err == nil && res.Package != nil {
+		err = render.Formulas(res.Package, res.Files)
 	}
-	return a.report(src, res, "", false)
+	bar.done()
+	return a.outcome(src, res, err, "", false)
+}
+
+// outcome reports a run, what the typesetter refuses among its messages.
+func (a *app) outcome(src source, res document.Result, err error, dir string, unchanged bool) int {
+	var faults *render.Faults
+	switch {
+	case errors.As(err, &faults):
+		res.Package, res.Diagnostics = nil, append(res.Diagnostics, faults.List...)
+		dir = ""
+	case err != nil:
+		return a.fail(src.given, err)
+	}
+	return a.report(src, res, dir, unchanged)
 }
 
 // compute runs the document with what is known of where it came from.

@@ -21,6 +21,7 @@ type app struct {
 type flags struct {
 	out, root    string
 	set          []string
+	units        string
 	strict, json bool
 	noCache      bool
 	overrides    []exhibit.Override // from set
@@ -47,6 +48,11 @@ func (a *app) commands() *cobra.Command {
 		c.Flags().BoolVar(&a.flags.json, "json", false, flagJSON)
 		root.AddCommand(c)
 	}
+	blocks := &cobra.Command{Use: blocksUse, Short: blocksShort, Long: blocksLong, Example: blocksExample, Args: cobra.ArbitraryArgs, RunE: a.blocks}
+	blocks.Flags().BoolVar(&a.flags.json, "json", false, flagAsData)
+	start := &cobra.Command{Use: newUse, Short: newShort, Long: newLong, Example: newExample, Args: cobra.ArbitraryArgs, RunE: a.new}
+	start.Flags().StringVar(&a.flags.units, "units", "SI", flagUnits)
+	root.AddCommand(blocks, start)
 	return root
 }
 

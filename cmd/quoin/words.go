@@ -48,11 +48,30 @@ Exit codes: 0 no errors, 1 errors, 2 wrong usage, 3 no errors, but with --strict
 check is not met.`
 	checkExample = `  quoin check package.md`
 
+	blocksUse   = "blocks [KIND...]"
+	blocksShort = "show the block kinds, their fields and values, and the rest of the language"
+	blocksLong  = `Without an argument, list the block kinds and the other parts of the language. With
+one, show it in full: its fields with what they take, the values that others use,
+its functions. The text is made from the program itself.`
+	blocksExample = `  quoin blocks
+  quoin blocks record
+  quoin blocks formula units`
+
+	newUse   = "new DIR"
+	newShort = "make a package to start from"
+	newLong  = `Make the folder DIR with a small package of an invented building: a document, a file
+of storeys, and a .gitignore for what is built. It builds as it stands; replace it
+piece by piece. A folder that holds anything is left alone.`
+	newExample = `  quoin new tower
+  quoin new tower --units US`
+
 	flagOut    = "write the package to the folder `DIR`"
 	flagRoot   = "read nothing outside `DIR`"
 	flagSet    = "replace a value of the document, as in `name=value`; may be repeated"
 	flagStrict = "exit with 3 when a check is not met"
 	flagCache  = "compute and draw everything anew, and keep nothing"
+	flagUnits  = "the units of the new package, `SI` or US"
+	flagAsData = "write the reference as JSON"
 	flagJSON   = "write diagnostics and checks to stdout as JSON, one object for each FILE"
 
 	progressRun  = "computing"
@@ -66,9 +85,18 @@ func usageError(err error) string {
 }
 
 var (
+	errNoDir   = fmt.Errorf("name a folder to make, as in: quoin new tower")
+	errUnits   = fmt.Errorf("--units is SI or US")
 	errNoFile  = fmt.Errorf("name a FILE, as in: quoin build package.md")
 	errOneFile = fmt.Errorf("-o takes one FILE at a time")
 )
+
+func errTopic(given, near string) error {
+	if near != "" {
+		return fmt.Errorf("there is no block kind %q; did you mean %s?", given, near)
+	}
+	return fmt.Errorf("there is no block kind %q; quoin blocks lists them", given)
+}
 
 func errSet(given string) error {
 	return fmt.Errorf("--set %q is not of the form name=value", given)
@@ -84,6 +112,23 @@ const (
 	isFolder  = "this is a folder; name the markdown file in it"
 	notInRoot = "this file lies outside the root"
 )
+
+const (
+	notEmpty = "this folder holds something already; name a new or an empty one"
+	isFile   = "this is a file; name a folder"
+)
+
+// started says what to do with a new package.
+func started(dir string) string {
+	file := dir + "/package.md"
+	return fmt.Sprintf(`%[1]s: written, an invented building to start from
+next:
+  quoin check %[1]s
+  quoin build %[1]s   and open %[2]s/package.package/index.html
+  quoin blocks   shows all that a document can hold
+put your own data in the place of the invented: the front matter first, then storeys.csv
+`, file, dir)
+}
 
 // summary is what a run comes to: where the package is, and how the checks came
 // out, the worst first.

@@ -120,6 +120,9 @@ func resolve(dir string) (string, error) {
 		return filepath.EvalSymlinks(dir)
 	}
 	parent, err := filepath.EvalSymlinks(filepath.Dir(dir))
+	if errors.Is(err, fs.ErrNotExist) {
+		return "", fmt.Errorf("there is no folder %s to hold the package; make it first", filepath.Dir(dir))
+	}
 	if err != nil {
 		return "", err
 	}

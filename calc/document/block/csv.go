@@ -47,7 +47,7 @@ func (r *Run) readSheet(f field.Field, names, units field.Field) *sheet {
 	}
 	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf"))
 	if !utf8.Valid(data) {
-		r.Fail(f, "encoding", "%s is not UTF-8 text", full)
+		r.Fail(f, "invalid-utf8", "%s is not UTF-8 text", full)
 		return nil
 	}
 	s := &sheet{path: full}

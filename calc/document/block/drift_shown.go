@@ -41,11 +41,11 @@ func (b *drift) results(r *Run, a analysis, d *lateral.Drift) {
 	for _, c := range d.Checks {
 		r.Crosscheck(c.Name+":", c.Residual, c.Limit)
 	}
-	b.warn(r, a, d, clauses)
+	b.doubts(r, a, d, clauses)
 }
 
-// warn tells what the numbers do not hold.
-func (b *drift) warn(r *Run, a analysis, d *lateral.Drift, clauses lateral.DriftClauses) {
+// doubts tells what the numbers do not hold.
+func (b *drift) doubts(r *Run, a analysis, d *lateral.Drift, clauses lateral.DriftClauses) {
 	r.Caution("drift")
 	for _, w := range d.Warnings {
 		at := field.Field{At: r.Place}

@@ -228,7 +228,7 @@ func (r *Run) matrixFile(f, unitField field.Field, unit *quantity.Unit, n int, m
 		r.Fail(f, "model-limit", "%s is larger than the %d MiB that a matrix may take", full, largestMatrix>>20)
 		return nil
 	case !utf8.Valid(data):
-		r.Fail(f, "encoding", "%s is not UTF-8 text", full)
+		r.Fail(f, "invalid-utf8", "%s is not UTF-8 text", full)
 		return nil
 	}
 	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf"))

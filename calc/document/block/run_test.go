@@ -19,6 +19,11 @@ func TestCrosscheck(t *testing.T) {
 		if r.Diags.HasErrors() {
 			failed = 1
 		}
+		for _, d := range r.Diags {
+			if d.Code != "cross-check" {
+				t.Errorf("residual %v: the code %s", c.residual, d.Code)
+			}
+		}
 		if len(r.Warnings) != c.warnings || failed != c.errors || len(r.Results) != 1 {
 			t.Errorf("residual %v: warnings %v, diagnostics %v, results %v", c.residual, r.Warnings, r.Diags, r.Results)
 		}

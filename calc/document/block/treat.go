@@ -14,10 +14,10 @@ import (
 
 // treatStep is one item of the field treat of a record: one of its groups is given.
 type treatStep struct {
-	Baseline baselineFields `name:"baseline"`
-	Taper    taperFields    `name:"taper"`
-	Bandpass bandpassFields `name:"bandpass"`
-	Resample resampleFields `name:"resample"`
+	Baseline baselineFields `name:"baseline" doc:"take a polynomial off: a baseline correction"`
+	Taper    taperFields    `name:"taper" doc:"bring the ends to zero by cosine tapers"`
+	Bandpass bandpassFields `name:"bandpass" doc:"a zero-phase Butterworth filter: band-pass, or high-pass or low-pass with one corner"`
+	Resample resampleFields `name:"resample" doc:"another time between samples, band-limited"`
 }
 
 type baselineFields struct {

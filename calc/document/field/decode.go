@@ -71,7 +71,10 @@ func (d *decoder) group(n Node, v reflect.Value) {
 				return
 			}
 		}
-		d.diags.Errorf("shape", n.At, "%s is a mapping: lines of  field: value", d.what)
+		e := d.diags.Errorf("shape", n.At, "%s is a mapping: lines of  field: value", d.what)
+		if name, value, ok := strings.Cut(n.Text, "="); ok {
+			e.WithHint("a field is written with a colon: %s: %s", strings.TrimSpace(name), strings.TrimSpace(value))
+		}
 		return
 	}
 	what := d.what
@@ -114,6 +117,8 @@ func (d *decoder) unknown(name string, at diag.Range, fields []string) {
 	hint := "its fields are " + strings.Join(fields, ", ")
 	if near := diag.Nearest(name, fields); near != "" {
 		hint = "did you mean " + near + "?"
+	} else if name != "" && name[0] >= '0' && name[0] <= '9' {
+		hint = "a comma parts the fields; decimals have a point"
 	}
 	d.diags.Errorf("unknown-field", at, "%s has no field %s", d.what, name).WithHint("%s", hint)
 }
@@ -234,7 +239,7 @@ func (d *decoder) field(n Node, s Spec, f *Field) {
 	case s.Is == "block":
 		for _, it := range f.List {
 			if !formula.ValidName(formula.Normal(it.Text)) {
-				d.diags.Errorf("block-name", it.At, "%s takes the name of a block", s.Name)
+				d.diags.Errorf("name", it.At, "%s takes the name of a block", s.Name)
 			}
 		}
 	}

@@ -183,7 +183,9 @@ func Deps(fields any) []Dep {
 		for _, it := range f.List {
 			switch s.Is {
 			case "block":
-				out = append(out, Dep{Path: formula.Normal(it.Text), Block: s.Of, At: it.At})
+				if name := formula.Normal(it.Text); formula.ValidName(name) {
+					out = append(out, Dep{Path: name, Block: s.Of, At: it.At})
+				}
 			case "series":
 				out = append(out, Dep{Path: it.Text, Series: true, At: it.At})
 			}
@@ -298,19 +300,19 @@ func bounds(f *Field, s Spec, diags *diag.List) {
 			switch m {
 			case "positive":
 				if !(x > 0) {
-					wrong = "greater than zero"
+					wrong = bound[m]
 				}
 			case "not-negative":
 				if !(x >= 0) {
-					wrong = "zero or more"
+					wrong = bound[m]
 				}
 			case "fraction":
 				if !(x >= 0 && x <= 1) {
-					wrong = "between 0 and 1 (0 % and 100 %)"
+					wrong = bound[m]
 				}
 			case "whole":
 				if x != math.Trunc(x) || x < 1 || x > 1e6 {
-					wrong = "a whole number from 1 on"
+					wrong = bound[m]
 				}
 			}
 			if wrong != "" {
@@ -322,7 +324,10 @@ func bounds(f *Field, s Spec, diags *diag.List) {
 				if u := f.Value.Unit.Pretty(); u != "" {
 					shown += " " + u
 				}
-				diags.Errorf("bounds", at, "%s must be %s, this is %s", s.Name, wrong, shown)
+				e := diags.Errorf("bounds", at, "%s must be %s, this is %s", s.Name, wrong, shown)
+				if m == "fraction" && x > 1 && f.Value.Unit.Text == "" {
+					e.WithHint("in per cent it is written with its sign: %s %%", shown)
+				}
 				return
 			}
 		}

@@ -65,7 +65,7 @@ func Parse(file string, lines []Line, at diag.Range) (Node, diag.List) {
 		return Node{At: at, IsMap: true}, p.diags
 	}
 	if strings.Count(text.String(), "[")+strings.Count(text.String(), "{") > 20000 || deep(text.String()) {
-		p.diags.Errorf("yaml-depth", at, "brackets are nested too deeply")
+		p.diags.Errorf("too-deep", at, "brackets are nested too deeply")
 		return Node{At: at, IsMap: true}, p.diags
 	}
 	f, err := p.parse(text.String())
@@ -73,7 +73,13 @@ func Parse(file string, lines []Line, at diag.Range) (Node, diag.List) {
 		var se *yaml.SyntaxError
 		if errors.As(err, &se) && se.Token != nil {
 			e := p.diags.Errorf("yaml", p.rangeOf(se.Token), "%s", tidy(se.Message))
-			if strings.Contains(text.String(), "[") {
+			line := ""
+			if n := se.Token.Position.Line; n >= 1 && n <= len(lines) {
+				line = lines[n-1].Text
+			}
+			if name, value, ok := strings.Cut(line, "="); ok && !strings.Contains(line, ":") {
+				e.WithHint("a field is written with a colon: %s: %s", strings.TrimSpace(name), strings.TrimSpace(value))
+			} else if strings.Contains(text.String(), "[") {
 				e.WithHint("an expression that holds brackets or commas is quoted in a list, or the whole list is: \"[0.2 * m.T[1], 2 s]\"")
 			}
 		} else {
@@ -123,7 +129,25 @@ func (p *reader) parse(text string) (f *ast.File, err error) {
 // tidy drops the library's own excerpt and makes one line of a message.
 func tidy(s string) string {
 	s, _, _ = strings.Cut(s, "\n")
-	return strings.TrimSpace(s)
+	s = strings.TrimSpace(s)
+	for _, m := range []struct{ theirs, ours string }{
+		{"sequence end token ']' not found", "this list has no closing ]"},
+		{"could not find flow map content", "this { } mapping cannot be read"},
+		{"',' or ']' must be specified", "a , or ] is missing in this list"},
+		{"',' or '}' must be specified", "a , or } is missing in this mapping"},
+		{"could not find flow mapping end token '}'", "this mapping has no closing }"},
+		{"non-map value is specified", "this line is no  field: value"},
+		{"unexpected key name", "this line is no  field: value"},
+		{"mapping value is not allowed in this context", "this line does not fit its neighbours: look at the indentation, or for a second colon in the line"},
+		{"value is not allowed in this context", "this does not belong to a line of  field: value"},
+		{"could not find end character of double-quoted text", "this text has no closing quote"},
+		{"could not find end character of single-quoted text", "this text has no closing quote"},
+	} {
+		if strings.HasPrefix(s, m.theirs) {
+			return m.ours
+		}
+	}
+	return s
 }
 
 // rangeOf is the place of a token in the file.
@@ -168,7 +192,7 @@ func (p *reader) node(n ast.Node, depth int) Node {
 		at = p.rangeOf(n.GetToken())
 	}
 	if depth > deepest {
-		p.diags.Errorf("yaml-depth", at, "nested too deeply")
+		p.diags.Errorf("too-deep", at, "nested too deeply")
 		return Node{At: at}
 	}
 	switch n := n.(type) {
@@ -225,7 +249,7 @@ func (p *reader) mapping(values []*ast.MappingValueNode, depth int) Node {
 			out.At = at
 		}
 		if seen[key.Value] {
-			p.diags.Errorf("duplicate-field", at, "%s is given twice", key.Value)
+			p.diags.Errorf("field-twice", at, "%s is given twice", key.Value).WithHint("leave one of the two lines out")
 			continue
 		}
 		seen[key.Value] = true

@@ -21,13 +21,6 @@ type Scope interface {
 	Call(path string, args []quantity.Value) (v quantity.Value, id string, err error)
 }
 
-// ErrFailed is for a Scope to return, wrapped or not, where a value is missing
-// because of a fault reported elsewhere. The finding then has the code CodeFailed.
-var ErrFailed = errors.New("the value could not be computed")
-
-// CodeFailed is the code of an finding that follows from another.
-const CodeFailed = "depends-on-failed"
-
 // Evaluate computes a tree that is no comparison. It fills Value, ID and Taken
 // of every node reached; the branch of an if that is not taken is not reached.
 // It stops at the first fault.
@@ -188,15 +181,12 @@ func (e *evaluator) literal(n *expr.Node) (quantity.Value, bool) {
 // given takes over what the scope answers.
 func (e *evaluator) given(n *expr.Node, v quantity.Value, id string, err error) (quantity.Value, bool) {
 	if err != nil {
-		code, hint := "value", ""
-		if errors.Is(err, ErrFailed) {
-			code = CodeFailed
-		}
+		hint := ""
 		var h interface{ Hint() string }
 		if errors.As(err, &h) {
 			hint = h.Hint()
 		}
-		return e.failHint(code, n, hint, "%v", err)
+		return e.failHint("no-value", n, hint, "%v", err)
 	}
 	n.ID = id
 	return v, true

@@ -59,9 +59,6 @@ var values = map[string]quantity.Value{
 }
 
 func (world) Value(path string) (quantity.Value, string, error) {
-	if path == "broken" {
-		return quantity.Value{}, "", fmt.Errorf("broken: %w", ErrFailed)
-	}
 	v, ok := values[path]
 	if !ok {
 		return v, "", hinted{path + " is not set", "set it in a formula line"}

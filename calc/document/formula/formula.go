@@ -78,9 +78,26 @@ func ParseLine(text string, names Names) (Line, []Finding) {
 			line.AsTo = p.pos
 			p.next()
 		}
+		stop := p.tok
 		p.end()
+		line.Tree = withRest(line.Tree, body, stop, names)
 	}
 	return line, p.done()
+}
+
+// withRest adds what stands behind a word that has no place in a line, "a and b",
+// so that all names of the line are looked up. Such a line does not run.
+func withRest(tree *expr.Node, body string, stop token, names Names) *expr.Node {
+	for tree != nil && (stop.kind == "and" || stop.kind == "or" || isComparison(expr.Op(stop.kind))) {
+		p := newParser(body, names)
+		p.seek(stop.to)
+		n := p.expression()
+		if n == nil || len(p.findings) > 0 {
+			break
+		}
+		tree, stop = &expr.Node{Op: expr.List, Args: []*expr.Node{tree, n}, From: tree.From, To: n.To}, p.tok
+	}
+	return tree
 }
 
 // ParseExpr reads the quantity or vector of a field.
@@ -126,6 +143,7 @@ func checkStart(body string) (from int, ok bool) {
 
 // name reads "name =" and leaves the parser at the first token behind it.
 func (p *parser) name(line *Line) bool {
+	before := len(p.findings)
 	p.next()
 	t := p.tok
 	line.NameFrom, line.NameTo = t.from, t.to
@@ -136,6 +154,7 @@ func (p *parser) name(line *Line) bool {
 		case p.broken:
 		case i > p.skipBlanks(0) && !strings.ContainsAny(p.text[i-1:i], "<>!=") && !strings.HasPrefix(p.text[i+1:], "="):
 			from := p.skipBlanks(0)
+			p.findings = p.findings[:before] // what stands here is no expression
 			p.fail("name", from, len(strings.TrimRight(p.text[:i], " \t")), "left of = stands one name", "a name is made of letters, digits and _, and starts with a letter")
 			p.seek(i + 1)
 			return true
@@ -151,6 +170,7 @@ func (p *parser) name(line *Line) bool {
 	case t.kind == "within", t.kind == "and", t.kind == "or", t.kind == "not", t.kind == asWord:
 		p.fail("reserved-name", t.from, t.to, string(t.kind)+" is a word of the language and cannot be set", "choose another name")
 	case t.kind != word:
+		p.findings = p.findings[:before]
 		p.fail("name", t.from, t.to, "left of = stands one name", "a name is made of letters, digits and _, and starts with a letter")
 	case strings.Contains(t.name, "."):
 		p.fail("name", t.from, t.to, "a formula line sets a name without a point", "values like "+t.name+" are set by blocks")
@@ -181,7 +201,7 @@ func (p *parser) comment(s string, at int) (source, description string) {
 			return strings.TrimSpace(s[1:i]), strings.TrimSpace(s[i+1:])
 		}
 	}
-	p.findings = append(p.findings, Finding{Warning: true, Code: "comment", From: at, To: at + 1, Summary: "the source in the comment has no closing ]", Hint: "write # [source] description"})
+	p.findings = append(p.findings, Finding{Warning: true, Code: "open-source", From: at, To: at + 1, Summary: "the source in the comment has no closing ]", Hint: "write # [source] description"})
 	return "", s
 }
 

@@ -12,7 +12,7 @@ import (
 // function is a function of the language. least and most count arguments (most
 // 0: any number); form shows a call.
 type function struct {
-	form        string
+	form, doc   string
 	least, most int
 	// pure is a real function of pure numbers, taken item by item; domain says
 	// in words where it is defined, and within tells whether x is.
@@ -23,6 +23,18 @@ type function struct {
 	apply func(e *evaluator, n *expr.Node, args []quantity.Value) (quantity.Value, bool)
 	// whole: the function looks at a vector as a whole.
 	whole bool
+}
+
+// Doc is a function as the reference shows it.
+type Doc struct{ Form, Text string }
+
+// Functions is every function of the language, by name.
+func Functions() []Doc {
+	out := make([]Doc, len(functionNames))
+	for i, name := range functionNames {
+		out[i] = Doc{functions[name].form, functions[name].doc}
+	}
+	return out
 }
 
 // takes is the number of arguments in words.
@@ -42,35 +54,46 @@ var functionNames []string
 
 func init() {
 	functions = map[string]function{
-		"abs":   {form: "abs(x)", least: 1, most: 1, apply: absolute},
-		"sqrt":  {form: "sqrt(x)", least: 1, most: 1, apply: root},
-		"exp":   {form: "exp(x)", least: 1, most: 1, pure: math.Exp},
-		"log":   {form: "log(x)", least: 1, most: 1, pure: math.Log, domain: "a positive number", within: positive},
-		"log10": {form: "log10(x)", least: 1, most: 1, pure: math.Log10, domain: "a positive number", within: positive},
-		"sin":   {form: "sin(x)", least: 1, most: 1, pure: math.Sin},
-		"cos":   {form: "cos(x)", least: 1, most: 1, pure: math.Cos},
-		"tan":   {form: "tan(x)", least: 1, most: 1, pure: math.Tan, domain: "an angle other than a quarter turn", within: func(x float64) bool { return math.Abs(math.Cos(x)) > 1e-15 }},
-		"asin":  {form: "asin(x)", least: 1, most: 1, pure: math.Asin, domain: "a number from -1 to 1", within: sine},
-		"acos":  {form: "acos(x)", least: 1, most: 1, pure: math.Acos, domain: "a number from -1 to 1", within: sine},
-		"atan":  {form: "atan(x)", least: 1, most: 1, pure: math.Atan},
-		"floor": {form: "floor(x)", least: 1, most: 1, pure: math.Floor},
-		"ceil":  {form: "ceil(x)", least: 1, most: 1, pure: math.Ceil},
-		"round": {form: "round(x)", least: 1, most: 1, pure: math.Round},
+		"abs":   {form: "abs(x)", doc: "the value without its sign", least: 1, most: 1, apply: absolute},
+		"sqrt":  {form: "sqrt(x)", doc: "the square root; the unit takes the root too", least: 1, most: 1, apply: root},
+		"exp":   {form: "exp(x)", doc: "e to the power x, of a pure number", least: 1, most: 1, pure: math.Exp},
+		"log":   {form: "log(x)", doc: "the natural logarithm of a positive pure number", least: 1, most: 1, pure: math.Log, domain: "a positive number", within: positive},
+		"log10": {form: "log10(x)", doc: "the logarithm to the base 10 of a positive pure number", least: 1, most: 1, pure: math.Log10, domain: "a positive number", within: positive},
+		"sin":   {form: "sin(x)", doc: "the sine of an angle", least: 1, most: 1, pure: math.Sin},
+		"cos":   {form: "cos(x)", doc: "the cosine of an angle", least: 1, most: 1, pure: math.Cos},
+		"tan":   {form: "tan(x)", doc: "the tangent of an angle", least: 1, most: 1, pure: math.Tan, domain: "an angle other than a quarter turn", within: func(x float64) bool { return math.Abs(math.Cos(x)) > 1e-15 }},
+		"asin":  {form: "asin(x)", doc: "the angle with this sine, in rad", least: 1, most: 1, pure: math.Asin, domain: "a number from -1 to 1", within: sine},
+		"acos":  {form: "acos(x)", doc: "the angle with this cosine, in rad", least: 1, most: 1, pure: math.Acos, domain: "a number from -1 to 1", within: sine},
+		"atan":  {form: "atan(x)", doc: "the angle with this tangent, in rad", least: 1, most: 1, pure: math.Atan},
+		"floor": {form: "floor(x)", doc: "the largest whole number up to x; x within 1e-12 of itself of a whole number counts as that one", least: 1, most: 1, pure: floor},
+		"ceil":  {form: "ceil(x)", doc: "the smallest whole number from x on, by the same rule", least: 1, most: 1, pure: ceil},
+		"round": {form: "round(x)", doc: "the nearest whole number; halves away from zero", least: 1, most: 1, pure: math.Round},
 
-		"sum":    {form: "sum(v)", least: 1, most: 1, apply: sum, whole: true},
-		"cumsum": {form: "cumsum(v)", least: 1, most: 1, apply: cumsum, whole: true},
-		"len":    {form: "len(v)", least: 1, most: 1, apply: length, whole: true},
-		"max":    {form: "max(v) or max(a, b)", least: 1, apply: extreme(func(a, b float64) bool { return a > b })},
-		"min":    {form: "min(v) or min(a, b)", least: 1, apply: extreme(func(a, b float64) bool { return a < b })},
-		"interp": {form: "interp(x, xs, ys)", least: 3, most: 3, apply: interpolate},
-		"num":    {form: "num(x, unit)", least: 1, most: 1, apply: count},
-		"if":     {form: "if(a < b, x, y)", least: 3, most: 3}, // evaluated lazily, see conditional
+		"sum":    {form: "sum(v)", doc: "the sum of the items of a vector", least: 1, most: 1, apply: sum, whole: true},
+		"cumsum": {form: "cumsum(v)", doc: "the running sum of a vector from its first item, a vector", least: 1, most: 1, apply: cumsum, whole: true},
+		"len":    {form: "len(v)", doc: "the number of items of a vector", least: 1, most: 1, apply: length, whole: true},
+		"max":    {form: "max(v) or max(a, b)", doc: "the largest item of a vector; with more arguments the largest of them, item by item", least: 1, apply: extreme(func(a, b float64) bool { return a > b })},
+		"min":    {form: "min(v) or min(a, b)", doc: "the smallest, by the same rule", least: 1, apply: extreme(func(a, b float64) bool { return a < b })},
+		"interp": {form: "interp(x, xs, ys)", doc: "the value at x on the straight lines through the points (xs, ys), never beyond their ends", least: 3, most: 3, apply: interpolate},
+		"num":    {form: "num(x, unit)", doc: "the pure number of x in a unit, for empirical formulas", least: 1, most: 1, apply: count},
+		"if":     {form: "if(a < b, x, y)", doc: "x where the condition holds, else y; conditions are joined by and, or, not", least: 3, most: 3}, // evaluated lazily, see conditional
 	}
 	for name := range functions {
 		functionNames = append(functionNames, name)
 	}
 	slices.Sort(functionNames)
 }
+
+// floor and ceil take what the arithmetic of doubles leaves beside a whole number
+// for that number, as checks do: floor(0.3 / 0.1) is 3.
+func floor(x float64) float64 {
+	if whole := math.Round(x); math.Abs(x-whole) <= min(rounding*math.Max(1, math.Abs(x)), 1e-6) {
+		return whole
+	}
+	return math.Floor(x)
+}
+
+func ceil(x float64) float64 { return -floor(-x) }
 
 func positive(x float64) bool { return x > 0 }
 func sine(x float64) bool     { return math.Abs(x) <= 1 }
@@ -161,7 +184,7 @@ func count(e *evaluator, n *expr.Node, args []quantity.Value) (quantity.Value, b
 	x := args[0]
 	u, err := quantity.ParseUnit(n.Unit)
 	if err != nil {
-		return e.fail("unit", n, "%v", err)
+		return e.fail("unknown-unit", n, "%v", err)
 	}
 	if !x.Dim.Is(u.Dim) {
 		return e.failHint("dimension", n.Args[0], "name a unit of the same dimension", "num cannot count %s in %s", x.Dim.Name(), or(u.Pretty(), "1"))

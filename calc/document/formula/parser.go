@@ -3,6 +3,7 @@ package formula
 import (
 	"cmp"
 	"fmt"
+	"regexp"
 	"slices"
 	"strings"
 
@@ -99,6 +100,9 @@ func (p *parser) end() {
 	}
 }
 
+// unitBehind is a number with its unit at the end of a text.
+var unitBehind = regexp.MustCompile(`[0-9.] ?([A-Za-z][A-Za-z*/^0-9]*)$`)
+
 // missingOperator reports two operands side by side.
 func (p *parser) missingOperator() *expr.Node {
 	before, _, _ := strings.Cut(p.text[p.last:], p.text[p.tok.from:p.tok.to])
@@ -109,7 +113,14 @@ func (p *parser) missingOperator() *expr.Node {
 	if p.tok.kind == word && len(before) > 1 && quantity.IsSymbol(p.tok.name) {
 		hint = "a unit stands one blank behind its number at most; products are written with *"
 	}
+	written := p.text[p.tok.from:p.tok.to]
 	switch {
+	case strings.HasPrefix(strings.TrimLeft(p.text[p.tok.to:], " "), ":"):
+		hint = "is a comma missing before the field " + written + "?"
+	case written == "if":
+		hint = "write if(a < b, x, y)"
+	case p.tok.kind == word && quantity.IsSymbol(written) && unitBehind.MatchString(p.text[:p.last]):
+		hint = "a unit has no blanks: " + unitBehind.FindStringSubmatch(p.text[:p.last])[1] + "*" + written
 	case p.tok.kind == number && strings.HasPrefix(p.text[p.tok.to:], "/"):
 		hint = "an inverse unit is written 2 s^-1"
 	case p.depth > 0:
@@ -597,6 +608,12 @@ func (p *parser) ifArguments() ([]*expr.Node, bool) {
 	return append([]*expr.Node{cond}, values...), ok
 }
 
+// elsewhere is what functions of other languages are called here.
+var elsewhere = map[string]string{
+	"ln": "log(x), the natural logarithm", "lg": "log10(x)", "pow": "a^b", "power": "a^b", "mean": "sum(v) / len(v)", "average": "sum(v) / len(v)", "avg": "sum(v) / len(v)",
+	"srss": "sqrt(sum(v^2))", "sumsq": "sum(v^2)", "arcsin": "asin(x)", "arccos": "acos(x)", "arctan": "atan(x)", "roundup": "ceil(x)", "rounddown": "floor(x)", "IF": "if(a < b, x, y)",
+}
+
 // arity tells an unknown function and a wrong number of arguments. Functions of
 // blocks are known to the blocks alone.
 func (p *parser) arity(n *expr.Node, name token) {
@@ -606,7 +623,9 @@ func (p *parser) arity(n *expr.Node, name token) {
 	f, ok := functions[n.Text]
 	if !ok {
 		hint := "products are written with *"
-		if near := diag.Nearest(n.Text, functionNames); near != "" {
+		if other := elsewhere[n.Text]; other != "" {
+			hint = "write " + other
+		} else if near := diag.Nearest(n.Text, functionNames); near != "" {
 			hint = "did you mean " + near + "?"
 		}
 		p.fail("unknown-function", name.from, name.to, fmt.Sprintf("%s is no function", n.Text), hint)

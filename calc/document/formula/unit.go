@@ -46,10 +46,10 @@ func (p *parser) powerAfterUnit(t *token) {
 	to := digits(p.text, p.skipBlanks(at+1))
 	exponent := strings.TrimLeft(p.text[at+1:to], " \t")
 	if exponent == "" {
-		p.fail("unit", t.from, at+1, "the power of a unit is a number without blanks", fmt.Sprintf("write (%s %s)^x for a power of the quantity", t.text, t.unitText))
+		p.fail("unit-power", t.from, at+1, "the power of a unit is a number without blanks", fmt.Sprintf("write (%s %s)^x for a power of the quantity", t.text, t.unitText))
 		return
 	}
-	p.fail("unit", t.from, to, "a power behind a unit and a blank can be read in two ways",
+	p.fail("unit-power", t.from, to, "a power behind a unit and a blank can be read in two ways",
 		fmt.Sprintf("write %s %s^%s for a unit, (%s %s)^%s for a power of the quantity", t.text, t.unitText, exponent, t.text, t.unitText, exponent))
 }
 
@@ -67,7 +67,7 @@ func (p *parser) unitHere(at int) (quantity.Unit, bool) {
 	}
 	end, words := p.unitRun(run)
 	if len(words) == 0 {
-		p.fail("unit", p.pos, min(p.pos+1, len(p.text)), "a unit is missing here", "write a unit, such as kN or m/s^2")
+		p.fail("missing-unit", p.pos, min(p.pos+1, len(p.text)), "a unit is missing here", "write a unit, such as kN or m/s^2")
 		p.broken = true
 		return quantity.Unit{}, false
 	}
@@ -181,7 +181,15 @@ func (p *parser) readUnit(from, end int, words [][2]int, number string) (quantit
 		if errors.As(err, &ue) {
 			hint = ue.Hint
 		}
-		p.fail("unknown-unit", from, end, err.Error(), hint)
+		if ue != nil && ue.Power != "" {
+			at := from + ue.Offset
+			if i := strings.Index(p.text[at:end], ue.Power); i >= 0 {
+				at += i
+			}
+			p.fail("unit-power", at, min(at+len(ue.Power), end), err.Error(), hint)
+		} else {
+			p.fail("unknown-unit", from, end, err.Error(), hint)
+		}
 		return quantity.Unit{}, false
 	}
 	return u, true

@@ -32,6 +32,9 @@ func (c *converter) document(body []byte, cite func(string) bool) {
 		c.list.Errorf("unused-footnote", c.wholeLine(at), "nothing refers to this footnote").
 			WithHint("refer to it in the text, or delete it")
 	}
+	for _, b := range n.brackets {
+		c.file.Brackets = append(c.file.Brackets, Bracket{b.text, c.span(b.at.Start, b.at.Stop)})
+	}
 	top := 7
 	for b := root.FirstChild(); b != nil; b = b.NextSibling() {
 		if h, ok := b.(*ast.Heading); ok {

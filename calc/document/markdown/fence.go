@@ -35,7 +35,7 @@ func (c *converter) fence(n *ast.FencedCodeBlock) []Piece {
 	}
 	place := c.span(infoAt, infoAt+len(info))
 	if len(words) < 2 {
-		c.list.Errorf("block-kind", place, "a calc fence needs a kind").WithHint("write ```calc KIND NAME")
+		c.list.Errorf("missing-kind", place, "a calc fence needs a kind").WithHint("write ```calc KIND NAME")
 		return nil
 	}
 	f := Fence{Info: info, Kind: words[1].text, Place: place, KindRange: c.span(infoAt+words[1].at, infoAt+words[1].end())}

@@ -58,6 +58,14 @@ type notes struct {
 	cite func(key string) bool
 	deep int   // offset of the first block that stood too deep; -1: none
 	lone []int // offsets of footnotes that nothing refers to
+	// brackets are texts in brackets that are no citations.
+	brackets []bracket
+}
+
+// bracket is a text in brackets and its place.
+type bracket struct {
+	text string
+	at   text.Segment
 }
 
 var notesKey = parser.NewContextKey()

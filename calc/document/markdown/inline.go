@@ -9,6 +9,7 @@ import (
 	extast "github.com/yuin/goldmark/extension/ast"
 	"github.com/yuin/goldmark/parser"
 	"github.com/yuin/goldmark/text"
+	"github.com/yuin/goldmark/util"
 )
 
 var (
@@ -195,6 +196,11 @@ func (citations) Parse(_ ast.Node, block text.Reader, pc parser.Context) ast.Nod
 	}
 	key := citeKey(inside, notesOf(pc).cite)
 	if key == "" {
+		if _, defined := pc.Reference(util.ToLinkReference([]byte(inside))); !defined {
+			_, end := block.Position()
+			n := notesOf(pc)
+			n.brackets = append(n.brackets, bracket{inside, text.NewSegment(open.Start, max(open.Start, end.Start))})
+		}
 		return nil
 	}
 	return &citeNode{key: key, text: inside}

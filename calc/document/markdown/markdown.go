@@ -113,6 +113,14 @@ type File struct {
 	Lives      []Live
 	Footnotes  []exhibit.Footnote
 	Images     []ImageRef
+	// Brackets are the texts in brackets that are neither links nor citations.
+	Brackets []Bracket
+}
+
+// Bracket is a text in brackets that stands in the prose as it is.
+type Bracket struct {
+	Text  string
+	Range diag.Range
 }
 
 // Parse reads a markdown file. name is its path as shown in messages; cite tells

@@ -163,7 +163,7 @@ func (c *converter) front() []byte {
 		return body
 	}
 	c.file.FrontFault = true
-	c.list.Errorf("front-matter-open", c.wholeLine(0), "the front matter has no closing ---").
+	c.list.Errorf("open-front-matter", c.wholeLine(0), "the front matter has no closing ---").
 		WithHint("write a line --- after the last line of the front matter")
 	return c.text
 }

@@ -219,9 +219,9 @@ func (c *content) record(t trace, ask Options) (*motion.Record, error) {
 		return nil, c.file.at(t.lineOf(0), "every sample of the channel is zero", "another channel, or a file that was never filled?")
 	}
 	if g := peak / quantity.Gravity; g > 3 {
-		warn("size", 0, "the largest acceleration is %.3g g: was another unit meant than %s (gal or counts read as g, g read twice)?", g, o.UnitInFile)
+		warn("unlikely-size", 0, "the largest acceleration is %.3g g: was another unit meant than %s (gal or counts read as g, g read twice)?", g, o.UnitInFile)
 	} else if g < 1e-4 {
-		warn("size", 0, "the largest acceleration is %.3g g: was another unit meant than %s (g read as m/s² or gal)?", g, o.UnitInFile)
+		warn("unlikely-size", 0, "the largest acceleration is %.3g g: was another unit meant than %s (g read as m/s² or gal)?", g, o.UnitInFile)
 	}
 	o.Channel, o.Component = t.name, t.component
 	r.Origin = o

@@ -100,7 +100,7 @@ func readAT2(f *file) (*content, error) {
 		if extra%count == 0 {
 			text += fmt.Sprintf("; the file may hold %d components one after another", extra/count+1)
 		}
-		c.origin.Warnings = append(c.origin.Warnings, motion.Warning{Code: "count", Line: countLine, Text: text})
+		c.origin.Warnings = append(c.origin.Warnings, motion.Warning{Code: "sample-count", Line: countLine, Text: text})
 		t.values, t.lines = t.values[:count], t.lines[:count]
 	}
 	c.traces = []trace{t}

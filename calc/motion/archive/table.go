@@ -330,7 +330,7 @@ func (t *table) fill() error {
 				if t.numeric[i] {
 					return t.bad(n, line, fields)
 				}
-				return t.f.at(n, fmt.Sprintf("column %d holds numbers in some rows and text in others", i+1), "")
+				return t.mixed(i)
 			}
 			if ok {
 				t.values[i] = append(t.values[i], x)
@@ -345,6 +345,36 @@ func (t *table) fill() error {
 		return t.f.at(short, fmt.Sprintf("fewer fields in the last line than %d in those before", t.width), "the file is cut off")
 	}
 	return nil
+}
+
+// mixed is the error about a column that holds numbers and text: at the first cell of
+// the rarer kind.
+func (t *table) mixed(i int) error {
+	var numbers, texts int
+	var number, text *Error
+	for n, line := range t.f.lines(t.first) {
+		fields := t.fields(line)
+		if len(fields) != t.width {
+			continue
+		}
+		offset := 0
+		for _, before := range fields[:i] {
+			offset += max(strings.Index(line[offset:], before), 0) + len(before)
+		}
+		offset += max(strings.Index(line[offset:], fields[i]), 0)
+		if _, _, ok := t.number(fields[i]); ok {
+			if numbers++; number == nil {
+				number = t.f.unreadable(n, line, offset, fields[i])
+				number.Summary, number.Hint = fmt.Sprintf("column %d holds numbers in some rows and text in others", i+1), ""
+			}
+		} else if texts++; text == nil {
+			text = t.f.unreadable(n, line, offset, fields[i])
+		}
+	}
+	if number != nil && numbers < texts {
+		return number
+	}
+	return text
 }
 
 // wraps tells whether the last row may be shorter: no names, no time.

@@ -1,0 +1,60 @@
+package main
+
+// What the reference says that stands in no list of the code.
+
+const (
+	refTitle = "The language of a package"
+	refHead  = "Every block kind with its fields and values, and the rest of the language. This page is made from the program (`quoin blocks`), and a test keeps it current. " +
+		"Messages are explained in [diagnostics.md](diagnostics.md)."
+	refKinds  = "block kinds, opened by ```calc KIND NAME"
+	refOthers = "and the rest of the language"
+	refMore   = "quoin blocks NAME shows one in full"
+
+	refFields    = "fields"
+	refValues    = "values, used as NAME.value"
+	refFunctions = "functions"
+	refLines     = "lines"
+	refOperators = "operators, the loosest first"
+	refBinding   = "-2^2 is -4; a unit stands behind its number and binds more tightly than all operators"
+	refSpectrum  = "which spectrum of the standard"
+
+	refEvery   = "fields that every block but formula takes"
+	refFront   = "the head of the document, between two lines ---"
+	refFormula = "formula lines and checks, each typeset with its numbers"
+	refProse   = "values in the text, each a pipeline between double braces"
+	refUnits   = "the units of the language and what one of each is; a weight is a force, a mass is a mass"
+)
+
+var (
+	headsFields = []string{"field", "takes", "meaning"}
+	headsValues = []string{"value", "is", "meaning"}
+	headsForms  = []string{"form", "meaning"}
+	headsUnits  = []string{"unit", "is"}
+
+	formulaLines = []row{
+		{Name: "V = C_s * W", Doc: "sets V; each name is set once, and may be used above"},
+		{Name: "V = C_s * W as kip", Doc: "the same, shown in kip"},
+		{Name: "V = C_s * W   # [ASCE/SEI 7-22 Eq. 12.8-1] base shear", Doc: "the same, with its source and a description that the registers print"},
+		{Name: "check a <= b   # description", Doc: "a check; also <, >= and >; of vectors, one row an item"},
+		{Name: "check a == b within 2 %", Doc: "a check of equality; the tolerance is of the right side, or absolute if it has a unit"},
+		{Name: "v = [300 kip, 280 kip]", Doc: "a vector, lowest level first; arithmetic goes item by item"},
+		{Name: "x = v[1]", Doc: "an item; they count from 1"},
+		{Name: "# a remark", Doc: "is printed as text"},
+	}
+	formulaOperators = []row{
+		{Name: "within", Doc: "the tolerance of a check of equality"},
+		{Name: "or, and, not", Doc: "join comparisons in the condition of an if, nowhere else"},
+		{Name: "<= < >= > ==", Doc: "comparisons, in checks and in the condition of an if; they make no chains"},
+		{Name: "+ -", Doc: "of quantities of one kind"},
+		{Name: "* /", Doc: "of any quantities"},
+		{Name: "-x", Doc: "the opposite"},
+		{Name: "^", Doc: "a power, from right to left; of a quantity with a unit by one pure number"},
+	}
+)
+
+const (
+	diagTitle = "Messages"
+	diagHead  = "Every message of the program ends with its code in parentheses; with `--json` it is the field `code`. Here each code has its cause, " +
+		"what to do, and an example as the terminal shows it: the place, the line with the part at fault marked, a hint where there is one. An error stops " +
+		"the build; a warning is printed with the block it is about, too. This page is made from the program, and a test keeps it current."
+)
