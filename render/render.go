@@ -26,7 +26,7 @@ type Cache interface {
 }
 
 // Package is every file of the folder of p, by slash path: the page, the
-// results, the tables, the inputs it was built from and the manifest. files is
+// results, the tables, the inputs it was built from, a README and the manifest. files is
 // every file that was read, by path relative to the root. The same package and
 // files give the same bytes, with a cache and without. What is wrong with the
 // formulas of the prose is a [*Faults].
@@ -47,6 +47,7 @@ func Package(p *exhibit.Package, files map[string][]byte, o Options) (map[string
 		return nil, err
 	}
 	maps.Copy(out, inputs)
+	out[ledger.ReadmeFile] = ledger.Readme(p, digest)
 	out[ledger.ManifestFile] = ledger.Manifest(out, digest, p.Provenance.Tool)
 	return out, nil
 }
