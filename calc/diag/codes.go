@@ -101,6 +101,7 @@ var Codes = []Code{
 	{"no-theta", "A drift block has no vertical loads, so that stability is not evaluated.", "Give the field P: the vertical load at and above each level, lowest first."},
 	{"no-value", "A block gives no such value with the fields it has, or its function has no value there.", "Read the reason in the message; give the field that the value comes from, or stay within the range."},
 	{"not-finite", "A number given is too large to compute with, or no number.", "Correct the number, or see whether its unit is right."},
+	{"not-for-issue", "The status says issued, and something is missing that a reviewer sends a package back for.", "Close what the message names, or go on with status: for check until it is closed."},
 	{"open-comment", "A comment has no closing -->, so that all that follows would vanish.", "Close it with -->."},
 	{"open-fence", "A fence is not closed.", "Close it with a line of the same marks."},
 	{"open-front-matter", "The front matter has no closing line ---.", "Write a line --- behind its last field."},

@@ -27,6 +27,7 @@ func (d *run) assemble() *exhibit.Package {
 	a.p.Inputs = d.files.inputs(d.src.Main)
 	a.references()
 	a.cautions()
+	a.release()
 	return a.p
 }
 

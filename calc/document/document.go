@@ -87,6 +87,7 @@ type run struct {
 	files   *files
 	diags   diag.List
 
+	front   frontMatter
 	meta    exhibit.Meta
 	system  quantity.System
 	parts   []*part  // the main file first
@@ -119,7 +120,7 @@ func (d *run) read() {
 	}
 	keys := map[string]bool{}
 	md, list := d.markdown(main, data, keys)
-	var front frontMatter
+	front := &d.front
 	switch {
 	case md == nil, md.FrontFault:
 		d.diags = append(d.diags, list...)

@@ -6,6 +6,7 @@ import (
 	"os"
 	"slices"
 
+	"quoin/calc/diag"
 	"quoin/calc/document"
 	"quoin/calc/exhibit"
 	"quoin/render"
@@ -101,6 +102,10 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 			read = append(read, path) // git takes slashes on every system
 		}
 		res.Package.Provenance.Dirty = dirty(src.root, read)
+		if res.Package.Provenance.Dirty && res.Package.Meta.Status == "issued" {
+			res.Diagnostics.Errorf("not-for-issue", diag.Range{File: src.main}, "%s", issuedDirty).WithHint("%s", issuedDirtyHint)
+			res.Package = nil
+		}
 	}
 	return res, nil
 }

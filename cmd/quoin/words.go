@@ -179,3 +179,9 @@ func shown(n exhibit.Number) string {
 	}
 	return n.Text()
 }
+
+// What keeps a package from being issued and only git knows.
+const (
+	issuedDirty     = "status is issued, but the sources differ from the commit"
+	issuedDirtyHint = "commit them first: what is issued must be found again"
+)
