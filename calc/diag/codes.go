@@ -112,6 +112,7 @@ var Codes = []Code{
 	{"period-coarse", "The shortest period has fewer than ten steps of the record, where straight lines between samples lose several per cent.", "Begin the periods higher, or take a record with a smaller step."},
 	{"period-unresolved", "The shortest period is less than two steps of the record, which cannot hold such motion.", "Begin the periods at ten steps of the record, or take a record with a smaller step."},
 	{"periods", "The fields of a periods block exclude each other or make no rising list of periods.", "Give values, or from, to and count with 0 < from < to."},
+	{"procedure", "The equivalent lateral force procedure is not permitted for the structure: its design category, height, period and irregularities.", "Analyse by modes (a combine block) and use the base shear to scale it alone; or state regular: yes where there is no irregularity."},
 	{"profile-at", "A profile does not say whether its values belong to levels, to storeys or to the feet of storeys.", "Add the field at: levels, storeys or feet."},
 	{"prose-value", "A value in double braces cannot be shown: its pipeline, its unit or its item does not fit.", "Write {{ .NAME | as \"unit\" | sig 3 }}; the hint says which part is at fault."},
 	{"ratio-damping", "The two series of a ratio hold for different damping.", "Compare series of one damping, or say in the caption why not."},

@@ -21,12 +21,21 @@ type ASCE struct {
 	System     string  // a row of Table 12.8-2, see Systems; or
 	Ct, X      float64 // the author's: T_a = Ct h_n^X s
 	HeightUnit string  // "m" or "ft": what h_n is measured in there
+	ByStoreys  bool    // T_a = 0.1 N s of the moment frames that System names; or, in place of System,
+	Walls      []Wall  // the shear walls at the base: T_a = C_q h_n/sqrt(C_w), with
+	BaseArea   float64 // the area of the structure at its base, m²
 	Hn         float64 // structural height, m; 0: the elevation of the highest level
 
 	T float64 // computed fundamental period, s; 0: none, T_a is used
 	// DriftPeriod is "capped" (the forces for drift are those for strength) or
 	// "computed" (12.8.6.2: they are found with T, without the limit C_u T_a).
 	DriftPeriod string
+
+	// Regular is what the author says of the irregularities of 12.3.2: "yes" (there
+	// are none), "listed" (only those that Table 12.6-1 lists), "no", "" (not stated).
+	Regular string
+	Rho     float64 // redundancy factor; 0: not stated. Forces are not multiplied by it
+	CapSDS  bool    // use the largest S_DS of 12.8.1.3 in C_s
 }
 
 // Static runs the procedure:
@@ -39,8 +48,8 @@ type ASCE struct {
 // the model. Torsion is not included.
 //
 // Errors are joined *standard.ParameterError, named by the symbols R, I_e,
-// system, C_t, x, h_n, h_n_in, T, drift_period, target and structure. It panics without
-// a model or a target.
+// system, C_t, x, h_n, h_n_in, period, walls, walls[1], base_area, T, drift_period, regular, rho,
+// S_DS_cap, target and structure. It panics without a model or a target.
 func (in ASCE) Static() (*Static, error) {
 	if in.Model == nil || in.Target == nil {
 		panic("lateral: a static procedure needs a model and a target")
@@ -61,6 +70,12 @@ func (in ASCE) Static() (*Static, error) {
 	if s.Exception == 3 && beyond(s.T, g.ts()) {
 		return nil, problem("target", "use a site-specific ground motion, or another exception", "exception 3 to 11.4.8 holds for T up to T_S = %.4g s; T is %.4g s", g.ts(), s.T)
 	}
+	if in.CapSDS {
+		if err := in.capped(s, &g); err != nil {
+			return nil, err
+		}
+	}
+	s.SDSUsed = g.short()
 	if s.Limbs, s.Cs, s.Sa, err = g.coefficient(s.T, in.R, in.Ie); err != nil {
 		return nil, err
 	}
@@ -70,6 +85,7 @@ func (in ASCE) Static() (*Static, error) {
 	if err := in.forDrift(s, g); err != nil {
 		return nil, err
 	}
+	in.permit(s)
 	s.warn(in.Target)
 	if err := s.settle(in.Model); err != nil {
 		return nil, err
@@ -99,6 +115,12 @@ func (in ASCE) valid() error {
 		}
 	default:
 		all = append(all, problem("drift_period", "write capped or computed", "%q is not a choice", in.DriftPeriod))
+	}
+	if in.Regular != "" && in.Regular != "yes" && in.Regular != "listed" && in.Regular != "no" {
+		all = append(all, problem("regular", "write yes, listed or no", "%q is not a choice", in.Regular))
+	}
+	if in.Rho != 0 && !(in.Rho >= 1 && in.Rho <= 1.3) {
+		all = append(all, problem("rho", "it is 1.0 or 1.3 (12.3.4)", "the redundancy factor is not below 1 nor above 1.3"))
 	}
 	if in.R > 0 && in.Ie > 0 && in.R < in.Ie {
 		all = append(all, problem("R", "R comes from Table 12.2-1, I_e from Table 1.5-2", "R = %v is below I_e = %v: forces would exceed the elastic ones", in.R, in.Ie))

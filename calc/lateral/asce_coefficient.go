@@ -13,6 +13,7 @@ import (
 // groundMotion is what 12.8.1.1 takes from a design spectrum; spectral values in g.
 type groundMotion struct {
 	sds, sd1, s1, tl float64
+	cap              float64 // S_DS of the plateau by 12.8.1.3; 0: sds
 	s1Known          bool
 	exception        int
 	clauses          Clauses
@@ -20,6 +21,14 @@ type groundMotion struct {
 }
 
 func (g groundMotion) ts() float64 { return g.sd1 / g.sds }
+
+// short is the S_DS of the plateau.
+func (g groundMotion) short() float64 {
+	if g.cap > 0 {
+		return g.cap
+	}
+	return g.sds
+}
 
 // ground reads a target and refuses what the procedure may not use.
 func ground(t *standard.Target) (groundMotion, error) {
@@ -151,7 +160,10 @@ func (g groundMotion) coefficient(T, r, ie float64) (limbs []Limb, cs, sa float6
 		plateauWhy = "the ordinate of the multi-period spectrum is used"
 		velocityWhy, displacedWhy = plateauWhy, plateauWhy
 	}
-	add("C_s_plateau", "upper limit at short periods", c.Plateau, g.sds/d, plateau, plateauWhy)
+	if g.cap > 0 {
+		plateauWhy += "; with the S_DS of 12.8.1.3"
+	}
+	add("C_s_plateau", "upper limit at short periods", c.Plateau, g.short()/d, plateau, plateauWhy)
 	add("C_s_max", "upper limit up to T_L", c.Velocity, velocity, short, velocityWhy)
 	add("C_s_max", "upper limit beyond T_L", c.Displaced, displaced, long, displacedWhy)
 

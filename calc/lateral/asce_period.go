@@ -90,15 +90,11 @@ func approximate(ct, x, hn float64, unit string) float64 {
 
 // period finds T_a, its upper limit, and the period used (12.8.2).
 func (in ASCE) period(s *Static) error {
-	if err := in.coefficients(s); err != nil {
+	if err := in.approximate(s); err != nil {
 		return err
 	}
-	s.Ta = approximate(s.Ct, s.X, s.Hn, s.HeightUnit)
 	s.Cu = upperLimit(s.SD1)
 	s.Cap = s.Cu * s.Ta
-	if !(s.Ta > 0) || math.IsInf(s.Cap, 0) {
-		return problem("C_t", "", "C_t = %v and x = %v give no period for h_n = %.6g %s", s.Ct, s.X, quantity.MustUnit(s.HeightUnit).From(s.Hn), s.HeightUnit)
-	}
 	s.Stated = in.T
 	switch {
 	case in.T == 0:
@@ -114,8 +110,8 @@ func (in ASCE) period(s *Static) error {
 	return nil
 }
 
-// coefficients settles C_t and x: of the table, or the author's.
-func (in ASCE) coefficients(s *Static) error {
+// approximate finds T_a by the rule that the author chose.
+func (in ASCE) approximate(s *Static) error {
 	s.HeightUnit = in.HeightUnit
 	if s.HeightUnit == "" {
 		s.HeightUnit = "m"
@@ -123,6 +119,24 @@ func (in ASCE) coefficients(s *Static) error {
 	if s.HeightUnit != "m" && s.HeightUnit != "ft" {
 		return problem("h_n_in", "write m or ft", "%q is not a choice", in.HeightUnit)
 	}
+	switch {
+	case len(in.Walls) > 0 || in.BaseArea != 0:
+		return in.walls(s)
+	case in.ByStoreys:
+		return in.storeys(s)
+	}
+	if err := in.coefficients(s); err != nil {
+		return err
+	}
+	s.PeriodRule, s.Ta = "C_t", approximate(s.Ct, s.X, s.Hn, s.HeightUnit)
+	if !(s.Ta > 0) || math.IsInf(s.Ta*cuTable[0].Cu, 0) {
+		return problem("C_t", "", "C_t = %v and x = %v give no period for h_n = %.6g %s", s.Ct, s.X, quantity.MustUnit(s.HeightUnit).From(s.Hn), s.HeightUnit)
+	}
+	return nil
+}
+
+// coefficients settles C_t and x: of the table, or the author's.
+func (in ASCE) coefficients(s *Static) error {
 	byHand := in.Ct != 0 || in.X != 0
 	switch {
 	case in.System != "" && byHand:
@@ -138,7 +152,7 @@ func (in ASCE) coefficients(s *Static) error {
 		}
 		return nil
 	case !byHand:
-		return problem("system", "one of: "+names(asceSystems), "is missing: give the system of Table 12.8-2, or C_t and x")
+		return problem("system", "one of: "+names(asceSystems), "is missing: give the system of Table 12.8-2, or C_t and x, or walls")
 	}
 	for _, n := range []struct {
 		symbol string

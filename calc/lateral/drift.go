@@ -49,6 +49,10 @@ type Drift struct {
 	Elastic    []float64 // m
 	Factor     float64   // C_d/I_e, or q_d
 	FirstOrder []float64 // Factor * Elastic, m
+	// Displacement of each level relative to the ground, m, times Factor, as
+	// DisplacementElastic is without it; second-order effects are in neither. Empty
+	// where the analysis has none.
+	Displacement, DisplacementElastic []float64
 
 	P, Shear    []float64 // N; P empty: not given
 	Theta       []float64 // stability coefficient; empty without P
@@ -124,6 +128,10 @@ func Drifts(in DriftInput) (*Drift, error) {
 		d.FirstOrder, d.SecondOrder = append(d.FirstOrder, first), append(d.SecondOrder, second)
 		d.Amplified, d.Ratio = append(d.Amplified, first*second), append(d.Ratio, first*second/in.Hs[i])
 		d.Limit = append(d.Limit, at(in.Limit, i)*in.Hs[i]/rule.rho(in))
+	}
+	for _, u := range in.Displacement {
+		d.DisplacementElastic = append(d.DisplacementElastic, math.Abs(u))
+		d.Displacement = append(d.Displacement, d.Factor*math.Abs(u))
 	}
 	d.warn(in, rule)
 	d.check(in, rule)

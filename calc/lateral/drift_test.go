@@ -83,6 +83,9 @@ func TestDriftProperties(t *testing.T) {
 		other.Cd, other.Ie, other.Qd = 2*in.Cd, 1.1*in.Ie, in.Qd/2
 		o := mustDrift(t, other)
 		for i, theta := range d.Theta {
+			if differ(d.Displacement[i], d.Factor*in.Displacement[i]) > 1e-12 || differ(d.DisplacementElastic[i], in.Displacement[i]) > 1e-12 {
+				t.Fatalf("displacement %g amplified to %g by %g", in.Displacement[i], d.Displacement[i], d.Factor)
+			}
 			same, want := o.Theta[i], theta
 			if in.Basis == "EN 1998-1:2004" {
 				want /= 2

@@ -33,13 +33,17 @@ type EN1998 struct {
 
 	T      float64 // fundamental period T_1, s; or, for T_1 = C_t H^0.75,
 	System string  // a kind of structure, see Systems; or
-	Ct     float64 // C_t, H in m
+	Ct     float64 // C_t, H in m; or, for T_1 = 2 sqrt(d),
+	Top    float64 // d, lateral elastic displacement of the top under the gravity loads applied horizontally, m; or
+	ByTop  bool    // d found here, with the seismic weights and the stiffness of the model
 	Hn     float64 // H, m; 0: the elevation of the highest level
 	Lambda float64 // correction factor; 0: by 4.3.3.2.2(1)
 
 	// Shape is the fundamental mode shape at the levels, lowest first; nil: linear
 	// over the height (4.3.3.2.3(3)).
 	Shape []float64
+
+	Regular string // what the author says of regularity in elevation: "yes", "no", "" (not stated)
 }
 
 // Static runs the method:
@@ -51,7 +55,8 @@ type EN1998 struct {
 // storeys, else 1. Torsion is not included.
 //
 // Errors are joined *standard.ParameterError, named by the symbols T, system,
-// C_t, h_n, lambda, modes, target and structure. It panics without a model or a target.
+// C_t, h_n, top_displacement, regular, lambda, modes, target and structure. It panics
+// without a model or a target.
 func (in EN1998) Static() (*Static, error) {
 	if in.Model == nil || in.Target == nil {
 		panic("lateral: a static procedure needs a model and a target")
@@ -72,6 +77,7 @@ func (in EN1998) Static() (*Static, error) {
 		return nil, problem("T", "use modal response spectrum analysis (4.3.3.3): a combine block",
 			"T_1 = %.4g s is beyond %.4g s, the lesser of 4 T_C and 2 s, up to which the method holds (4.3.3.2.1)", s.T, limit)
 	}
+	in.permit(s)
 	if s.Sa, err = in.Target.PSA(s.T); err != nil {
 		return nil, problem("target", "", "%s", err)
 	}
@@ -109,7 +115,7 @@ func enGround(t *standard.Target) (tc float64, err error) {
 func (in EN1998) valid() error {
 	var all []error
 	ways := 0
-	for _, given := range []bool{in.T != 0, in.System != "", in.Ct != 0} {
+	for _, given := range []bool{in.T != 0, in.System != "", in.Ct != 0, in.ByTop || in.Top != 0} {
 		if given {
 			ways++
 		}
@@ -119,15 +125,22 @@ func (in EN1998) valid() error {
 		if ways > 1 {
 			what = "is stated in more than one way"
 		}
-		all = append(all, problem("T", "give one of: T (T: m.T[1]); system, one of "+names(enSystems)+"; C_t", "the period T_1 %s", what))
+		all = append(all, problem("T", "give one of: T (T: m.T[1]); system, one of "+names(enSystems)+"; C_t; period: displacement", "the period T_1 %s", what))
 	}
 	for _, n := range []struct {
 		symbol string
 		value  float64
-	}{{"T", in.T}, {"C_t", in.Ct}} {
+	}{{"T", in.T}, {"C_t", in.Ct}, {"top_displacement", in.Top}} {
 		if !(n.value >= 0) || math.IsInf(n.value, 0) {
 			all = append(all, problem(n.symbol, "", "must be greater than zero"))
 		}
+	}
+	switch in.Regular {
+	case "", "yes":
+	case "no":
+		all = append(all, problem("regular", "use modal response spectrum analysis (4.3.3.3): a combine block", "the method holds for buildings that are regular in elevation (4.3.3.2.1(2)b, Table 4.1)"))
+	default:
+		all = append(all, problem("regular", "write yes or no: regularity in elevation by 4.2.3.3", "%q is not a choice of EN 1998-1", in.Regular))
 	}
 	if !(in.Lambda >= 0) || in.Lambda > 1 {
 		all = append(all, problem("lambda", "4.3.3.2.2(1) knows 0.85 and 1.0", "must be above 0, and 1 at most"))
@@ -140,6 +153,9 @@ func (in EN1998) period(s *Static) error {
 	if in.T != 0 {
 		s.Stated, s.T, s.TWhy = in.T, in.T, "the period stated"
 		return nil
+	}
+	if in.ByTop || in.Top != 0 {
+		return in.displacement(s)
 	}
 	s.Ct, s.X, s.HeightUnit = in.Ct, enExponent, "m"
 	at := "C_t"
@@ -154,8 +170,43 @@ func (in EN1998) period(s *Static) error {
 		return problem(at, "give T, a computed period: T: m.T[1]", "the approximate period holds for heights up to %d m; H is %.5g m", enHeight, s.Hn)
 	}
 	s.Ta = approximate(s.Ct, s.X, s.Hn, "m")
-	s.T, s.TWhy = s.Ta, "the approximate period"
+	s.PeriodRule, s.T, s.TWhy = "C_t", s.Ta, "the approximate period"
 	return nil
+}
+
+// displacement is T_1 = 2 sqrt(d) s (4.3.3.2.2(5)), d in m.
+func (in EN1998) displacement(s *Static) error {
+	s.PeriodRule, s.Top, s.TWhy = "displacement", in.Top, "by the displacement of the top as stated"
+	if in.Top == 0 {
+		u, _, err := respond(in.Model, s.W)
+		if err != nil {
+			return err
+		}
+		s.Top, s.TWhy = u[len(u)-1], "by the displacement of the top under the seismic weights applied horizontally"
+	}
+	if s.Ta = 2 * math.Sqrt(s.Top); !(s.Ta > 0) || math.IsInf(s.Ta, 0) {
+		return problem("structure", "", "the top does not move to the side of the weights: there is no period by its displacement")
+	}
+	s.T = s.Ta
+	return nil
+}
+
+// permit says what 4.3.3.2.1(2) asks and how it stands.
+func (in EN1998) permit(s *Static) {
+	state := func(limit float64) string { return "met: " + figures(s.T) + " s against " + figures(limit) + " s" }
+	add := func(text, state, clause string) {
+		s.Conditions = append(s.Conditions, standard.Condition{Text: text, State: state, Ref: EN(clause)})
+	}
+	add("T_1 of no more than 4 T_C", state(4*s.TC), "4.3.3.2.1(2)a")
+	add("T_1 of no more than 2 s", state(2), "4.3.3.2.1(2)a")
+	if s.PeriodRule == "C_t" {
+		add("T_1 by C_t: a height of no more than 40 m", "met: "+figures(s.Hn)+" m", "4.3.3.2.2(3)")
+	}
+	s.Permitted = "permitted"
+	if in.Regular == "" {
+		s.Permitted = "not shown"
+	}
+	add("regularity in elevation (4.2.3.3)", map[string]string{"": "not stated by the author", "yes": "stated by the author"}[in.Regular], "4.3.3.2.1(2)b")
 }
 
 // correction settles λ.

@@ -5,7 +5,10 @@
 // displacements are relative to the ground; everything is SI (m, kg, N).
 package lateral
 
-import "quoin/calc/cite"
+import (
+	"quoin/calc/cite"
+	"quoin/calc/standard"
+)
 
 // Static is the result of an equivalent lateral force procedure, as plain
 // encodable data.
@@ -30,9 +33,18 @@ type Static struct {
 	Ct, X        float64 // T_a = Ct h_n^X, h_n in HeightUnit; 0 where no such formula was used
 	HeightUnit   string  // "m" or "ft"
 
+	// How the approximate period was found: "C_t", "storeys", "walls" or
+	// "displacement"; empty where there is none.
+	PeriodRule string
+	Cq, Cw     float64 // of walls, h_n in HeightUnit
+	Walls      []Wall
+	BaseArea   float64 // m²
+	Top        float64 // displacement of the top under gravity loads applied horizontally, m (EN 1998-1); 0 elsewhere
+
 	Ta, Cu   float64 // approximate period, s, and the factor of its upper limit
 	Stated   float64 // period given, s; 0: none
 	Cap      float64 // C_u T_a, s; 0 where the standard has no such limit
+	SDSUsed  float64 // S_DS that the plateau of C_s is found from: SDS, or less by 12.8.1.3
 	T        float64 // period used for the forces, s
 	TWhy     string  // why this one
 	Limbs    []Limb  // every expression for C_s, in the order of the clause; the governing one is marked
@@ -48,6 +60,15 @@ type Static struct {
 	Moment   []float64 // overturning moment at the foot of each storey, N*m
 	Sums     Sums
 	Warnings []Warning
+
+	// Conditions are what the standard asks before the procedure, its approximate
+	// period and its reliefs may be used; Permitted what follows: "permitted", "not
+	// permitted" or "not shown".
+	Conditions []standard.Condition
+	Permitted  string
+	// Redundancy, overstrength and deflection amplification factors stated; 0: not
+	// stated. Nothing here is multiplied by them.
+	Rho, Omega0, Cd float64
 
 	// Diaphragm forces, N: as computed, their bounds, and what governs; empty
 	// where the standard has no such rule.

@@ -14,7 +14,7 @@ import (
 
 // publishedStatic are the published cases of the static procedures.
 func publishedStatic() []published.Case {
-	return slices.Concat(periodCases(), ladderCases(), masonryCases(), steelFrameCases(), chainCases(), europeanCases())
+	return slices.Concat(periodCases(), ruleCases(), ladderCases(), masonryCases(), steelFrameCases(), chainCases(), europeanCases())
 }
 
 var (

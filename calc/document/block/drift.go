@@ -20,6 +20,7 @@ var driftKind = Kind{
 		{"drift", "storey drift, amplified by C_d/I_e or q_d, and by 1/(1 - theta) where theta exceeds 0.10", "m"},
 		{"drift_first_order", "storey drift amplified by C_d/I_e or q_d alone", "m"},
 		{"drift_elastic", "elastic storey drift", "m"},
+		{"displacement", "displacement of each level relative to the ground, amplified by C_d/I_e or q_d; without second-order effects", "m"},
 		{"drift_ratio", "drift over storey height", ""},
 		{"drift_limit", "allowed storey drift", "m"},
 		{"nu", "factor on drifts before they are held to the limit of damage limitation (EN 1998-1)", ""},
@@ -36,7 +37,7 @@ type drift struct {
 	Direction field.Field `name:"direction" is:"choice" of:"x|y" default:"x" doc:"direction of the analysis; a planar model has x only"`
 	At        field.Field `name:"at" is:"choice" of:"centre|edge" default:"centre" doc:"where drifts are taken; a planar model has its centre only"`
 
-	Cd     field.Field `name:"C_d" is:"number" must:"positive" doc:"ASCE/SEI 7: deflection amplification factor"`
+	Cd     field.Field `name:"C_d" is:"number" must:"positive" doc:"ASCE/SEI 7: deflection amplification factor; that of the static block, where it states one"`
 	Ie     field.Field `name:"I_e" is:"number" must:"positive" doc:"ASCE/SEI 7: importance factor; that of the analysis, where it states one"`
 	Rho    field.Field `name:"rho" is:"number" must:"positive" doc:"ASCE/SEI 7: redundancy factor that divides the limit, for moment frames in design categories D to F; 1, if not given"`
 	System field.Field `name:"system" is:"choice" of:"tolerant finishes|masonry cantilever|masonry|other" doc:"ASCE/SEI 7: row of the table of allowed drifts; tolerant finishes: four storeys or fewer, no masonry, finishes designed for the drifts"`
@@ -82,6 +83,7 @@ type analysis struct {
 	lateral.DriftInput
 	name     string
 	ie, q    float64 // 0: not stated
+	cd       float64 // the same
 	divisor  float64 // of the elastic response
 	scaled   float64 // factor that forces were multiplied by and drifts were not
 	combined bool
@@ -92,7 +94,7 @@ func (b *drift) analysis(r *Run) analysis {
 	switch s := r.Product(b.From.Text()).(type) {
 	case *lateral.Static:
 		a.DriftInput = lateral.DriftOf(s)
-		a.ie, a.q = s.Ie, s.Q
+		a.ie, a.q, a.cd = s.Ie, s.Q, s.Cd
 		if a.divisor = s.Q; s.Ie > 0 {
 			a.divisor = s.R / s.Ie
 		}
@@ -202,10 +204,17 @@ func (b *drift) factors(r *Run, a *analysis) bool {
 		}
 		return true
 	}
-	if !b.Cd.Given {
-		return missing(b.Cd, "C_d", "the deflection amplification factor stands beside R in the table of systems")
-	}
 	a.Cd, a.Ie, a.Rho, a.Beta = b.Cd.SI(), b.Ie.SI(), 1, []float64{1}
+	switch {
+	case !b.Cd.Given && a.cd == 0:
+		return missing(b.Cd, "C_d", "the deflection amplification factor stands beside R in the table of systems")
+	case !b.Cd.Given:
+		a.Cd = a.cd
+		r.Used("C_d", "C_d", inUnits(a.cd, pure), "of "+a.name)
+	case a.cd != 0 && a.cd != a.Cd:
+		r.Fail(b.Cd, "drift-input", "C_d is %s in %s and %s here", short(a.cd), a.name, short(a.Cd)).WithHint("leave it out here: it is taken from there")
+		return false
+	}
 	switch {
 	case !b.Ie.Given && a.ie == 0:
 		return missing(b.Ie, "I_e", "the importance factor that the analysis was divided by R/I_e with")

@@ -18,6 +18,9 @@ func (b *drift) results(r *Run, a analysis, d *lateral.Drift) {
 	vector("drift", d.Amplified, u.small)
 	vector("drift_first_order", d.FirstOrder, u.small)
 	vector("drift_elastic", d.Elastic, u.small)
+	if len(d.Displacement) > 0 {
+		vector("displacement", d.Displacement, u.small)
+	}
 	vector("drift_ratio", d.Ratio, percent)
 	vector("drift_limit", d.Limit, u.small)
 	vector("second_order", d.SecondOrder, pure)
@@ -69,7 +72,7 @@ func (b *drift) doubts(r *Run, a analysis, d *lateral.Drift, clauses lateral.Dri
 			r.Refs = append(r.Refs, clauses.Combined)
 		}
 	}
-	if a.divisor == 1 && b.Cd.SI() != 1 {
+	if a.divisor == 1 && a.Cd != 1 {
 		r.WarnAt(b.From, "drift-unreduced", "%s is not divided by R/I_e (which is 1 there): C_d/I_e = %s multiplies the full elastic drift", a.name, short(d.Factor))
 	}
 }
@@ -200,8 +203,13 @@ func (b *drift) said(a analysis, d *lateral.Drift) string {
 
 func (b *drift) table(r *Run, a analysis, d *lateral.Drift) {
 	u := unitsOf(r.System())
-	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storey drifts of "+a.name+" and their limits, highest storey on top"),
-		Columns: []exhibit.Column{Words("storey under"), Col("height", u.length), Col("elastic drift", u.small), Col("amplified drift", u.small), Col("drift ratio", percent)}}
+	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storey drifts of "+a.name+" and their limits, highest storey on top; displacements are those of the level above, at the centre"),
+		Columns: []exhibit.Column{Words("storey under"), Col("height", u.length)}}
+	levels := len(d.Displacement) > 0
+	if levels {
+		t.Columns = append(t.Columns, Col("elastic displacement", u.small), Col("amplified displacement", u.small))
+	}
+	t.Columns = append(t.Columns, Col("elastic drift", u.small), Col("amplified drift", u.small), Col("drift ratio", percent))
 	if a.european() {
 		t.Columns = append(t.Columns, Col("ν × drift", u.small))
 	}
@@ -213,7 +221,11 @@ func (b *drift) table(r *Run, a analysis, d *lateral.Drift) {
 		num := func(name string, x []float64, unit quantity.Unit) exhibit.Cell {
 			return exhibit.Cell{Numbers: []exhibit.Number{{Value: x[i], Unit: unit, ID: fmt.Sprintf("%s[%d]", r.ID(name), i+1)}}}
 		}
-		row := []exhibit.Cell{{Text: d.Levels[i]}, Cell(d.Hs[i], u.length), num("drift_elastic", d.Elastic, u.small), num("drift", d.Amplified, u.small), num("drift_ratio", d.Ratio, percent)}
+		row := []exhibit.Cell{{Text: d.Levels[i]}, Cell(d.Hs[i], u.length)}
+		if levels {
+			row = append(row, Cell(d.DisplacementElastic[i], u.small), num("displacement", d.Displacement, u.small))
+		}
+		row = append(row, num("drift_elastic", d.Elastic, u.small), num("drift", d.Amplified, u.small), num("drift_ratio", d.Ratio, percent))
 		if a.european() {
 			row = append(row, Cell(d.Nu*d.Amplified[i], u.small))
 		}

@@ -90,12 +90,12 @@ func (b *static) americanMethod(r *Run, s *lateral.Static) float64 {
 	height := quantity.MustUnit(s.HeightUnit)
 	w.let("h_n", hn, s.Hn, height)
 
-	r.Explain("Equivalent lateral force procedure of "+c.Ref("12.8").String()+", direction x. That the procedure is permitted for this structure (12.6) is for the author to say; the reduction of $S_\\mathrm{DS}$ that 12.8.1.3 offers is not used.", c.Ref("12.8"))
-	from := "C_t and x as stated"
-	if s.System != "" {
-		from = "C_t and x of Table 12.8-2: " + s.System
+	capped := "; the reduction of $S_\\mathrm{DS}$ that 12.8.1.3 offers is not used"
+	if b.Cap.Text() == "yes" {
+		capped = "; $S_\\mathrm{DS}$ is taken by 12.8.1.3 in the plateau of $C_\\mathrm{s}$ alone"
 	}
-	w.line("T_a", "C_t * num(h_n, "+s.HeightUnit+")^x * 1 s", seconds, s.Ta, "approximate period; "+from, c.Ref(c.Approximate))
+	r.Explain("Equivalent lateral force procedure of "+c.Ref("12.8").String()+", direction x. What is asked of the structure (12.6) is in the table of conditions: the procedure is "+s.Permitted+capped+".", c.Ref("12.8"))
+	b.approximateLines(w, s, c)
 	rows := lateral.CuRows(s.SD1)
 	if at := rows[0]; len(rows) == 1 {
 		side := "S_D1 from " + quantity.Plain(at.SD1) + " on"
@@ -124,6 +124,36 @@ func (b *static) americanMethod(r *Run, s *lateral.Static) float64 {
 	return w.worst
 }
 
+// approximateLines shows the approximate period by the rule that was chosen.
+func (b *static) approximateLines(w *workings, s *lateral.Static, c lateral.Clauses) {
+	switch s.PeriodRule {
+	case "storeys":
+		w.let("N", "", float64(len(s.Levels)), pure)
+		w.line("T_a", "0.1 * N * 1 s", seconds, s.Ta, "approximate period of moment frames, N the number of storeys above the base: "+s.System, c.Ref(c.Storeys))
+	case "walls":
+		area, unit := "100 / A_B * (", quantity.MustUnit(s.HeightUnit)
+		w.let("A_B", "", s.BaseArea, quantity.MustUnit(s.HeightUnit+"^2"))
+		for i, wall := range s.Walls {
+			if i > 0 {
+				area += " + "
+			}
+			d, t := fmt.Sprintf("D_%d", i+1), fmt.Sprintf("t_%d", i+1)
+			w.let(d, "", wall.Length, unit)
+			w.let(t, "", wall.Thickness, unitsOf(w.r.System()).small)
+			area += d + " * " + t + " / (1 + 0.83 * (h_n / " + d + ")^2)"
+		}
+		w.let("C_q", "", s.Cq, pure)
+		w.line("C_w", area+")", pure, s.Cw, "effective area of the shear walls of length D and thickness t, in percent of the area A_B at the base", c.Ref(c.Area))
+		w.line("T_a", "C_q * num(h_n, "+s.HeightUnit+") / sqrt(C_w) * 1 s", seconds, s.Ta, "approximate period of structures with shear walls; C_q for h_n in "+s.HeightUnit, c.Ref(c.Walls))
+	default:
+		from := "C_t and x as stated"
+		if s.System != "" {
+			from = "C_t and x of Table 12.8-2: " + s.System
+		}
+		w.line("T_a", "C_t * num(h_n, "+s.HeightUnit+")^x * 1 s", seconds, s.Ta, "approximate period; "+from, c.Ref(c.Approximate))
+	}
+}
+
 // coefficientLines shows every limb of C_s: with its numbers, or why it does not apply.
 func (b *static) coefficientLines(w *workings, s *lateral.Static, c lateral.Clauses) {
 	texts := map[string]string{
@@ -136,6 +166,10 @@ func (b *static) coefficientLines(w *workings, s *lateral.Static, c lateral.Clau
 	if c.Spectrum != "" {
 		texts[c.Spectrum] = "S_a / (R / I_e)"
 		w.let("S_a", "", s.Sa/quantity.Gravity, pure)
+	}
+	if s.SDSUsed < s.SDS {
+		texts[c.Plateau] = "S_DS12813 / (R / I_e)"
+		w.line("S_DS12813", "max(1, 0.7 * S_DS)", pure, s.SDSUsed, "largest S_DS that C_s need be found from", c.Ref("12.8.1.3"))
 	}
 	if s.S1Known {
 		w.let("S_1", b.Target.Text()+".S_1", s.S1, pure)
@@ -201,8 +235,11 @@ func (b *static) europeanMethod(r *Run, s *lateral.Static) float64 {
 	}
 	w.let("H", hn, s.Hn, quantity.MustUnit("m"))
 
-	r.Explain("Lateral force method of analysis of EN 1998-1 4.3.3.2, direction x. That the building is regular in elevation (4.3.3.2.1(2)b) is for the author to say. The ordinates are those of the design spectrum, divided by $q = "+short(s.Q)+"$.", lateral.EN("4.3.3.2"))
-	if s.Ta > 0 {
+	r.Explain("Lateral force method of analysis of EN 1998-1 4.3.3.2, direction x. What is asked of the building is in the table of conditions: the method is "+s.Permitted+". The ordinates are those of the design spectrum, divided by $q = "+short(s.Q)+"$.", lateral.EN("4.3.3.2"))
+	if s.PeriodRule == "displacement" {
+		w.let("d", "", s.Top, u.small)
+		w.line("T_1", "2 * sqrt(num(d, m)) * 1 s", seconds, s.T, "approximate fundamental period "+s.TWhy, lateral.EN("4.3.3.2.2(5)"))
+	} else if s.Ta > 0 {
 		from := "C_t as stated"
 		if s.System != "" {
 			from = "C_t of: " + s.System

@@ -15,7 +15,7 @@ import (
 //
 //	name     the word in the document
 //	is       text, file, name, block, series, choice, a dimension (number,
-//	         length, mass, time, velocity, acceleration, force, stiffness, any)
+//	         length, area, mass, time, velocity, acceleration, force, stiffness, any)
 //	of       choice: the words, by |; block: the products, by |
 //	many     "yes": a list, or one quoted vector
 //	need     "yes": must be given
@@ -93,7 +93,7 @@ type Spec struct {
 }
 
 var dimensions = map[string]quantity.Dim{
-	"number": quantity.None, "length": quantity.Length, "mass": quantity.Mass, "time": quantity.Time, "velocity": quantity.Velocity,
+	"number": quantity.None, "length": quantity.Length, "area": quantity.Length.Power(2), "mass": quantity.Mass, "time": quantity.Time, "velocity": quantity.Velocity,
 	"acceleration": quantity.Acceleration, "force": quantity.Force, "stiffness": quantity.Stiffness, "frequency": quantity.PerTime, "any": quantity.None,
 }
 
