@@ -128,6 +128,7 @@ func TestCacheHolds(t *testing.T) {
 	for _, edit := range []struct{ file, old, new string }{
 		{"package.md", "scale: 1.5", "scale: 1.5000000000000002"}, {"package.md", "units: [s, m/s^2]", "units: [s, g]"},
 		{"package.md", "number: T-1", "number: T-1\nunits: US"}, {"more.md", "R: 5", "R: 6"}, {"package.md", "4 m", "4.1 m"}, {"package.md", "structure frame", "structure  frame"},
+		{"package.md", "target design", "target  design"}, // it warns, at its first line
 	} {
 		if !strings.Contains(p[edit.file], edit.old) {
 			t.Fatalf("%s does not hold %q", edit.file, edit.old)
@@ -138,9 +139,11 @@ func TestCacheHolds(t *testing.T) {
 			t.Errorf("%q for %q in %s: the cache makes a difference", edit.new, edit.old, edit.file)
 		}
 	}
-	// Another function of the same block, of the same arguments; and another name of
-	// the same length, so that no place is another.
-	for _, edit := range [][2]string{{"rs.PSA(grid.T", "rs.SA(grid.T"}, {"push", "pusk"}} {
+	// Another function of the same block, of the same arguments, and the same of others;
+	// another name of the same length, so that no place is another; and another series
+	// under the same name, which a figure draws.
+	for _, edit := range [][2]string{{"rs.PSA(grid.T", "rs.SA(grid.T"}, {"rs.PSA(grid.T, 5 %", "rs.PSA(grid.T, 2 %"}, {"push", "pusk"},
+		{"amplitude: 0.2 g", "amplitude: 0.3 g"}} {
 		q := maps.Clone(p)
 		for name := range q {
 			q[name] = strings.ReplaceAll(q[name], edit[0], edit[1])

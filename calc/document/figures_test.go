@@ -88,6 +88,22 @@ func TestRatio(t *testing.T) {
 	}
 }
 
+// TestRatioCorners: a ratio has a point at each corner of a standard's spectrum,
+// beyond the end of its series too.
+func TestRatioCorners(t *testing.T) {
+	p := ran(t, calc("target a", "table: a.csv", "damping: 5 %")+calc("target design", "basis: ASCE/SEI 7-22", "S_DS: 1", "S_D1: 0.6", "T_L: 8 s")+
+		calc("figure f", "series: [{ ratio: [design.PSA, a.PSA] }]"), map[string]string{"a.csv": "T [s],PSA [g]\n0,1\n12,1\n"})
+	s := figureOf(t, p, "f").Panels[0].Series[0]
+	for _, T := range []float64{0, 0.12, 0.6, 8, 12} {
+		if !slices.Contains(s.X, T) {
+			t.Errorf("no point at %v s", T)
+		}
+	}
+	if i := slices.Index(s.X, 8); i >= 0 && math.Abs(s.Y[i]-0.075) > 1e-14 {
+		t.Errorf("ratio %v at 8 s, want 0.075", s.Y[i])
+	}
+}
+
 // TestHistoriesInFigure: records stand over time, not over periods.
 func TestHistoriesInFigure(t *testing.T) {
 	p := ran(t, calc("record r", "file: r.csv")+calc("figure f", "series: [r.v]", "x_axis: linear"), map[string]string{"r.csv": sawtooth})

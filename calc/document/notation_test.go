@@ -7,6 +7,7 @@ import (
 	"testing"
 
 	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
 )
 
 // symbol finds a symbol by its name or TeX.
@@ -65,6 +66,19 @@ func TestNotation(t *testing.T) {
 		if !slices.Contains(at, want) {
 			t.Errorf("%s stands at %v, want %v", name, at, want)
 		}
+	}
+}
+
+// TestNotationUnits: one meaning in two units stands twice, in one unit once with
+// both places.
+func TestNotationUnits(t *testing.T) {
+	a := assembly{p: &exhibit.Package{}, symbols: map[string]*exhibit.Symbol{}}
+	for _, use := range [][2]string{{"kN", "one"}, {"kip", "two"}, {"kN", "three"}} {
+		a.stands("q", "load", quantity.MustUnit(use[0]), exhibit.SymbolPlace{ID: use[1]})
+	}
+	m := a.symbols["q"].Meanings
+	if len(m) != 2 || m[0].Unit.Text != "kN" || len(m[0].Places) != 2 || m[1].Unit.Text != "kip" {
+		t.Errorf("%v", m)
 	}
 }
 
