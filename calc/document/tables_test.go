@@ -90,4 +90,10 @@ func TestFileTable(t *testing.T) {
 	if len(res.Diagnostics) != 1 || res.Diagnostics[0].Code != "table-number" || res.Diagnostics[0].Range.File != "loads.csv" || res.Diagnostics[0].Range.Line != 2 || res.Diagnostics[0].Range.Column != 6 {
 		t.Errorf("a letter among digits: %v", res.Diagnostics)
 	}
+	for _, file := range []string{"name,load [kN]\n\u202eroof,12.5\n", "name,load [kN]\nroof\u0001,12.5\n"} {
+		_, res = book2(head+calc("table loads", "file: loads.csv"), map[string]string{"loads.csv": file})
+		if len(res.Diagnostics) != 1 || res.Diagnostics[0].Code != "hidden-character" || res.Diagnostics[0].Range.File != "loads.csv" || res.Diagnostics[0].Range.Line != 2 || res.Diagnostics[0].Range.Column != 1 {
+			t.Errorf("%q: %v", file, res.Diagnostics)
+		}
+	}
 }
