@@ -15,7 +15,7 @@ var standing = []sentence{
 
 // triggered sentences are printed where a calculation gives cause, in this order.
 var triggered = []sentence{
-	{"demonstration", "Invented data: this package contains ground motion that was made up for demonstration. It must not be used for any project."},
+	{"demonstration", "Invented data: this package contains data that were made up for demonstration. It must not be used for any project."},
 	{"open-assumption", "Assumptions are open. Until each is verified the results depending on them are not for construction."},
 	{"linear", "Linear elastic analysis. Cracking, yielding, uplift and pounding are not represented."},
 	{"reduced", "The elastic response is divided by a code factor (R/I_e or the like). Inelastic demand, residual drift and collapse are not evaluated."},

@@ -18,6 +18,8 @@ var three = map[string]struct {
 	"rows":     {calc("structure s", "elevation: [12 ft, 24 ft, 36 ft]", "mass: {unit: kip*s^2/in, diagonal: [2, 1.5, 1]}", "stiffness: {unit: kip/in, rows: [[300, -120, 0], [-120, 180, -60], [0, -60, 60]]}"), nil},
 	"own unit": {calc("structure s", "elevation: \"[12, 24, 36] * 1 ft\"", "mass: [2 kip*s^2/in, 1.5 kip*s^2/in, 1 kip*s^2/in]", "stiffness:", "  rows:", "    - [300 kip/in, -120 kip/in, 0 kip/in]", "    - [-120 kip/in, 180 kip/in, -60 kip/in]", "    - [0 kip/in, -60 kip/in, 60 kip/in]"), nil},
 	"weights":  {calc("structure s", "elevation: [12 ft, 24 ft, 36 ft]", "weight: \"[2, 1.5, 1] * 1 kip*s^2/in * 9.80665 m/s^2\"", "stiffness: {unit: kip/in, triplets: [[1, 1, 300], [2, 1, -120], [2, 2, 180], [3, 2, -60], [3, 3, 60]]}"), nil},
+	"weights file": {calc("structure s", "elevation: [12 ft, 24 ft, 36 ft]", "weight: {file: w.csv, columns: [steel, 3]}", "stiffness: {unit: kip/in, rows: [[300, -120, 0], [-120, 180, -60], [0, -60, 60]]}"),
+		map[string]string{"w.csv": "level,steel [kip],rest [N]\nL1,772.1771653543307,0\nL2,193.04429133858268,1717407.5788698574\nL3,0,1717407.5788698574\n"}},
 	"files": {calc("structure s", "elevation: [12 ft, 24 ft, 36 ft]", "mass: {unit: kip*s^2/in, file: M.csv}", "stiffness: {unit: kip/in, file: K.csv}"),
 		map[string]string{"M.csv": "\xef\xbb\xbf# mass\r\n2;0;0\r\n0;1.5;0\r\n0;0;1\r\n", "K.csv": "300,-120,0\n-120,180,-60\n0,-60,60\n"}},
 	"triplet files": {calc("structure s", "elevation: [12 ft, 24 ft, 36 ft]", "mass: {file: M.csv}", "stiffness: K.csv"),

@@ -239,6 +239,22 @@ func TestCautionsTriggered(t *testing.T) {
 	}
 }
 
+// TestDemonstration: a data file whose head says that it is invented marks the
+// package; a word further down, or in the document, does not.
+func TestDemonstration(t *testing.T) {
+	model := calc("structure s", "elevation: [4 m, 8 m]", "weight: {file: w.csv}", "stiffness: {file: K.csv, unit: kN/m}") + calc("table loads", "file: w.csv")
+	for _, c := range []struct{ weights, stiffness, want string }{
+		{"# Weights. INVENTED.\r\nlevel,weight [kN]\r\nL1,900\r\nL2,800\r\n", "300,-120\n-120,120\n", "b-s b-loads"},
+		{"level,weight [kN]\nL1,900\nL2,800\n", "\xef\xbb\xbf# frame\n# invented\n300,-120\n-120,120\n", "b-s"},
+		{"level,weight [kN]\n# invented\nL1,900\ninvented,800\n", "300,-120\n-120,120\n", ""},
+	} {
+		p := ran(t, "All is invented.\n\n"+model, map[string]string{"w.csv": c.weights, "K.csv": c.stiffness})
+		if got := triggeredBy(p)["demonstration"]; got != c.want {
+			t.Errorf("%q, %q: marked by %q, want %q", c.weights, c.stiffness, got, c.want)
+		}
+	}
+}
+
 // TestCloseModes: a light appendage tuned to the building splits its mode in two
 // that SRSS must not combine unsaid.
 func TestCloseModes(t *testing.T) {

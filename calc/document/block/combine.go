@@ -213,7 +213,9 @@ func (b *combine) withResidual(r *Run, c *modal.Combined, modes *modal.Modes, in
 		r.Fail(b.Residual, "residual", "the target %s does not tell its zero-period acceleration: it is not given at T = 0", b.Target.Text()).WithHint("state it:  zpa: 0.4 g")
 		return nil
 	}
-	r.Used("zpa", "zero-period acceleration", inUnits(zpa, inG), source)
+	if !b.ZPA.Given {
+		r.Used("zpa", "zero-period acceleration", inUnits(zpa, inG), source)
+	}
 	out, err := c.WithResidual(modes, zpa, in.left)
 	if err != nil {
 		r.Fail(b.Residual, "residual", "%s", err)

@@ -2,6 +2,7 @@ package block
 
 import (
 	"fmt"
+	"slices"
 
 	"quoin/calc/cite"
 	"quoin/calc/document/field"
@@ -264,7 +265,9 @@ func (b *drift) figure(r *Run, a analysis, d *lateral.Drift) {
 	panels := []exhibit.Panel{profile("drift ratio", label, percent, ratio, limit)}
 	if len(d.Theta) > 0 {
 		p := profile("stability", "θ", pure, d.Theta, d.ThetaLimit)
-		p.Lines = append(p.Lines, exhibit.RefLine{Vertical: true, At: lateral.DriftThreshold, Label: "0.10"})
+		if slices.Max(d.ThetaLimit) > lateral.DriftThreshold { // else the limit itself stands below it
+			p.Lines = append(p.Lines, exhibit.RefLine{Vertical: true, At: lateral.DriftThreshold, Label: "0.10"})
+		}
 		panels = append(panels, p)
 	}
 	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Storey drifts of "+a.name+" over the height with their limits"), Beside: true, Panels: panels,

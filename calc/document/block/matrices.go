@@ -12,10 +12,11 @@ import (
 
 // byMatrices tells whether any field of a model by matrices is given.
 func (b *building) byMatrices() bool {
-	return b.Elevation.Given || b.Levels.Given || b.Weight.Given || b.hasMass() || b.hasStiffness()
+	return b.Elevation.Given || b.Levels.Given || b.hasWeight() || b.hasMass() || b.hasStiffness()
 }
 
 func (b *building) hasMass() bool      { return b.Mass.Unit.At.Line > 0 }
+func (b *building) hasWeight() bool    { return b.Weight.Columns.At.Line > 0 }
 func (b *building) hasStiffness() bool { return b.Stiffness.Unit.At.Line > 0 }
 
 // checkMatrices sees that a model by matrices is whole and given once.
@@ -28,11 +29,13 @@ func (b *building) checkMatrices(c *Checks) {
 		c.Diags.Errorf("missing-field", c.Place, "a structure by matrices needs the field elevation").WithHint("the elevation of each level above the base, lowest first:  elevation: [4 m, 7.5 m]")
 	}
 	switch mass := b.hasMass(); {
-	case mass && b.Weight.Given:
-		c.Fail(b.Weight, "weight-and-mass", "the structure has both a weight and a mass").WithHint("give one; the other follows by g = 9.80665 m/s²")
-	case !mass && !b.Weight.Given:
+	case mass && b.hasWeight():
+		c.Fail(b.Weight.place(), "weight-and-mass", "the structure has both a weight and a mass").WithHint("give one; the other follows by g = 9.80665 m/s²")
+	case !mass && !b.hasWeight():
 		c.Diags.Errorf("missing-field", c.Place, "a structure by matrices needs the field mass, or weight").WithHint("mass: [200 t, 180 t]  or  mass: {unit: t, rows: [[200, 0], [0, 180]]}")
-	case mass:
+	case !mass:
+		b.Weight.check(c)
+	default:
 		if n := b.Mass.forms(b.Mass.File, b.Mass.Diagonal); n != 1 {
 			c.Diags.Errorf("structure-form", b.Mass.place(b.Mass.File, b.Mass.Diagonal), "the mass is given in %d ways: one of diagonal, rows, triplets and file is needed", n)
 		}
@@ -70,7 +73,7 @@ func (b *building) fromMatrices(r *Run) (*structure.Model, *matrixPair) {
 		return nil, nil
 	}
 	r.Used("stiffness", "stiffness", plain(p.stiffness.sized()), p.stiffness.source)
-	if !b.Weight.Given {
+	if !b.hasWeight() {
 		r.Used("mass", "mass", plain(p.mass.sized()), p.mass.source)
 	}
 	r.Caution("matrices")
@@ -79,10 +82,12 @@ func (b *building) fromMatrices(r *Run) (*structure.Model, *matrixPair) {
 
 // massGrid is the mass matrix as given: a diagonal of masses or weights, or a matrix.
 func (b *building) massGrid(r *Run, n int) *grid {
-	f, si, source := b.Weight, b.Weight.Value.SI, "the weights written in this document"
+	f, si, source := b.Weight.Each, b.Weight.Each.Value.SI, "the weights written in this document"
 	g := &grid{}
 	switch {
-	case b.Weight.Given:
+	case b.Weight.File.Given:
+		return b.weightsFrom(r, n)
+	case b.hasWeight():
 		si = append([]float64(nil), si...)
 		for i := range si {
 			si[i] /= quantity.Gravity
@@ -121,7 +126,7 @@ func (b *building) matrices(r *Run, m *structure.Model, given *matrixPair) {
 			lumped = lumped && (i == j || x == 0)
 		}
 	}
-	if b.Weight.Given {
+	if b.hasWeight() {
 		r.Explain("Mass is weight divided by $g = 9.80665\\;\\mathrm{m/s^2}$.")
 	} else {
 		r.Explain("Weight is mass times $g = 9.80665\\;\\mathrm{m/s^2}$.")

@@ -187,9 +187,6 @@ func (b *record) read(r *Run) *motion.Record {
 	return rec
 }
 
-// invented tells whether a record says of itself that it was made up.
-func invented(text string) bool { return strings.Contains(strings.ToLower(text), "invented") }
-
 func found(fromFile bool) string {
 	if fromFile {
 		return "from the file"

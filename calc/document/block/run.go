@@ -1,6 +1,7 @@
 package block
 
 import (
+	"bytes"
 	"fmt"
 	"strings"
 
@@ -66,6 +67,33 @@ type Run struct {
 	Place diag.Range // of the block's info string
 	Result
 }
+
+// Read reads a file; one whose head says that it was made up makes the package a
+// demonstration.
+func (r *Run) Read(path, role string) ([]byte, string, error) {
+	data, full, err := r.Env.Read(path, role)
+	if err == nil && invented(comment(data)) {
+		r.Caution("demonstration")
+	}
+	return data, full, err
+}
+
+// comment is the lines at the head of a file that begin with #.
+func comment(data []byte) string {
+	data = bytes.TrimPrefix(data, []byte("\xef\xbb\xbf"))
+	end := 0
+	for bytes.HasPrefix(data[end:], []byte("#")) {
+		n := bytes.IndexByte(data[end:], '\n')
+		if n < 0 {
+			return string(data)
+		}
+		end += n + 1
+	}
+	return string(data[:end])
+}
+
+// invented tells whether data say of themselves that they were made up.
+func invented(text string) bool { return strings.Contains(strings.ToLower(text), "invented") }
 
 // Fail reports an error at a field.
 func (r *Run) Fail(f field.Field, code, format string, args ...any) *diag.Diagnostic {

@@ -35,7 +35,7 @@ type building struct {
 	Elevation field.Field     `name:"elevation" is:"length" many:"yes" doc:"of a model by matrices: elevation of each level above the base, lowest first"`
 	Levels    field.Field     `name:"levels" is:"text" many:"yes" doc:"of a model by matrices: names of the levels; L1, L2, ... if not given"`
 	Mass      massFields      `name:"mass" doc:"of a model by matrices: mass at each level, or a mass matrix; one freedom a level"`
-	Weight    field.Field     `name:"weight" is:"force" many:"yes" must:"positive" hint:"a weight is a force (kN, kip); for masses (t, kg) use the field mass" doc:"of a model by matrices: seismic weight at each level, in place of its mass"`
+	Weight    weightFields    `name:"weight" doc:"of a model by matrices: seismic weight at each level, in place of its mass"`
 	Stiffness stiffnessFields `name:"stiffness" doc:"of a model by matrices: the lateral stiffness matrix"`
 	Damping   field.Field     `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes"`
 }
