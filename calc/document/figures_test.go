@@ -104,6 +104,16 @@ func TestRatioCorners(t *testing.T) {
 	}
 }
 
+// TestDots: few points of vectors are marked, many are a curve.
+func TestDots(t *testing.T) {
+	for count, want := range map[string]bool{"24": true, "25": false} {
+		p := ran(t, calc("periods grid", "from: 0.1 s", "to: 2 s", "count: "+count)+calc("figure f", "series: [{ x: grid.T, y: grid.T }]"), nil)
+		if s := figureOf(t, p, "f").Panels[0].Series[0]; s.Dots != want {
+			t.Errorf("%s points: dots %v", count, s.Dots)
+		}
+	}
+}
+
 // TestHistoriesInFigure: records stand over time, not over periods.
 func TestHistoriesInFigure(t *testing.T) {
 	p := ran(t, calc("record r", "file: r.csv")+calc("figure f", "series: [r.v]", "x_axis: linear"), map[string]string{"r.csv": sawtooth})

@@ -126,6 +126,9 @@ func TestTreatShown(t *testing.T) {
 	}) {
 		t.Errorf("a longer period given: %q", w)
 	}
+	if long, short := value(t, p, "r.usable_period").Value.SI[0], value(t, p, "r.shortest_period").Value.SI[0]; math.Abs(long-1.6) > 1e-12 || math.Abs(short-0.0625) > 1e-12 {
+		t.Errorf("usable from %v to %v s, want 0.0625 to 1.6 s", short, long)
+	}
 	checks := 0
 	items(p, func(b *exhibit.Block, _ string, it exhibit.Item) {
 		if b.Name == "r" && strings.HasPrefix(it.Text, "Cross-checks") {

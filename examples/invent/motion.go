@@ -18,6 +18,17 @@ type Motion struct {
 	Low, High    float64 // corner frequencies, Hz
 	Rise, Hold   float64 // s
 	Decay        float64 // 1/s
+
+	Offset, Trend float64 // of the instrument, m/s² and m/s³
+}
+
+// Recorded is the acceleration as an instrument gives it, with its offset and trend.
+func (m Motion) Recorded() []float64 {
+	a := m.Acceleration()
+	for i := range a {
+		a[i] += m.Offset + m.Trend*float64(i)*m.Step
+	}
+	return a
 }
 
 // Acceleration is the record in m/s², one value a step.

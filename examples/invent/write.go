@@ -9,10 +9,10 @@ import (
 
 // at2 is one component in g: four header lines, then five values a line in
 // fields of 15, six decimals.
-func at2(a []float64, step float64) []byte {
+func at2(a []float64, step float64, line2 string) []byte {
 	var b bytes.Buffer
 	b.WriteString("INVENTED MOTION FOR DEMONSTRATION, NOT A RECORDED EARTHQUAKE\n")
-	b.WriteString("Invented event, 2/3/2031, Alder Quay (invented station), 90\n")
+	b.WriteString(line2 + "\n")
 	b.WriteString("ACCELERATION TIME SERIES IN UNITS OF G\n")
 	fmt.Fprintf(&b, "NPTS=  %5d, DT=   %.4f SEC,\n", len(a), step)
 	for i, x := range a {
@@ -30,10 +30,10 @@ type channel struct {
 }
 
 // csv is a time column and one column a component, in cm/s², three decimals.
-func csv(step float64, channels []channel) []byte {
+func csv(step float64, place string, channels []channel) []byte {
 	var b bytes.Buffer
 	b.WriteString("# INVENTED motion for demonstration, not a recorded earthquake\n")
-	b.WriteString("# Alder Quay (invented station), invented event of 2031-02-03\n")
+	b.WriteString("# " + place + "\n")
 	b.WriteString("t [s]")
 	for _, c := range channels {
 		fmt.Fprintf(&b, ",%s [cm/s^2]", c.name)
@@ -45,6 +45,22 @@ func csv(step float64, channels []channel) []byte {
 			b.WriteString("," + decimal(100*c.a[i], 3))
 		}
 		b.WriteByte('\n')
+	}
+	return b.Bytes()
+}
+
+// values is one component in m/s², row by row, eight values a line, five decimals.
+// Unit and step stand in words only: who uses the file states them.
+func values(a []float64, place string, step float64) []byte {
+	var b bytes.Buffer
+	b.WriteString("# INVENTED motion for demonstration, not a recorded earthquake\n")
+	fmt.Fprintf(&b, "# %s\n", place)
+	fmt.Fprintf(&b, "# %.0f values a second in metres per second squared\n", 1/step)
+	for i, x := range a {
+		fmt.Fprintf(&b, "%10s", decimal(x, 5))
+		if i%8 == 7 || i == len(a)-1 {
+			b.WriteByte('\n')
+		}
 	}
 	return b.Bytes()
 }

@@ -102,3 +102,74 @@ func TestLongVector(t *testing.T) {
 		t.Errorf("shrink %q, %v mm high", shrink, it.high)
 	}
 }
+
+// TestLongList: a long vector without levels is shown by its ends and extremes, each
+// with its number, and says of how many.
+func TestLongList(t *testing.T) {
+	b := newBook(&exhibit.Package{System: quantity.SI}, Options{})
+	si := make([]float64, longest+1)
+	for i := range si {
+		si[i] = float64((i*i + 5) % 37)
+	}
+	v := quantity.List(si, quantity.MustUnit("m"), nil)
+	name := &expr.Node{Op: expr.Name, Text: "h", Value: &v}
+	out := b.equation(&exhibit.Equation{ID: "h", Symbol: name, Tree: name, Result: &v}, "")
+	view := out[0].data.(equationView)
+	if len(out) != 1 || view.Over != "of 49" || len(view.Columns) != 1 {
+		t.Fatalf("%d items, over %q", len(out), view.Over)
+	}
+	least, most := 0, 0
+	for i := range si {
+		if si[i] < si[least] {
+			least = i
+		}
+		if si[i] > si[most] {
+			most = i
+		}
+	}
+	show := func(i int) string { return quantity.Format(si[i], quantity.Digits) }
+	want := []labelled{{"1", show(0)}, {"2", show(1)}, {"3", show(2)}, {"⋮", ""}, {"49", show(48)}, {"least, " + strconv.Itoa(least+1), show(least)}, {"largest, " + strconv.Itoa(most+1), show(most)}}
+	if !reflect.DeepEqual(view.Columns[0], want) {
+		t.Errorf("%v\nwant\n%v", view.Columns[0], want)
+	}
+	short := quantity.List(si[:longest], quantity.MustUnit("m"), nil)
+	shown := 0
+	for _, it := range b.equation(&exhibit.Equation{ID: "h", Symbol: name, Tree: name, Result: &short}, "") {
+		for _, c := range it.data.(equationView).Columns {
+			shown += len(c)
+		}
+	}
+	if shown != longest {
+		t.Errorf("%d of %d items are shown", shown, longest)
+	}
+}
+
+// TestWideEcho: a formula too wide for one of the two columns of an echo takes both.
+func TestWideEcho(t *testing.T) {
+	b := newBook(&exhibit.Package{System: quantity.SI}, Options{})
+	short := &expr.Node{Op: expr.Name, Text: "V"}
+	long := short
+	for range 20 {
+		long = &expr.Node{Op: expr.Add, Args: []*expr.Node{long, short}}
+	}
+	row := func(n *expr.Node) exhibit.EchoRow {
+		return exhibit.EchoRow{Field: "columns", Label: "shear", Value: exhibit.Cell{Symbol: n}}
+	}
+	narrow := b.echo(&exhibit.Echo{Rows: []exhibit.EchoRow{row(short), row(short)}}, "")[0]
+	wide := b.echo(&exhibit.Echo{Rows: []exhibit.EchoRow{row(short), row(long)}}, "")[0]
+	if wide.high <= narrow.high {
+		t.Errorf("%v mm for a wide row of its own, %v mm for two side by side", wide.high, narrow.high)
+	}
+	for _, c := range []struct {
+		it   item
+		want int
+	}{{narrow, 0}, {wide, 1}} {
+		var page strings.Builder
+		if err := b.tmpl.ExecuteTemplate(&page, "echo", c.it.data); err != nil {
+			t.Fatal(err)
+		}
+		if got := strings.Count(page.String(), `class="wide"`); got != c.want {
+			t.Errorf("%d wide rows, want %d", got, c.want)
+		}
+	}
+}

@@ -16,6 +16,7 @@ const (
 	numberRoom    = 18
 	wholeRoom     = 40
 	besideRoom    = 31 // beside a result
+	longest       = 48 // items that a vector without levels shows in full
 	across        = 4  // columns of a long vector
 	tallestColumn = 24
 	em            = 3.7 // mm
@@ -168,6 +169,11 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 		if len(r.Labels) == len(r.SI) && len(r.SI) > 0 {
 			v.Over = "level"
 		}
+		if v.Over == "item" && len(r.SI) > longest {
+			v.Over = "of " + strconv.Itoa(len(r.SI))
+			v.Columns = [][]labelled{summary(r.SI, text)}
+			return 1.55 * float64(len(v.Columns[0])+1)
+		}
 		tall := 12
 		if len(r.SI) > 2*tall {
 			tall = min((len(r.SI)+across-1)/across, tallestColumn)
@@ -193,4 +199,27 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 		v.Value = text(r.SI[0])
 	}
 	return 1.6
+}
+
+// summary is a long vector in a few rows: its first items and the last, the least
+// and the largest. All of it stands in results.json.
+func summary(si []float64, text func(float64) string) (rows []labelled) {
+	row := func(words string, i int) { rows = append(rows, labelled{words + strconv.Itoa(i+1), text(si[i])}) }
+	for i := range 3 {
+		row("", i)
+	}
+	rows = append(rows, labelled{"⋮", ""})
+	row("", len(si)-1)
+	least, most := 0, 0
+	for i, x := range si {
+		if x < si[least] {
+			least = i
+		}
+		if x > si[most] {
+			most = i
+		}
+	}
+	row("least, ", least)
+	row("largest, ", most)
+	return rows
 }

@@ -12,6 +12,7 @@ import (
 	"quoin/calc/exhibit"
 	"quoin/calc/expr"
 	"quoin/calc/quantity"
+	"quoin/render/equation"
 )
 
 // exhibit is one exhibit of a part as items; label is set on the first of a part.
@@ -84,27 +85,38 @@ func bareText(list []exhibit.Number) string {
 	return strings.Join(texts, ", ")
 }
 
+// echoRoom is the column of an echoed formula, em; a wider one takes both columns.
+const echoRoom = 14
+
 func (b *book) echo(e *exhibit.Echo, label string) []item {
 	type row struct {
 		Field, Label, Written, From string
 		Symbol                      *expr.Node
 		Value                       cellView
-		Default                     bool
+		Default, Wide               bool
 	}
 	var out []item
 	const most = 36 // rows an item holds, so that a long echo can be cut
 	for start := 0; start < len(e.Rows); start += most {
 		var rows []row
 		for _, r := range e.Rows[start:min(start+most, len(e.Rows))] {
-			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default})
+			wide := r.Value.Symbol != nil && equation.Setter{}.Symbols(r.Value.Symbol).Width > echoRoom
+			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default, wide})
 		}
 		high := 3.0
-		for i := 0; i < len(rows); i += 2 {
-			tall := 0.0
-			for _, r := range rows[i:min(i+2, len(rows))] {
+		for i := 0; i < len(rows); {
+			tall, n := 0.0, min(2, len(rows)-i)
+			if rows[i].Wide || n == 2 && rows[i+1].Wide {
+				n = 1
+			}
+			for _, r := range rows[i : i+n] {
 				tall = max(tall, lines(r.Label+r.Value.Text+r.Value.Numbers+r.Written+r.From, 44))
+				if r.Value.Symbol != nil {
+					tall = max(tall, equation.Setter{}.Symbols(r.Value.Symbol).Height*em/4.9)
+				}
 			}
 			high += 1.4 + 4.9*tall
+			i += n
 		}
 		out = append(out, item{name: "echo", data: struct {
 			Label string

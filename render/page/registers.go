@@ -82,13 +82,13 @@ func (b *book) registers() (out []item, toc []entry) {
 	add("q-references", "References", refs)
 	add("q-inputs", "Inputs", chunked("inputs", p.Inputs, func(i exhibit.Input) float64 { return 9.2 * lines(i.Path, 30) }, nil))
 	software := struct {
-		Tool, Units string
-		Digits      int
-	}{or(p.Provenance.Tool, "not named"), "Shown in SI units unless written otherwise", quantity.Digits}
+		Tool, Units     string
+		Digits, Longest int
+	}{or(p.Provenance.Tool, "not named"), "Shown in SI units unless written otherwise", quantity.Digits, longest}
 	if p.System == quantity.US {
 		software.Units = "Shown in US customary units unless written otherwise"
 	}
-	add("q-software", "Software", []item{{name: "software", data: software, high: 86}})
+	add("q-software", "Software", []item{{name: "software", data: software, high: 96}})
 	add("q-cautions", "Limitations and caution", b.cautions())
 	return out, toc
 }

@@ -173,6 +173,9 @@ func (b *figure) Run(r *Run) {
 	r.Figure(exhibit.Figure{ID: id, Caption: caption, Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})
 }
 
+// mostDots is how many points of vectors are marked one by one; more are a curve.
+const mostDots = 24
+
 // vectors is the curve of an entry with x and y.
 func (b *figure) vectors(r *Run, s *seriesFields) []drawn {
 	x, y := s.X.Value, s.Y.Value
@@ -184,7 +187,7 @@ func (b *figure) vectors(r *Run, s *seriesFields) []drawn {
 		r.Fail(s.Y, "labels", "x and y belong to different levels: %s and %s", listed(x.Labels), listed(y.Labels))
 		return nil
 	}
-	return []drawn{{Curve: exhibit.Curve{X: x, Y: y}, label: s.Y.Written, role: exhibit.Data, dots: true, from: s.Y}}
+	return []drawn{{Curve: exhibit.Curve{X: x, Y: y}, label: s.Y.Written, role: exhibit.Data, dots: len(x.SI) <= mostDots, from: s.Y}}
 }
 
 // sameLabels tells whether two vectors may stand side by side: of those with

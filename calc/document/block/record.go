@@ -33,6 +33,8 @@ var recordKind = Kind{
 		{"step", "time between samples", "s"},
 		{"samples", "number of samples", ""},
 		{"duration", "time from the first sample to the last", "s"},
+		{"usable_period", "longest usable period, where it is stated or a filter sets it", "s"},
+		{"shortest_period", "shortest usable period, where a filter or another step sets it", "s"},
 	},
 }
 
@@ -272,6 +274,12 @@ func (b *record) results(r *Run, rec *motion.Record) {
 	r.Number("step", rec.Step, seconds)
 	r.Number("samples", float64(rec.Samples()), pure)
 	r.Number("duration", rec.Duration(), seconds)
+	if rec.Origin.UsablePeriod > 0 {
+		r.Number("usable_period", rec.Origin.UsablePeriod, seconds)
+	}
+	if rec.Origin.ShortestPeriod > 0 {
+		r.Number("shortest_period", rec.Origin.ShortestPeriod, seconds)
+	}
 
 	r.Explain("The acceleration is linear between samples. Velocity and displacement follow by exact integration from rest, so that their peaks, the integrals of $a^2$ and $|a|$, and the times at which the Arias integral passes 5, 75 and 95 % are exact for that motion.")
 	r.recordSymbols()

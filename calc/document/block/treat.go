@@ -149,14 +149,19 @@ func (b *record) treated(r *Run, rec *motion.Record) *motion.Record {
 	r.Caution("processed")
 	o := rec.Origin
 	if !b.Usable.Given && o.UsablePeriod > 0 {
-		r.Used("usable_period", "longest usable period", inUnits(round12(o.UsablePeriod), seconds), "1/(1.25 × lower corner), common practice")
+		r.Used("usable_period", "longest usable period", about(o.UsablePeriod), "1/(1.25 × lower corner), common practice")
 	} else if o.UsablePeriod < b.Usable.SI() {
 		r.Warn("usable-period", "the lower corner of the filter limits the usable periods to %s s, less than the %s s given", short(round12(o.UsablePeriod)), short(round12(b.Usable.SI())))
 	}
 	if o.ShortestPeriod > 0 {
-		r.Used("shortest_period", "shortest usable period", inUnits(round12(o.ShortestPeriod), seconds), "from the upper limit of the band, common practice")
+		r.Used("shortest_period", "shortest usable period", about(o.ShortestPeriod), "from the upper limit of the band, common practice")
 	}
 	return rec
+}
+
+// about is a time to as many digits as results have, fewer where they say it all.
+func about(t float64) exhibit.Cell {
+	return exhibit.Cell{Numbers: []exhibit.Number{{Value: t, Unit: seconds, Digits: min(quantity.Exact(round12(t)), quantity.Digits)}}}
 }
 
 // doubts warns of what a step will not do well on this record.
