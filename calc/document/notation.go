@@ -62,8 +62,26 @@ func (a *assembly) stands(name, text string, unit quantity.Unit, place exhibit.S
 	s.Meanings = append(s.Meanings, exhibit.Meaning{Text: text, Unit: unit, Places: []exhibit.SymbolPlace{place}})
 }
 
+// meaning is what the notation says of a field or value: its text up to what only
+// a writer must know, without the standard it belongs to.
+func meaning(doc string) string {
+	if of, rest, ok := strings.Cut(doc, ": "); ok && slices.Contains([]string{"ASCE/SEI 7", "EN 1998-1", "of EN 1998-1", "of 7-16", "of 7-22"}, of) {
+		doc = rest
+	}
+	doc, _, _ = strings.Cut(doc, "; ")
+	if open := strings.LastIndex(doc, " ("); open > 0 && strings.HasSuffix(doc, ")") {
+		doc = doc[:open]
+	}
+	return strings.TrimSuffix(doc, ", if not given")
+}
+
 // member adds a value or function of a block: "m.T", "rs.PSA".
-func (a *assembly) member(path string) {
+func (a *assembly) member(path string) { a.memberAs(path, "") }
+
+// memberAs adds a value of a block that an equation writes by another symbol; the
+// symbol is the value's name, if none is given.
+func (a *assembly) memberAs(path, symbol string) {
+	path, _, item := strings.Cut(path, "[")
 	first, own := cutPath(path)
 	n := a.names[formula.Normal(first)]
 	if n == nil || n.kind != blockNode || own == "" {
@@ -77,8 +95,13 @@ func (a *assembly) member(path string) {
 				if unit.Text == "" {
 					unit = a.system.Preferred(v.Value.Dim)
 				}
-				place.ID = n.name + "." + own
-				a.stands(own, e.Doc, unit, place)
+				if place.ID = n.name + "." + own; item {
+					place.ID = ""
+				}
+				if symbol == "" {
+					symbol = own
+				}
+				a.stands(symbol, meaning(e.Doc), unit, place)
 			}
 		}
 		return
@@ -109,7 +132,7 @@ func (a *assembly) fieldSymbols(n *node) {
 			if unit.Text == "" {
 				unit = s.Unit(a.system)
 			}
-			a.stands(s.Name, s.Doc, unit, exhibit.SymbolPlace{Block: n.name, Anchor: n.anchor})
+			a.stands(s.Name, meaning(s.Doc), unit, exhibit.SymbolPlace{Block: n.name, Anchor: n.anchor})
 		}
 	})
 }
@@ -126,7 +149,7 @@ func (a *assembly) methodSymbols(n *node) {
 		for _, tree := range []*expr.Node{it.Equation.Symbol, it.Equation.Tree} {
 			tree.Walk(func(m *expr.Node) {
 				if m.Op == expr.Name && m.ID != "" {
-					a.member(m.ID)
+					a.memberAs(m.ID, m.Text)
 				}
 			})
 		}

@@ -6,7 +6,9 @@ import (
 	"strings"
 	"testing"
 
+	"quoin/calc/document/block"
 	"quoin/calc/exhibit"
+	"quoin/calc/expr"
 	"quoin/calc/quantity"
 )
 
@@ -82,10 +84,20 @@ func TestNotationUnits(t *testing.T) {
 	}
 }
 
-// TestMethodsNameTheirSymbols: every letter of a method's equation in TeX stands
-// in the notation.
+// TestMethodsNameTheirSymbols: every letter of a method's equation, in TeX or as a
+// formula, stands in the notation.
 func TestMethodsNameTheirSymbols(t *testing.T) {
-	_, res := runKinds(t, Options{})
+	_, kinds := runKinds(t, Options{})
+	_, more := archive(t, "testdata/symbols.txtar")
+	if more.Diagnostics.HasErrors() {
+		t.Fatalf("errors:\n%s", text(more))
+	}
+	named(t, kinds, "record", "spectrum", "target", "structure", "modes", "combine", "static", "drift")
+	named(t, more, "target", "structure", "modes", "combine", "static", "drift")
+}
+
+func named(t *testing.T, res Result, kinds ...string) {
+	t.Helper()
 	have := map[string]bool{"d": true, "i": true, "j": true, "n": true}
 	for _, s := range res.Package.Notation {
 		name := s.Name
@@ -96,12 +108,25 @@ func TestMethodsNameTheirSymbols(t *testing.T) {
 		have[strings.ToLower(base)] = true
 	}
 	words := regexp.MustCompile(`\\(mathrm\{[^}]*\}|[A-Za-z]+)|[A-Za-z]`)
-	set := strings.Fields("frac tfrac cos tan Delta sum sqrt max int dot ddot cdot quad qquad mathrm mathsf left right text pi")
-	kinds := []string{"record", "spectrum", "structure", "modes", "combine"}
-	found := 0
+	set := strings.Fields("ge le frac tfrac cos tan Delta sum sqrt max int dot ddot cdot quad qquad mathrm mathsf left right text pi")
+	found := map[string]int{}
+	names := map[string]bool{}
+	for _, s := range res.Package.Notation {
+		names[s.Name] = true
+	}
 	items(res.Package, func(b *exhibit.Block, part string, it exhibit.Item) {
-		if it.Equation == nil || it.Equation.TeX == "" || !slices.Contains(kinds, b.Kind) {
+		if it.Equation == nil || b.Kind == block.Formula {
 			return
+		}
+		for _, tree := range []*expr.Node{it.Equation.Symbol, it.Equation.Tree} {
+			tree.Walk(func(m *expr.Node) {
+				if m.Op == expr.Name {
+					found[b.Kind]++
+					if name := m.Text[strings.LastIndex(m.Text, ".")+1:]; !names[name] {
+						t.Errorf("%s: %s is not in the notation", b.Name, name)
+					}
+				}
+			})
 		}
 		tex := regexp.MustCompile(`_(\{[^{}]*(\{[^{}]*\})?[^{}]*\}|\\mathrm\{[^}]*\}|.)`).ReplaceAllString(it.Equation.TeX, "") // subscripts belong to their symbol
 		tex = regexp.MustCompile(`\^(\{[^}]*\}|\\mathrm\{[^}]*\}|.)`).ReplaceAllString(tex, "")
@@ -110,13 +135,39 @@ func TestMethodsNameTheirSymbols(t *testing.T) {
 			if slices.Contains(set, w) || strings.Contains(w, ",") || w == "s" {
 				continue
 			}
-			found++
+			found[b.Kind]++
 			if !have[strings.ToLower(w)] {
 				t.Errorf("%s: %s is not in the notation: %s", b.Name, w, it.Equation.TeX)
 			}
 		}
 	})
-	if found < 40 {
-		t.Errorf("%d symbols found", found)
+	for _, kind := range kinds {
+		if found[kind] < 4 {
+			t.Errorf("%s: %d symbols found", kind, found[kind])
+		}
+	}
+}
+
+// TestMeanings: one wording with two units is two meanings, and the same one in
+// several places is one; what only a writer must know is left out.
+func TestMeanings(t *testing.T) {
+	a := &assembly{symbols: map[string]*exhibit.Symbol{}}
+	for _, place := range []struct{ unit, block string }{{"kN", "a"}, {"kip", "b"}, {"kN", "c"}, {"kN", "a"}} {
+		a.stands("P", "vertical load", quantity.MustUnit(place.unit), exhibit.SymbolPlace{Block: place.block})
+	}
+	m := a.symbols["P"].Meanings
+	if len(m) != 2 || m[0].Unit.Text != "kN" || len(m[0].Places) != 2 || m[1].Unit.Text != "kip" || len(m[1].Places) != 1 {
+		t.Errorf("two units make %+v", m)
+	}
+	for doc, want := range map[string]string{
+		"ASCE/SEI 7: importance factor; that of the analysis, where it states one": "importance factor",
+		"of EN 1998-1: soil factor, if not given":                                  "soil factor",
+		"base shear; F_b of EN 1998-1":                                             "base shear",
+		"exponent of the distribution over the height (ASCE/SEI 7)":                "exponent of the distribution over the height",
+		"limb of C_s: 0.5 S_1/(R/I_e), where S_1 is 0.6 or more":                   "limb of C_s: 0.5 S_1/(R/I_e), where S_1 is 0.6 or more",
+	} {
+		if got := meaning(doc); got != want {
+			t.Errorf("%q means %q, want %q", doc, got, want)
+		}
 	}
 }

@@ -63,11 +63,11 @@ func warnings(rec *motion.Record, periods []float64) (out []motion.Warning) {
 	}
 	p := peak(rec.A)
 	if e := max(math.Abs(rec.A[0]), math.Abs(rec.A[len(rec.A)-1])); e > 0.1*p {
-		warn("record-cut", "the record starts or ends at %.2g of its peak acceleration: it may be cut", e/p)
+		warn("record-cut", "the record starts or ends at %.0f %% of its peak acceleration: it may be cut", 100*e/p)
 	}
 	v, _ := motion.Integrate(rec)
 	if last, most := math.Abs(v[len(v)-1]), peak(v); last > 0.1*most {
-		warn("velocity-drift", "the ground still moves at %.2g of its peak velocity when the record ends: long periods want a baseline correction first", last/most)
+		warn("velocity-drift", "the ground still moves at %.0f %% of its peak velocity when the record ends: long periods want a baseline correction first", 100*last/most)
 	}
 	return out
 }

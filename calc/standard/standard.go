@@ -91,7 +91,15 @@ type ParameterError struct {
 	Hint    string
 }
 
-func (e *ParameterError) Error() string { return e.Symbol + ": " + e.Problem }
+func (e *ParameterError) Error() string { return Said(e.Symbol, e.Problem) }
+
+// Said joins a symbol with what is wrong about it: "q is missing", "q: 12 is no ...".
+func Said(symbol, problem string) string {
+	if strings.HasPrefix(problem, "is ") {
+		return symbol + " " + problem
+	}
+	return symbol + ": " + problem
+}
 
 // Problems lists the parameter errors in err (as Build joins them).
 func Problems(err error) []*ParameterError {

@@ -9,6 +9,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strconv"
 
 	"quoin/calc/cite"
 )
@@ -135,7 +136,7 @@ func (t *Target) BranchAt(T float64) (Branch, error) {
 	}
 	from, to := t.Range()
 	if T < from || T > to {
-		return Branch{}, fmt.Errorf("period %v s lies outside the spectrum, which runs from %v s to %v s", T, from, to)
+		return Branch{}, fmt.Errorf("period %s s lies outside the spectrum, which runs from %.6g s to %.6g s", outside(T, from, to), from, to)
 	}
 	i := slices.IndexFunc(t.Branches, func(b Branch) bool { return b.To == 0 || T <= b.To })
 	return t.Branches[i], nil
@@ -171,4 +172,14 @@ func (t *Target) Parameter(symbol string) (Parameter, bool) {
 		return Parameter{}, false
 	}
 	return t.Parameters[i], true
+}
+
+// outside is a period that lies outside, at 4 digits, or all it needs where 4 would
+// put it inside.
+func outside(T, from, to float64) string {
+	text := strconv.FormatFloat(T, 'g', 4, 64)
+	if short, _ := strconv.ParseFloat(text, 64); short >= from && short <= to {
+		return strconv.FormatFloat(T, 'g', -1, 64)
+	}
+	return text
 }

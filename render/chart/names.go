@@ -2,6 +2,7 @@ package chart
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"github.com/go-echarts/go-echarts/v2/types"
@@ -17,8 +18,8 @@ import (
 func (p *panel) lineNames() (curve, bool) {
 	c := p.marks("~linename", 7)
 	var spots []spot
-	var taken [][3]float64 // from, to (px), row
-	for _, l := range p.Lines {
+	rows := p.lineRows()
+	for i, l := range p.Lines {
 		unit, s := p.Y.Unit, p.y
 		if l.Vertical {
 			unit, s = p.X.Unit, p.x
@@ -32,30 +33,78 @@ func (p *panel) lineNames() (curve, bool) {
 			spots = append(spots, spot{Name: text, Value: numbers{p.x.hi, v}, Label: spotLabel{Position: "inside", Align: "right", VAlign: "bottom", Offset: numbers{-2, -2}}})
 			continue
 		}
-		at, w := s.at(v, p.width), textWidth(text, false)+8
-		right := at+w <= p.width || at < p.width/2
-		a, b := at, at+w
-		if !right {
-			a, b = at-w, at
-		}
-		row := 0.0
-		for again := true; again; {
-			again = false
-			for _, t := range taken {
-				if t[2] == row && a < t[1] && b > t[0] {
-					row, again = row+1, true
-				}
-			}
-		}
-		taken = append(taken, [3]float64{a, b, row})
-		q := spotLabel{Position: "inside", Align: "left", VAlign: "top", Offset: numbers{5, 2 + row*leading}}
-		if !right {
+		q := spotLabel{Position: "inside", Align: "left", VAlign: "top", Offset: numbers{5, 2 + float64(rows[i].row)*leading}}
+		if !rows[i].right {
 			q.Align, q.Offset[0] = "right", -5
 		}
 		spots = append(spots, spot{Name: text, Value: numbers{v, p.y.hi}, Label: q})
 	}
 	c.Data = spots
 	return c, len(spots) > 0
+}
+
+// lineRow is where the name of a vertical line stands: the row from the top, and
+// the side.
+type lineRow struct {
+	row      int
+	right    bool
+	from, to float64 // px
+}
+
+// lineRows gives the names of the vertical lines rows in which they do not meet.
+func (p *panel) lineRows() map[int]lineRow {
+	out := map[int]lineRow{}
+	var taken [][3]float64 // from, to (px), row
+	for i, l := range p.Lines {
+		v := p.X.Unit.From(l.At)
+		text := valued(clean(l.Label), v, p.X.Unit)
+		if !l.Vertical || text == "" || !p.x.holds(v) {
+			continue
+		}
+		at, w := p.x.at(v, p.width), textWidth(text, false)+8
+		right := at+w <= p.width || at < p.width/2
+		a, b := at, at+w
+		if !right {
+			a, b = at-w, at
+		}
+		row := 0
+		for slices.ContainsFunc(taken, func(t [3]float64) bool { return t[2] == float64(row) && a < t[1] && b > t[0] }) {
+			row++
+		}
+		taken = append(taken, [3]float64{a, b, float64(row)})
+		out[i] = lineRow{row, right, a, b}
+	}
+	return out
+}
+
+// headroom raises the upper end of y, where it is free, until the names of the
+// vertical lines stand clear of the curves that run below them.
+func (p *panel) headroom() {
+	if p.profile || p.y.log || p.Y.Max != nil || p.Y.Symmetric {
+		return
+	}
+	need := p.y.hi
+	for _, r := range p.lineRows() {
+		free := 1 - (float64(r.row+1)*leading+6)/p.height
+		if free < 0.6 {
+			continue
+		}
+		for _, s := range p.Series {
+			for _, q := range p.data(s) {
+				if at := p.x.at(q[0], p.width); at >= r.from && at <= r.to {
+					need = math.Max(need, p.y.lo+(q[1]-p.y.lo)/free)
+				}
+			}
+		}
+	}
+	for p.y.hi < need*(1-1e-9) { // a higher end may have wider ticks
+		step := nice((need - p.y.lo) * 40 / p.height)
+		p.y.hi = step * math.Ceil(need/step-1e-9)
+		need = math.Max(need, p.y.hi)
+		if wider := nice((p.y.hi - p.y.lo) * 40 / p.height); wider > step {
+			p.y.hi = wider * math.Ceil(need/wider-1e-9)
+		}
+	}
 }
 
 // valued is the name of a line with its value, unless the name says it already.

@@ -12,6 +12,7 @@ import (
 	"github.com/go-echarts/go-echarts/v2/opts"
 
 	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
 )
 
 // Widths in px for which static pictures are drawn: a sheet's column, a phone's.
@@ -80,6 +81,7 @@ func measure(f exhibit.Figure) []*panel {
 			ys = append(ys, q.Y.Unit.From(r.Y))
 		}
 		p.x, p.y = spanOf(q.X, xs, xFit, p.width), spanOf(q.Y, ys, yFit, p.height)
+		p.headroom()
 		out[i] = p
 	}
 	// Panels share the running axis where it is the same one.
@@ -124,6 +126,9 @@ func layout(f exhibit.Figure, panels []*panel, v *visitor) int {
 	for _, p := range panels {
 		if p.names {
 			right = math.Max(right, p.endWidth()+4)
+		} else if p.index == len(panels)-1 && p.x.hi != 0 {
+			// Half of the number at the end of the axis.
+			right = math.Max(right, textWidth(quantity.Format(p.x.hi, 3), false)/2+4)
 		}
 	}
 	v.legend = opts.Legend{Show: off()}

@@ -26,6 +26,7 @@ type book struct {
 	rows     map[string]string // key of a check -> anchor of its row
 	notes    map[int]bool      // footnotes there are
 	marked   map[int]bool      // footnotes already referred to
+	symbols  map[string]bool   // names that words show as symbols
 	err      error             // the first, of making the page
 }
 
@@ -34,7 +35,7 @@ var parsed = template.Must(template.New("").Funcs((&book{}).funcs()).ParseFS(tem
 
 func newBook(p *exhibit.Package, o Options) *book {
 	b := &book{p: p, o: o, open: append(OpenState(p), o.State...), ids: map[string]bool{}, sheets: map[string]int{},
-		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, notes: map[int]bool{}, marked: map[int]bool{}}
+		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p)}
 	for _, e := range p.Values {
 		b.entries[e.ID] = e
 	}

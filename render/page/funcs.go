@@ -33,6 +33,7 @@ func (b *book) funcs() template.FuncMap {
 		"footref":   b.footref,
 		"checked":   checkedText,
 		"words":     wordsOf,
+		"worded":    b.worded,
 		"person":    personText,
 		"align": func(a string) string {
 			return map[string]string{"right": "r", "center": "c"}[a]

@@ -40,7 +40,7 @@ type combine struct {
 	Direction field.Field `name:"direction" is:"choice" of:"x|y" default:"x" doc:"direction of the ground motion; a planar model has x only"`
 	Damping   field.Field `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes; that of the structure, if it states one, else that of the spectrum"`
 	Rule      field.Field `name:"rule" is:"choice" of:"CQC|SRSS|absolute" default:"CQC" doc:"rule of combination"`
-	R         field.Field `name:"R" is:"number" must:"positive" default:"1" doc:"response modification coefficient: forces and displacements are divided by R/I_e"`
+	R         field.Field `name:"R" is:"number" must:"positive" default:"1" doc:"response modification coefficient; forces and displacements are divided by R/I_e"`
 	Ie        field.Field `name:"I_e" is:"number" must:"positive" default:"1" doc:"importance factor"`
 	Residual  field.Field `name:"residual" is:"choice" of:"none|missing mass" default:"none" doc:"missing mass: the mass that the modes do not move is added as rigid, at the zero-period acceleration"`
 	ZPA       field.Field `name:"zpa" is:"acceleration" must:"positive" label:"zero-period acceleration" doc:"acceleration of the residual, not divided by R/I_e; that of the target at T = 0, or the peak acceleration of the record, if not given"`
@@ -290,6 +290,7 @@ func (b *combine) method(r *Run, c *modal.Combined, z float64) {
 		r.Equation(`r = \sum_i |r_i|`, "sum of magnitudes", chopra())
 	}
 	if c.Residual != nil {
+		r.residualSymbols()
 		r.Equation(`f_\mathrm{r} = M e\,\frac{\mathrm{ZPA}}{R/I_\mathrm{e}},\quad e = 1 - \sum_n \Gamma_n \phi_n,\qquad K u_\mathrm{r} = f_\mathrm{r}`,
 			"missing mass: static forces of the mass that the modes used do not move, and their displacements; 1 is a unit displacement of every level", cite.To("US NRC RG 1.92", "missing mass"))
 		if c.Rule == modal.Absolute {

@@ -39,7 +39,7 @@ type drift struct {
 
 	Cd     field.Field `name:"C_d" is:"number" must:"positive" doc:"ASCE/SEI 7: deflection amplification factor; that of the static block, where it states one"`
 	Ie     field.Field `name:"I_e" is:"number" must:"positive" doc:"ASCE/SEI 7: importance factor; that of the analysis, where it states one"`
-	Rho    field.Field `name:"rho" is:"number" must:"positive" doc:"ASCE/SEI 7: redundancy factor that divides the limit, for moment frames in design categories D to F; 1, if not given"`
+	Rho    field.Field `name:"rho" is:"number" must:"positive" doc:"ASCE/SEI 7: redundancy factor; it divides the limit, for moment frames in design categories D to F; 1, if not given"`
 	System field.Field `name:"system" is:"choice" of:"tolerant finishes|masonry cantilever|masonry|other" doc:"ASCE/SEI 7: row of the table of allowed drifts; tolerant finishes: four storeys or fewer, no masonry, finishes designed for the drifts"`
 	Risk   field.Field `name:"risk" is:"choice" of:"I|II|III|IV" doc:"ASCE/SEI 7: risk category"`
 	Scale  field.Field `name:"scale_drifts" is:"choice" of:"yes|no" doc:"ASCE/SEI 7, from a combine block with scale_to: yes where C_s is governed by 0.5 S_1/(R/I_e), so that drifts are scaled like forces"`
@@ -49,8 +49,8 @@ type drift struct {
 	Nu       field.Field `name:"nu" is:"number" must:"positive" doc:"EN 1998-1: reduction for damage limitation; 0.5 for importance classes I and II, 0.4 for III and IV, if not given"`
 	Finishes field.Field `name:"finishes" is:"choice" of:"brittle|ductile|none" doc:"EN 1998-1: non-structural elements: brittle and attached, ductile, or none that interfere"`
 
-	P     field.Field `name:"P" is:"force" must:"positive" many:"yes" doc:"vertical load at and above each level, lowest first, no load factor above 1.0: without it stability is not evaluated"`
-	Beta  field.Field `name:"beta" is:"number" must:"positive" many:"yes" doc:"ASCE/SEI 7: shear demand over shear capacity, one or one a storey; 1, if not given"`
+	P     field.Field `name:"P" is:"force" must:"positive" many:"yes" doc:"vertical load at and above each level; lowest first, no load factor above 1.0; without it stability is not evaluated"`
+	Beta  field.Field `name:"beta" is:"number" must:"positive" many:"yes" doc:"ASCE/SEI 7: shear demand over shear capacity of a storey; one or one a storey; 1, if not given"`
 	Limit field.Field `name:"limit" is:"number" must:"positive" many:"yes" show:"" doc:"allowed drift over storey height, one or one a storey, in place of the table of the standard"`
 }
 

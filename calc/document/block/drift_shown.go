@@ -3,6 +3,7 @@ package block
 import (
 	"fmt"
 	"slices"
+	"strings"
 
 	"quoin/calc/cite"
 	"quoin/calc/document/field"
@@ -114,6 +115,7 @@ func (s substituted) equation(r *Run, symbol, text, description string, ref cite
 
 func (b *drift) method(r *Run, a analysis, d *lateral.Drift, clauses lateral.DriftClauses) {
 	r.Explain(b.said(a, d))
+	r.driftSymbols(a.european(), len(d.Theta) > 0)
 	u := unitsOf(r.System())
 	worst, stable := d.Governs()
 	storey := func(i int) substituted {
@@ -240,6 +242,16 @@ func (b *drift) table(r *Run, a analysis, d *lateral.Drift) {
 	r.Table(t)
 }
 
+// limited names a line of limits, with its value where it is one.
+func limited(limit []float64, unit quantity.Unit) string {
+	for _, x := range limit {
+		if relative(x, limit[0]) > 1e-12 {
+			return "limit"
+		}
+	}
+	return strings.TrimSpace("limit " + quantity.Format(unit.From(limit[0]), 3) + "\u202f" + unit.Pretty())
+}
+
 // over makes a cell strong where its number exceeds its limit.
 func over(c exhibit.Cell, ratio float64) exhibit.Cell {
 	c.Strong = ratio > 1+1e-12
@@ -256,7 +268,7 @@ func (b *drift) figure(r *Run, a analysis, d *lateral.Drift) {
 	profile := func(title, label string, unit quantity.Unit, x, limit []float64) exhibit.Panel {
 		s, l := storeySteps(d.H, x), storeySteps(d.H, limit)
 		return exhibit.Panel{Title: title, X: exhibit.Axis{Label: label, Unit: unit, Min: zero()}, Y: y, Series: []exhibit.FigSerie{
-			{X: s.x, Y: s.y, Role: exhibit.Data}, {Label: "limit", X: l.x, Y: l.y, Role: exhibit.Limit}}}
+			{X: s.x, Y: s.y, Role: exhibit.Data}, {Label: limited(limit, unit), X: l.x, Y: l.y, Role: exhibit.Limit}}}
 	}
 	label := "drift / height"
 	if a.european() {
@@ -270,6 +282,11 @@ func (b *drift) figure(r *Run, a analysis, d *lateral.Drift) {
 		}
 		panels = append(panels, p)
 	}
+	worst, stable := d.Governs()
+	seen := fmt.Sprintf("Profile over the height of the structure, in steps by storey, the limit dashed: the drift ratio comes nearest to its limit under level %s, %s %% against %s %%.", d.Levels[worst], short(100*ratio[worst]), short(100*limit[worst]))
+	if stable >= 0 {
+		seen += fmt.Sprintf(" Beside it the stability coefficient with its limit: nearest under level %s, %s against %s.", d.Levels[stable], short(d.Theta[stable]), short(d.ThetaLimit[stable]))
+	}
 	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Storey drifts of "+a.name+" over the height with their limits"), Beside: true, Panels: panels,
-		Alt: "Profiles over the height of the structure, in steps by storey: drift ratio and stability coefficient, each with its limit dashed."})
+		Alt: seen})
 }

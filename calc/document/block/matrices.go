@@ -120,6 +120,7 @@ const widest = 8
 // matrices shows where the matrices came from, and what they are.
 func (b *building) matrices(r *Run, m *structure.Model, given *matrixPair) {
 	r.Explain(fmt.Sprintf("The model was assembled elsewhere and is used as given: one lateral freedom a level in direction x, the base fixed at elevation 0. The stiffness matrix comes from %s, the mass matrix from %s. Both were found square, finite, symmetric and positive definite.", given.stiffness.source, given.mass.source))
+	r.matrixSymbols()
 	lumped := true
 	for i, row := range m.M {
 		for j, x := range row {

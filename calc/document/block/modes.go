@@ -109,8 +109,10 @@ func (b *modes) results(r *Run, s *modal.Modes) {
 		r.Explain("Undamped free vibration.")
 	}
 	r.Explain("Shapes are scaled so that the component of largest magnitude is +1; participation factors belong to that scale. Mass ratios are fractions of the total mass of the model.")
-	r.modeSymbols()
-	if !s.Imported {
+	if s.Imported {
+		r.importedSymbols()
+	} else {
+		r.modeSymbols()
 		r.Equation(`K\phi_n = \omega_n^2 M\phi_n,\qquad T_n = 2\pi/\omega_n`, "natural frequencies and shapes", chopra())
 	}
 	r.Equation(`\Gamma_n = \frac{L_n}{M_n},\quad L_n = \phi_n^\mathrm{T} M r,\quad M_n = \phi_n^\mathrm{T} M \phi_n,\quad \frac{M_n^*}{\sum m} = \frac{L_n^2}{M_n \sum m}`, "participation factor and effective mass ratio; r is the displacement of the levels for a unit displacement of the ground", chopra())

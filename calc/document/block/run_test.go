@@ -39,3 +39,15 @@ func TestLinear(t *testing.T) {
 		}
 	}
 }
+
+// TestTypeset: symbols in words of an engine become TeX, all else stays.
+func TestTypeset(t *testing.T) {
+	for text, want := range map[string]string{
+		"up to T_L = 8 s; S_DS, T_0": `up to $T_\mathrm{L}$ = 8 s; $S_\mathrm{DS}$, $T_\mathrm{0}$`,
+		"MCE_R, storey_shear":        "MCE_R, storey_shear",
+	} {
+		if got := typeset(text); got != want {
+			t.Errorf("%q is %q, want %q", text, got, want)
+		}
+	}
+}

@@ -53,8 +53,8 @@ type static struct {
 	R         field.Field  `name:"R" is:"number" must:"positive" doc:"ASCE/SEI 7: response modification coefficient"`
 	Ie        field.Field  `name:"I_e" is:"number" must:"positive" doc:"ASCE/SEI 7: importance factor; that of the risk category of the target, if not given"`
 	System    field.Field  `name:"system" is:"text" doc:"row of the table of C_t and x: steel moment frame, concrete moment frame, eccentrically braced frame, buckling-restrained braced frame (ASCE/SEI 7), other"`
-	Ct        field.Field  `name:"C_t" is:"number" must:"positive" label:"C_t" doc:"in place of system: T_a = C_t h_n^x in s (EN 1998-1: C_t H^0.75, H in m)"`
-	X         field.Field  `name:"x" is:"number" must:"positive" doc:"ASCE/SEI 7: the exponent that belongs to C_t"`
+	Ct        field.Field  `name:"C_t" is:"number" must:"positive" label:"C_t" doc:"coefficient of the approximate period; in place of system, T_a = C_t h_n^x in s (EN 1998-1: C_t H^0.75, H in m)"`
+	X         field.Field  `name:"x" is:"number" must:"positive" doc:"ASCE/SEI 7: exponent of the approximate period; it belongs to C_t"`
 	HnIn      field.Field  `name:"h_n_in" is:"choice" of:"m|ft" label:"h_n measured in" doc:"ASCE/SEI 7: the unit of h_n in C_t h_n^x; m in packages in SI units, ft in US units, if not given"`
 	Hn        field.Field  `name:"h_n" is:"length" must:"positive" label:"structural height h_n" doc:"structural height; the elevation of the highest level, if not given"`
 	T         field.Field  `name:"T" is:"time" must:"positive" label:"computed period" doc:"a computed period, m.T[1]: ASCE/SEI 7 holds it below C_u T_a; of EN 1998-1 it is T_1, in place of system or C_t"`
@@ -251,7 +251,7 @@ func (b *static) report(r *Run, err error) {
 		r.Fail(b.Structure, "static", "%s", err)
 	}
 	for _, p := range found {
-		r.Fail(at[p.Symbol], "static", "%s: %s", p.Symbol, p.Problem).WithHint("%s", p.Hint)
+		r.Fail(at[p.Symbol], "static", "%s", standard.Said(p.Symbol, p.Problem)).WithHint("%s", p.Hint)
 	}
 }
 

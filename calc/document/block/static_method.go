@@ -71,6 +71,7 @@ func (w *workings) line(name, text string, unit quantity.Unit, want float64, doc
 // americanMethod shows 12.8 with its numbers and returns how far the equations lie
 // from the values of the engine.
 func (b *static) americanMethod(r *Run, s *lateral.Static) float64 {
+	r.staticSymbols(s)
 	u := unitsOf(r.System())
 	c := lateral.ClausesOf(s.Basis)
 	w := &workings{r: r, names: map[string]given{}}
@@ -181,7 +182,7 @@ func (b *static) coefficientLines(w *workings, s *lateral.Static, c lateral.Clau
 			if l.Unknown {
 				verb = ") could not be checked: "
 			}
-			w.r.Explain(l.Ref.String()+" ("+l.Name+verb+l.Why+".", l.Ref)
+			w.r.Explain(l.Ref.String()+typeset(" ("+l.Name+verb+l.Why+"."), l.Ref)
 			continue
 		}
 		text, doc := texts[l.Ref.Clause], l.Name+": "+l.Why
@@ -218,6 +219,7 @@ func (b *static) driftMethod(r *Run, s *lateral.Static, c lateral.Clauses) {
 
 // europeanMethod shows 4.3.3.2 with its numbers; as americanMethod.
 func (b *static) europeanMethod(r *Run, s *lateral.Static) float64 {
+	r.staticSymbols(s)
 	u := unitsOf(r.System())
 	target, frame := b.Target.Text(), b.Structure.Text()+"."
 	w := &workings{r: r, names: map[string]given{}}

@@ -113,7 +113,8 @@ func (b *static) figures(r *Run, s *lateral.Static) {
 	}
 	feet := append([]float64{foot}, s.H...)
 	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Static lateral forces, storey shears and overturning moments of "+r.Name+" over the height"), Beside: true,
-		Alt: "Profiles over the height of the structure: lateral force at each level, storey shear in steps, overturning moment growing to the base.",
+		Alt: fmt.Sprintf("Profiles over the height of the structure: lateral force at each level, %s %s at the highest; storey shear in steps, %s %s at the base; overturning moment growing to %s %s at the base.",
+			short(u.force.From(s.F[len(s.F)-1])), u.force.Pretty(), short(u.force.From(s.Shear[0])), u.force.Pretty(), short(u.moment.From(s.Moment[0])), u.moment.Pretty()),
 		Panels: []exhibit.Panel{
 			panel("lateral force", "F", u.force, force...),
 			panel("storey shear", "V", u.force, exhibit.FigSerie{X: stepped.x, Y: stepped.y, Role: exhibit.Data}),

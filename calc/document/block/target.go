@@ -125,7 +125,7 @@ func (b *target) Run(r *Run) {
 	t, err := standard.Build(basis, given)
 	if err != nil {
 		for _, p := range standard.Problems(err) {
-			r.Fail(at[p.Symbol], "target", "%s: %s", named(p.Symbol, basis), p.Problem).WithHint("%s", p.Hint)
+			r.Fail(at[p.Symbol], "target", "%s", standard.Said(named(p.Symbol, basis), p.Problem)).WithHint("%s", p.Hint)
 		}
 		if len(standard.Problems(err)) == 0 {
 			r.Fail(b.Basis, "target", "%s", err)

@@ -49,9 +49,12 @@ func (b *target) results(r *Run, t *standard.Target) {
 		r.Explain(text+".", std.Ref)
 	}
 	for _, note := range t.Notes {
-		r.Explain(note)
+		r.Explain(typeset(note))
 	}
 	worst := max(r.parameters(t, std), r.ordinates(t))
+	if t.Basis != tableBasis {
+		r.targetSymbols(t)
+	}
 	b.standing(r, t)
 	b.branches(r, t)
 	b.figure(r, t)

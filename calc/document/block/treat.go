@@ -275,9 +275,11 @@ func (b *record) explain(r *Run) {
 		r.Explain("Baseline: a polynomial of time is taken off the acceleration; its coefficients make the sum of squares of what is left, over the samples, least: of the acceleration, or of the velocity or displacement integrated from rest.", cite.To("Boore & Bommer 2005", ""))
 	}
 	if used["taper"] {
+		r.taperSymbols()
 		r.Equation(`w = \tfrac12\left(1 - \cos\frac{\pi t}{t_\mathrm{start}}\right)`, "cosine taper over the first t_start of the record, and likewise before its end", cite.To("Boore & Bommer 2005", ""))
 	}
 	if used["bandpass"] {
+		r.filterSymbols()
 		r.Equation(`|H|^2 = \frac{1}{1 + (x_\mathrm{from}/x)^{2n}} \cdot \frac{1}{1 + (x/x_\mathrm{to})^{2n}},\quad x = \tan(\pi f \Delta t)`,
 			"gain of the forward and the backward pass together, without phase: Butterworth filters of order n by the bilinear transform, corners prewarped. At a corner it is 0.5 (−6 dB), one pass being at its half-power point; with corner_gain 0.707 (−3 dB) x_from is multiplied and x_to divided by (√2 - 1)^(1/2n)", cite.To("Butterworth 1930", ""))
 		r.Explain("The record counts as zero outside itself and the filter is carried on there until it has died away; of what it moves out of the record, a pad is kept at each end, by default 1.5 times the order of both passes together over the corner, in seconds, shared between the ends. Velocity and displacement from rest hold only with it; records filtered with different pads are not in step.", cite.To("Converse & Brady 1992", ""), cite.To("Boore 2005", ""))
