@@ -55,19 +55,19 @@ func (b *book) cover() []item {
 	if it, ok := b.shortCaution(); ok {
 		out = append(out, it)
 	}
-	out = append(out, chunked("revisions", m.Revision, func(r exhibit.Revision) float64 {
+	out = append(out, chunked("revisions", captioned, m.Revision, func(r exhibit.Revision) float64 {
 		return 0.1 + 4.8*max(lines(r.Note, 48), lines(checkedText(r.Prepared, r.Checked), 14), lines(r.Prepared, 10), lines(r.Date, 12), lines(r.Rev, 6))
 	}, nil)...)
-	for i := range out {
-		if out[i].name == "revisions" {
-			out[i].high += 5
-		}
-	}
 	if len(b.p.Provenance.Overrides) > listed {
-		more := chunked("overrides", b.p.Provenance.Overrides, func(o exhibit.Override) float64 {
+		all := b.p.Provenance.Overrides
+		more := chunked("overrides", headRow, all, func(o exhibit.Override) float64 {
 			return 0.1 + 4.8*max(lines(o.Name, 28), lines(o.Text, 30), lines(o.Was, 30))
-		}, nil)
-		more[0].anchors = []string{"q-overrides"}
+		}, func(o exhibit.Override) []string {
+			if o == all[0] {
+				return []string{"q-overrides"}
+			}
+			return nil
+		})
 		out = append(out, more...)
 	}
 	if len(m.Basis) > listed {

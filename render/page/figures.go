@@ -81,63 +81,97 @@ type checkView struct {
 
 var relations = map[string]string{"<=": "≤", "<": "<", ">=": "≥", ">": ">", "==": "="}
 
-// checks is a table of checks. A summary leads to the blocks; a block shows the
-// formula of the check. A long one is cut.
+// checkRow is a row of a table of checks, and how high it is, mm; short where the
+// row above is of the same check and has said the rest.
+type checkRow struct {
+	full, short         checkView
+	fullHigh, shortHigh float64
+}
+
+// checks is a table of checks that goes on from sheet to sheet. A summary leads to
+// the blocks; a block shows the formula of the check.
 func (b *book) checks(list []exhibit.Check, label, caption string, summary bool) []item {
-	type view struct {
+	rows := make([]checkRow, len(list))
+	for i, c := range list {
+		rows[i] = b.checkRow(c, summary)
+		if i == 0 || summary || list[i-1].Name != c.Name {
+			rows[i].short, rows[i].shortHigh = rows[i].full, rows[i].fullHigh
+		}
+	}
+	return checkTable(rows, label, caption, summary)
+}
+
+// checkTable is rows of checks, the first in full.
+func checkTable(rows []checkRow, label, caption string, summary bool) []item {
+	if len(rows) == 0 {
+		return nil
+	}
+	v := struct {
 		Label, Caption string
 		Summary        bool
 		Rows           []checkView
+	}{Label: label, Caption: caption, Summary: summary}
+	it := item{name: "checks", high: 14}
+	add := func(r checkView, high float64) {
+		v.Rows = append(v.Rows, r)
+		it.high += high
+		if r.ID != "" {
+			it.anchors = append(it.anchors, r.ID)
+		}
 	}
-	var out []item
-	v := view{Label: label, Caption: caption, Summary: summary}
-	high := 14.0
-	seen := ""
-	var anchors []string
-	for i, c := range list {
-		r := checkView{Name: checkName(c), Item: c.Item, Source: sourceOf(c.Ref, c.RefText), OK: c.OK,
-			Demand: numbersText([]exhibit.Number{c.Demand}), Limit: numbersText([]exhibit.Number{c.Limit}), Ratio: c.RatioText()}
-		r.Relation = or(relations[c.Relation], c.Relation)
-		if c.Tolerance != nil {
-			r.Limit += " ± " + numbersText([]exhibit.Number{*c.Tolerance})
-		}
-		if c.Ratio != nil && !math.IsNaN(*c.Ratio) {
-			r.HasBar, r.Over = true, *c.Ratio > 1.25
-			r.Bar = strconv.FormatFloat(math.Round(10*min(max(80**c.Ratio, 0), 100))/10, 'f', -1, 64)
-		}
-		rows := lines(r.Name+", "+r.Item, 25)
-		if c.Description == "" && c.Tree != nil {
-			set := equation.Setter{System: b.p.System, Width: 15}.Symbols(c.Tree)
-			r.Formula, rows = template.HTML(set.XML), set.Height*0.8
-		}
-		if c.Ref != nil && c.Ref.Memory {
-			rows = max(rows, 1+lines(c.Ref.String(), 22))
-		}
-		if summary {
-			r.Anchor = or(b.rows[checkKey(c)], c.Anchor)
-		} else if c.Name == seen {
-			r.Source = "" // said in the row above
-		} else if c.Tree != nil && c.Description != "" {
-			set := equation.Setter{System: b.p.System, Width: 16}.Symbols(c.Tree)
-			if set.Width > 16 { // it does not break far enough: the text of the document does
-				r.Plain, rows = c.Name, rows+lines(c.Name, 26)
-			} else {
-				r.Tree, rows = template.HTML(set.XML), rows+set.Height*0.8
+	add(rows[0].full, rows[0].fullHigh)
+	for _, r := range rows[1:] {
+		add(r.short, r.shortHigh)
+	}
+	it.data = v
+	it.cut = func(room float64) (first, rest []item) {
+		n, used := 0, 14+rows[0].fullHigh
+		for n < len(rows) && used <= room {
+			if n++; n < len(rows) {
+				used += rows[n].shortHigh
 			}
 		}
-		if !summary {
-			r.ID = b.claimRow(c)
-			anchors = append(anchors, r.ID)
-		}
-		seen = c.Name
-		high += 2.4 + 4.6*rows
-		v.Rows = append(v.Rows, r)
-		if high > tallest || i == len(list)-1 {
-			out = append(out, item{name: "checks", data: v, high: high, anchors: anchors})
-			v, high, anchors = view{Caption: caption, Summary: summary}, 14, nil
-			seen = "" // said again
+		return checkTable(rows[:n], label, caption, summary), checkTable(rows[n:], "", caption, summary)
+	}
+	return []item{it}
+}
+
+func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
+	r := checkView{Name: checkName(c), Item: c.Item, Source: sourceOf(c.Ref, c.RefText), OK: c.OK,
+		Demand: numbersText([]exhibit.Number{c.Demand}), Limit: numbersText([]exhibit.Number{c.Limit}), Ratio: c.RatioText()}
+	r.Relation = or(relations[c.Relation], c.Relation)
+	if c.Tolerance != nil {
+		r.Limit += " ± " + numbersText([]exhibit.Number{*c.Tolerance})
+	}
+	if c.Ratio != nil && !math.IsNaN(*c.Ratio) {
+		r.HasBar, r.Over = true, *c.Ratio > 1.25
+		r.Bar = strconv.FormatFloat(math.Round(10*min(max(80**c.Ratio, 0), 100))/10, 'f', -1, 64)
+	}
+	tall := lines(r.Name+", "+r.Item, 25)
+	if c.Description == "" && c.Tree != nil {
+		set := equation.Setter{System: b.p.System, Width: 15}.Symbols(c.Tree)
+		r.Formula, tall = template.HTML(set.XML), set.Height*0.8
+	}
+	if summary {
+		r.Anchor = or(b.rows[checkKey(c)], c.Anchor)
+	} else {
+		r.ID = b.claimRow(c)
+	}
+	high := func(tall float64) float64 { return 2.4 + 4.6*tall }
+	out := checkRow{short: r, shortHigh: high(tall)}
+	out.short.Source = ""
+	if c.Ref != nil && c.Ref.Memory {
+		tall = max(tall, 1+lines(c.Ref.String(), 22))
+	}
+	if !summary && c.Tree != nil && c.Description != "" {
+		set := equation.Setter{System: b.p.System, Width: 16}.Symbols(c.Tree)
+		if set.Width > 16 { // it does not break far enough: the text of the document does
+			r.Plain, tall = c.Name, tall+lines(c.Name, 26)
+		} else {
+			r.Tree, tall = template.HTML(set.XML), tall+set.Height*0.8
 		}
 	}
+	out.full, out.fullHigh = r, high(tall)
 	return out
 }
 

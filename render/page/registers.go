@@ -12,26 +12,41 @@ import (
 	"quoin/render/equation"
 )
 
-// tallest is how high a part of a register or of checks may be, mm, so that it can
-// be cut between sheets.
+// tallest is how high a part of prose or of checks may be, mm, so that it can be
+// cut between sheets.
 const tallest = 110
 
-// chunked makes one item of every few rows.
-func chunked[T any](name string, rows []T, high func(T) float64, anchors func(T) []string) []item {
-	var out []item
-	for i := 0; i < len(rows); {
-		it := item{name: name, high: 10}
-		start := i
-		for ; i < len(rows) && (i == start || it.high < tallest); i++ {
-			it.high += high(rows[i]) + 2
-			if anchors != nil {
-				it.anchors = append(it.anchors, anchors(rows[i])...)
-			}
-		}
-		it.data = rows[start:i]
-		out = append(out, it)
+// headRow is how high the head of a table of a register is, mm; with a caption
+// above it, captioned.
+const (
+	headRow   = 10
+	captioned = headRow + 5
+)
+
+// chunked is a table, or a list, of rows that goes on from sheet to sheet; nothing
+// without rows.
+func chunked[T any](name string, head float64, rows []T, high func(T) float64, anchors func(T) []string) []item {
+	if len(rows) == 0 {
+		return nil
 	}
-	return out
+	it := item{name: name, data: rows, high: head}
+	heights := make([]float64, len(rows))
+	for i, r := range rows {
+		heights[i] = high(r) + 2
+		it.high += heights[i]
+		if anchors != nil {
+			it.anchors = append(it.anchors, anchors(r)...)
+		}
+	}
+	it.cut = func(room float64) (first, rest []item) {
+		n, used := 0, head
+		for n < len(rows) && used+heights[n] <= room {
+			used += heights[n]
+			n++
+		}
+		return chunked(name, head, rows[:n], high, anchors), chunked(name, head, rows[n:], high, anchors)
+	}
+	return []item{it}
 }
 
 // registers is what stands after the chapters, lettered.
@@ -51,10 +66,10 @@ func (b *book) registers() (out []item, toc []entry) {
 	if len(p.Footnotes) > 0 {
 		add("q-notes", "Notes", b.footnotes())
 	}
-	add("q-assumptions", "Assumptions", chunked("assumptions", p.Assumptions, func(a exhibit.Assumption) float64 {
+	add("q-assumptions", "Assumptions", chunked("assumptions", headRow, p.Assumptions, func(a exhibit.Assumption) float64 {
 		return 4.6 * max(lines(a.Text, 40), lines(a.Basis, 22))
 	}, nil))
-	notation := chunked("notation", b.notation(), func(rows []notationRow) float64 {
+	notation := chunked("notation", headRow, b.notation(), func(rows []notationRow) float64 {
 		high := 0.0
 		for _, n := range rows {
 			places := ""
@@ -80,7 +95,7 @@ func (b *book) registers() (out []item, toc []entry) {
 		refs = append(refs, item{name: "reference", data: v, high: 2 + 5*lines(r.Key+r.Text+strings.Join(r.Clauses, "; ")+"from memory, confirm", 85), anchors: []string{v.ID}})
 	}
 	add("q-references", "References", refs)
-	add("q-inputs", "Inputs", chunked("inputs", p.Inputs, func(i exhibit.Input) float64 { return 9.2 * lines(i.Path, 30) }, nil))
+	add("q-inputs", "Inputs", chunked("inputs", headRow, p.Inputs, func(i exhibit.Input) float64 { return 9.2 * lines(i.Path, 30) }, nil))
 	software := struct {
 		Tool, Units     string
 		Digits, Longest int
@@ -88,7 +103,7 @@ func (b *book) registers() (out []item, toc []entry) {
 	if p.System == quantity.US {
 		software.Units = "Shown in US customary units unless written otherwise"
 	}
-	add("q-software", "Software", []item{{name: "software", data: software, high: 96}})
+	add("q-software", "Software", []item{{name: "software", data: software, high: 102}})
 	add("q-cautions", "Limitations and caution", b.cautions())
 	return out, toc
 }
@@ -129,7 +144,7 @@ func (b *book) footnotes() []item {
 	for _, f := range b.p.Footnotes {
 		list = append(list, footnoteView{footnoteID(f.Index), footnoteBack(f.Index), f.Index, f.Body})
 	}
-	return chunked("footnotes", list, func(f footnoteView) float64 {
+	return chunked("footnotes", headRow, list, func(f footnoteView) float64 {
 		high := 0.0
 		for _, n := range f.Body {
 			high += proseHigh(n)

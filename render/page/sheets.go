@@ -2,6 +2,7 @@ package page
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	"quoin/calc/exhibit"
@@ -18,7 +19,13 @@ type item struct {
 	half    bool     // starts a sheet unless half of one is free: a chapter
 	anchors []string // what leads here
 	again   *item    // repeated where its block goes on on another sheet
+	// cut parts what can go on on another sheet: what stands in so much room, mm
+	// (nothing, if little would), and the rest. Nil where it is not cut.
+	cut func(room float64) (first, rest []item)
 }
+
+// least is the room, mm, below which nothing is cut to begin in it.
+const least = 45
 
 // headChars is how long a line of the head is; it shows two lines of a title.
 const headChars = 100
@@ -51,8 +58,10 @@ func (b *book) room() float64 {
 }
 
 // pack cuts items into sheets: in order, as many as fit, with what is kept
-// together on one sheet. What is higher than a sheet spills in print.
+// together on one sheet. What is higher than a sheet and not to be cut spills in
+// print.
 func pack(items []item, most float64) [][]item {
+	items = slices.Clone(items)
 	var out [][]item
 	var sheet []item
 	used := 0.0
@@ -69,10 +78,20 @@ func pack(items []item, most float64) [][]item {
 			high += items[j].high
 		}
 		// A run that no sheet holds starts here if half a sheet is free.
-		if items[i].fresh || items[i].half && used > most/2 || used+high > most && !(high > most && used < most/2) {
+		begins := items[j].cut != nil && most-used-high+items[j].high >= least
+		if items[i].fresh || items[i].half && used > most/2 || used+high > most && !begins && !(high > most && used < most/2) {
 			turn()
 			if again := items[i].again; again != nil {
 				sheet, used = append(sheet, *again), again.high
+			}
+		}
+		if room := most - used - high + items[j].high; used+high > most && items[j].cut != nil {
+			if first, rest := items[j].cut(room); len(first) > 0 && len(rest) > 0 {
+				sheet = append(append(sheet, items[i:j]...), first...)
+				turn()
+				items = slices.Insert(items[j+1:], 0, rest...)
+				i = 0
+				continue
 			}
 		}
 		sheet = append(sheet, items[i:j+1]...)
