@@ -145,7 +145,9 @@ func (a *assembly) block(s *section) *exhibit.Block {
 		b.Parts = append(b.Parts, exhibit.Part{Name: "checks", Items: []exhibit.Item{{Checks: rows}}})
 		a.p.Checks = append(a.p.Checks, rows...)
 		for _, c := range rows {
-			a.refs = append(a.refs, *c.Ref)
+			if c.Ref != nil {
+				a.refs = append(a.refs, *c.Ref)
+			}
 		}
 	}
 	a.p.Assumptions = append(a.p.Assumptions, a.anchored(res.Assumptions, b.Anchor)...)

@@ -113,7 +113,7 @@ func (g groundMotion) coefficient(T, r, ie float64) (limbs []Limb, cs, sa float6
 		}
 		limbs = append(limbs, Limb{Symbol: symbol, Name: name, Value: value, Applies: applies, Why: why, Ref: c.ref(clause)})
 	}
-	period := func(x float64) string { return quantity.Format(x, min(quantity.Digits, quantity.Exact(x))) + " s" }
+	period := func(x float64) string { return quantity.Short(x) + " s" }
 
 	if c.Spectrum != "" {
 		why, value := "the target is the two-period spectrum", 0.0
@@ -170,11 +170,11 @@ func (g groundMotion) coefficient(T, r, ie float64) (limbs []Limb, cs, sa float6
 	add("C_s_min", "least value", c.Minimum, max(0.044*g.sds*ie, 0.01), true, "always a lower limit; not below 0.01")
 	why := "the target states no S_1"
 	if g.s1Known {
-		if why = fmt.Sprintf("S_1 = %s is below 0.6", quantity.Format(g.s1, min(quantity.Digits, quantity.Exact(g.s1)))); g.s1 >= 0.6 {
+		if why = fmt.Sprintf("S_1 = %s is below 0.6", quantity.Short(g.s1)); g.s1 >= leastS1 {
 			why = strings.Replace(why, "below", "at least", 1)
 		}
 	}
-	add("C_s_min_1", "least value for S_1 of 0.6 or more", c.Least, 0.5*g.s1/d, g.s1Known && g.s1 >= 0.6, why)
+	add(LeastSymbol, "least value for S_1 of 0.6 or more", c.Least, 0.5*g.s1/d, g.s1Known && g.s1 >= leastS1, why)
 	limbs[len(limbs)-1].Unknown = !g.s1Known
 	for _, l := range limbs {
 		if math.IsInf(l.Value, 0) || math.IsNaN(l.Value) {
@@ -182,6 +182,31 @@ func (g groundMotion) coefficient(T, r, ie float64) (limbs []Limb, cs, sa float6
 		}
 	}
 	return limbs, govern(limbs), sa, nil
+}
+
+// LeastSymbol is that of the limb 0.5 S_1/(R/I_e), from S_1 = leastS1 on. Where it
+// governs the base shear that a modal combination is scaled to, drifts are scaled
+// too (7-16 12.9.1.4.2).
+const (
+	LeastSymbol = "C_s_min_1"
+	leastS1     = 0.6
+)
+
+// Governing is the symbol of the limb that governs C_s; "" where there is none.
+func (s *Static) Governing() string {
+	for _, l := range s.Limbs {
+		if l.Governs {
+			return l.Symbol
+		}
+	}
+	return ""
+}
+
+// IsLeast tells whether a base shear v, N, is 0.5 S_1/(R/I_e) times a weight, N, as
+// far as a number written with four digits tells.
+func IsLeast(t *standard.Target, v, weight, r, ie float64) bool {
+	s1, ok := t.Parameter("S_1")
+	return ok && s1.Value >= leastS1 && math.Abs(v/(0.5*s1.Value/(r/ie)*weight)-1) < 1e-3
 }
 
 // govern marks the limb that sets C_s and returns it: the least upper limit,

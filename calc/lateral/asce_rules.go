@@ -17,7 +17,7 @@ type Wall struct{ Length, Thickness float64 }
 var (
 	leastStorey  = map[string]float64{"ft": 10, "m": 3}
 	highestWalls = map[string]float64{"ft": 120, "m": 36.6}
-	wallFactor   = map[string]float64{"ft": 0.0019, "m": 0.00058} // C_q
+	wallFactor   = map[string]float64{"ft": 0.0019, "m": 0.0019 / 0.3048} // C_q; 7-16 prints 0.00058 m, which is 0.0019 times 0.3048 in place of over it
 )
 
 const mostStoreys = 12 // of moment frames
@@ -26,8 +26,6 @@ const mostStoreys = 12 // of moment frames
 func (s *Static) condition(text, state, clause string) {
 	s.Conditions = append(s.Conditions, standard.Condition{Text: text, State: state, Ref: clausesOf(s.Basis).ref(clause)})
 }
-
-func figures(x float64) string { return quantity.Format(x, min(4, quantity.Exact(x))) }
 
 // storeys is T_a = 0.1 N s (12.8.2.1), for up to 12 storeys above the base of an
 // average height of 10 ft (3 m) or more, that moment frames of steel or concrete
@@ -55,8 +53,8 @@ func (in ASCE) storeys(s *Static) error {
 	}
 	s.System, s.PeriodRule, s.Ta = row.Name, "storeys", 0.1*float64(n)
 	s.condition("T_a = 0.1 N: moment frames of steel or concrete alone resist the forces", "stated by the author: "+row.Name, c.Storeys)
-	s.condition("T_a = 0.1 N: no more than 12 storeys above the base", "met: "+figures(float64(n)), c.Storeys)
-	s.condition("T_a = 0.1 N: an average storey height of at least "+figures(least)+" "+s.HeightUnit, "met: "+figures(mean)+" "+s.HeightUnit, c.Storeys)
+	s.condition("T_a = 0.1 N: no more than 12 storeys above the base", "met: "+quantity.Short(float64(n)), c.Storeys)
+	s.condition("T_a = 0.1 N: an average storey height of at least "+quantity.Short(least)+" "+s.HeightUnit, "met: "+quantity.Short(mean)+" "+s.HeightUnit, c.Storeys)
 	return nil
 }
 
@@ -101,7 +99,7 @@ func (in ASCE) walls(s *Static) error {
 		return problem("walls", "are their units right?", "the walls give no finite period")
 	}
 	s.condition("T_a by walls: shear walls of masonry or concrete", "stated by the author", c.Walls)
-	s.condition("T_a by walls: h_n of no more than "+figures(highest)+" "+s.HeightUnit, "met: "+figures(hn)+" "+s.HeightUnit, c.Walls)
+	s.condition("T_a by walls: h_n of no more than "+quantity.Short(highest)+" "+s.HeightUnit, "met: "+quantity.Short(hn)+" "+s.HeightUnit, c.Walls)
 	return nil
 }
 
@@ -135,18 +133,18 @@ func (in ASCE) permit(s *Static) {
 	}
 	n := len(s.Levels)
 	low := n <= 2 && (risk == "I" || risk == "II")
-	height := figures(quantity.MustUnit(s.HeightUnit).From(s.Hn)) + " " + s.HeightUnit
+	height := quantity.Short(quantity.MustUnit(s.HeightUnit).From(s.Hn)) + " " + s.HeightUnit
 	short := !beyond(s.Hn, tallest)
 	limit := 3.5 * s.SD1 / s.SDS
 	quick := s.T < limit
-	period := figures(s.T) + " s against " + figures(limit) + " s"
+	period := quantity.Short(s.T) + " s against " + quantity.Short(limit) + " s"
 	said := map[string]string{"": "not stated by the author", "yes": "stated by the author: none", "listed": "stated by the author: only those that the table lists", "no": "stated by the author: others than those that the table lists"}[in.Regular]
 	category = map[bool]string{true: "D", false: category}[category == ""]
 	if category >= "D" {
 		if risk == "" {
 			asks("or: risk category I or II and no more than 2 storeys above the base", "not shown: the risk category is not stated")
 		} else {
-			asks("or: risk category I or II and no more than 2 storeys above the base", yes(low, risk+", "+figures(float64(n))))
+			asks("or: risk category I or II and no more than 2 storeys above the base", yes(low, risk+", "+quantity.Short(float64(n))))
 		}
 		asks("or: no irregularity of 12.3.2, and either h_n up to 160 ft (48.8 m) or T below 3.5 T_S; or only horizontal irregularities of types 2 to 5 and vertical ones of types 4, 5a, 5b, and h_n up to 160 ft", "each below")
 		asks("irregularities", said)
@@ -173,15 +171,15 @@ func (in ASCE) capped(s *Static, g *groundMotion) error {
 	site, risk := text("site"), text("risk")
 	stated := func(x string) string { return map[bool]string{true: "not stated", false: x}[x == ""] }
 	regular := map[string]string{"yes": "none, stated by the author", "listed": "some", "no": "some"}[in.Regular]
-	rho := map[bool]string{true: "not stated", false: figures(in.Rho)}[in.Rho == 0]
+	rho := map[bool]string{true: "not stated", false: quantity.Short(in.Rho)}[in.Rho == 0]
 	var missing string
 	for _, c := range []struct {
 		text, state string
 		met         bool
 	}{
 		{"no irregularity of 12.3.2", stated(regular), in.Regular == "yes"},
-		{"no more than five storeys", figures(float64(len(s.Levels))), len(s.Levels) <= 5},
-		{"T of no more than 0.5 s", figures(s.T) + " s", !beyond(s.T, 0.5)},
+		{"no more than five storeys", quantity.Short(float64(len(s.Levels))), len(s.Levels) <= 5},
+		{"T of no more than 0.5 s", quantity.Short(s.T) + " s", !beyond(s.T, 0.5)},
 		{"redundancy factor of 1.0", rho, in.Rho == 1},
 		{"site class neither E nor F, and determined", stated(site), site != "" && site != "E" && site != "F" && site != "default"},
 		{"risk category I or II", stated(risk), risk == "I" || risk == "II"},

@@ -81,12 +81,6 @@ func (e *DriftError) Error() string { return e.Symbol + ": " + e.Problem }
 // are left out (ASCE/SEI 7-22 12.8.7; EN 1998-1:2004 4.4.2.2(2)).
 const DriftThreshold = 0.10
 
-// rounding is the relative difference up to which two numbers count as equal.
-const rounding = 1e-12
-
-// over tells whether a lies above b by more than rounding.
-func over(a, b float64) bool { return a > b*(1+rounding) }
-
 // Drifts amplifies elastic drifts, finds stability coefficients and limits:
 //
 //	FirstOrder = Factor * Elastic           Factor = C_d/I_e, or q_d
@@ -119,7 +113,7 @@ func Drifts(in DriftInput) (*Drift, error) {
 				return nil, &DriftError{Symbol: "P", Item: i, Problem: fmt.Sprintf("storey %s has no equilibrium: theta is %.3g, and at 1 the gravity load alone moves it", in.Levels[i], theta),
 					Hint: "is P the load at and above each level, and the stiffness in the right unit?"}
 			}
-			if over(theta, DriftThreshold) {
+			if beyond(theta, DriftThreshold) {
 				second = 1 / (1 - theta)
 			}
 			d.Theta, d.ThetaLimit = append(d.Theta, theta), append(d.ThetaLimit, rule.thetaLimit(in, i))

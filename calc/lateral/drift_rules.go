@@ -127,11 +127,11 @@ func (d *Drift) warn(in DriftInput, rule driftRule) {
 	var second, analysis, unstable []string
 	for i, theta := range d.Theta {
 		switch name := fmt.Sprintf("%s (%.3f)", d.Levels[i], theta); {
-		case over(theta, d.ThetaLimit[i]):
+		case beyond(theta, d.ThetaLimit[i]):
 			unstable = append(unstable, name)
-		case rule.approx > 0 && over(theta, rule.approx):
+		case rule.approx > 0 && beyond(theta, rule.approx):
 			analysis = append(analysis, name)
-		case over(theta, DriftThreshold):
+		case beyond(theta, DriftThreshold):
 			second = append(second, name)
 		}
 	}

@@ -193,14 +193,16 @@ func (in EN1998) displacement(s *Static) error {
 
 // permit says what 4.3.3.2.1(2) asks and how it stands.
 func (in EN1998) permit(s *Static) {
-	state := func(limit float64) string { return "met: " + figures(s.T) + " s against " + figures(limit) + " s" }
+	state := func(limit float64) string {
+		return "met: " + quantity.Short(s.T) + " s against " + quantity.Short(limit) + " s"
+	}
 	add := func(text, state, clause string) {
 		s.Conditions = append(s.Conditions, standard.Condition{Text: text, State: state, Ref: EN(clause)})
 	}
 	add("T_1 of no more than 4 T_C", state(4*s.TC), "4.3.3.2.1(2)a")
 	add("T_1 of no more than 2 s", state(2), "4.3.3.2.1(2)a")
 	if s.PeriodRule == "C_t" {
-		add("T_1 by C_t: a height of no more than 40 m", "met: "+figures(s.Hn)+" m", "4.3.3.2.2(3)")
+		add("T_1 by C_t: a height of no more than 40 m", "met: "+quantity.Short(s.Hn)+" m", "4.3.3.2.2(3)")
 	}
 	s.Permitted = "permitted"
 	if in.Regular == "" {

@@ -172,8 +172,8 @@ func (s *Static) check(m *structure.Model) {
 	add := func(name string, residual, limit float64) {
 		s.Checks = append(s.Checks, Check{name, residual, limit})
 	}
-	add("the forces add up to V", apart(s.Sums.F, s.V), 1e-12)
-	add("the shares of the levels add up to 1", apart(s.Sums.Cv, 1), 1e-12)
+	add("the forces add up to V", differ(s.Sums.F, s.V), 1e-12)
+	add("the shares of the levels add up to 1", differ(s.Sums.Cv, 1), 1e-12)
 
 	// every moment from the forces above and their arms
 	worst := 0.0
@@ -182,7 +182,7 @@ func (s *Static) check(m *structure.Model) {
 		for j := i; j < len(s.F); j++ {
 			arm += s.F[j] * (s.H[j] - s.foot(i))
 		}
-		worst = max(worst, apart(arm, s.Moment[i]))
+		worst = max(worst, differ(arm, s.Moment[i]))
 	}
 	add("moments of the forces about the foot of each storey equal the sums of shear times height", worst, 1e-12)
 
@@ -199,7 +199,7 @@ func (s *Static) check(m *structure.Model) {
 		energy += r * s.Displacement[i]
 	}
 	add("stiffness times displacement gives the forces back", off/scale, 1e-9)
-	add("work of the forces equals twice the strain energy", apart(energy, work), 1e-9)
+	add("work of the forces equals twice the strain energy", differ(energy, work), 1e-9)
 	if len(m.Ks) == len(s.Drift) {
 		worst = 0
 		for i, k := range m.Ks {
@@ -211,14 +211,6 @@ func (s *Static) check(m *structure.Model) {
 
 // beyond tells whether a lies above b by more than rounding.
 func beyond(a, b float64) bool { return a > b*(1+1e-12) }
-
-// apart is how far a lies from b, in parts of b.
-func apart(a, b float64) float64 {
-	if a == b {
-		return 0
-	}
-	return math.Abs((a - b) / b)
-}
 
 func sum(x []float64) float64 {
 	total := 0.0

@@ -46,6 +46,15 @@ type Combined struct {
 	Basis    string
 	R, Ie, Q float64
 
+	// Limb is the symbol of the limb of C_s that governs the static base shear that
+	// forces are scaled to, "C_s_min_1" for 0.5 S_1/(R/I_e); "" where it is not
+	// known. Set by the caller.
+	Limb string
+	// Unraised: the static procedure is designed for up to 1.5 times the spectrum that
+	// was read (exception 2 to ASCE/SEI 7-16 11.4.8). Set by the caller.
+	Unraised bool
+
+	LevelMass []float64   // mass at each level, kg
 	T         []float64   // periods of the modes used, s
 	Damping   []float64   // ratio of each mode
 	PSA       []float64   // spectral ordinate of each mode, m/s², not divided
@@ -95,7 +104,7 @@ func Combine(modes *Modes, psa, damping []float64, rule Rule, divisor float64) (
 	}
 	m := modes.Model
 	c := &Combined{
-		Rule: rule, Divisor: divisor, Levels: m.Levels, H: m.H, Hs: m.Hs,
+		Rule: rule, Divisor: divisor, Levels: m.Levels, H: m.H, Hs: m.Hs, LevelMass: m.Mass,
 		T: modes.T, Damping: z, PSA: psa, Gamma: modes.Gamma, MassRatio: modes.MassRatio,
 		MassSum: modes.MassSum[modes.Count()-1], LeftOut: modes.leftOut(),
 	}

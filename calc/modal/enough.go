@@ -106,6 +106,9 @@ func (c *Combined) judge() {
 		warn("residual-amplified", "the residual takes as rigid what is not: the spectrum amplifies %d of the modes left out, to as much as %.2f times the zero-period acceleration at T = %.3g s: use %d modes, or a zpa that holds for them",
 			res.Amplified, res.Peak/res.ZPA, res.PeakT, len(c.T)+res.Last)
 	}
+	if res := c.Residual; res != nil && res.Unjudged > 0 {
+		warn("residual-unjudged", "whether the residual takes as rigid what is not could not be judged: the spectrum has no ordinate at the periods of %d of the modes left out", res.Unjudged)
+	}
 	if c.Rule != SRSS {
 		return
 	}

@@ -19,6 +19,9 @@ type Residual struct {
 	// ordinate among them, m/s², at the period PeakT.
 	Amplified, Last int
 	Peak, PeakT     float64
+	// Unjudged counts those that hold mass worth counting and whose ordinate is not
+	// known.
+	Unjudged int
 }
 
 // A mode left out is amplified from amplified times the ZPA on, and counts from
@@ -40,8 +43,8 @@ const (
 // rev. 2 and 3, from memory; there the rigid parts of modes below the zero-period
 // frequency may be added to Rr with their signs, which is not done here).
 //
-// left are the ordinates of the spectrum at the periods of modes.Left, m/s², by
-// which the reader is warned where a mode left out is not rigid. It needs the
+// left are the ordinates of the spectrum at the periods of modes.Left, m/s², NaN
+// where it has none, by which the reader is warned where a mode left out is not rigid. It needs the
 // stiffness of the structure, a result not scaled yet, and a finite zpa > 0.
 func (c *Combined) WithResidual(modes *Modes, zpa float64, left []float64) (*Combined, error) {
 	m := modes.Model
@@ -58,6 +61,10 @@ func (c *Combined) WithResidual(modes *Modes, zpa float64, left []float64) (*Com
 	res := &Residual{ZPA: zpa, Vector: missing(modes)}
 	for i, o := range modes.Left {
 		if o.MassRatio < countable || left[i] <= amplified*zpa {
+			continue
+		}
+		if math.IsNaN(left[i]) {
+			res.Unjudged++
 			continue
 		}
 		res.Amplified, res.Last = res.Amplified+1, i+1

@@ -29,18 +29,13 @@ func (c *Combined) StoreyStiffness() (k []float64, ok bool) {
 	return k, true
 }
 
-// Mass is the total mass of the model, kg, found back from the effective mass of
-// the mode that holds most of it: base shear = effective mass * PSA/Divisor. It is
-// 0 where that mode is not excited.
-func (c *Combined) Mass() float64 {
-	most := 0
-	for i, r := range c.MassRatio {
-		if r > c.MassRatio[most] {
-			most = i
-		}
+// MassAbove is the mass at and above each level, kg.
+func (c *Combined) MassAbove() []float64 {
+	out := make([]float64, len(c.LevelMass))
+	above := 0.0
+	for i := len(out) - 1; i >= 0; i-- {
+		above += c.LevelMass[i]
+		out[i] = above
 	}
-	if c.PSA[most] == 0 || c.MassRatio[most] == 0 {
-		return 0
-	}
-	return math.Abs(c.BaseShear.Modal[most][0]) / c.ScaleFactor * c.Divisor / c.PSA[most] / c.MassRatio[most]
+	return out
 }

@@ -56,6 +56,10 @@ func decimal(a float64, sig int) (text string, power int) {
 	return text, 0
 }
 
+// Short is a number in a sentence: Digits significant digits, or fewer where they
+// show it exactly: 8, 0.05, 0.6667.
+func Short(x float64) string { return Format(x, min(Digits, Exact(x))) }
+
 // Rounded is the number that Format shows, for proving that shown numbers agree.
 func Rounded(x float64, sig int) float64 {
 	if x == 0 || math.IsInf(x, 0) || math.IsNaN(x) {

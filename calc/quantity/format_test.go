@@ -123,3 +123,12 @@ func TestExact(t *testing.T) {
 		}
 	}
 }
+
+// TestShort: a number that few digits show exactly has no more.
+func TestShort(t *testing.T) {
+	for x, want := range map[float64]string{8: "8", 0.05: "0.05", 2.0 / 3: "0.6667", 1234567: "1\u202f234\u202f567", 0: "0", 1.25: "1.25"} {
+		if got := Short(x); got != want {
+			t.Errorf("%v is short %q, want %q", x, got, want)
+		}
+	}
+}

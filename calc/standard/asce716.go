@@ -133,13 +133,13 @@ func (w ways716) raise(in Given, all map[string]found, p *problems) (warnings []
 			}
 		case ok && !w.study && !near(m.value, byTable, agree):
 			warnings = append(warnings, Warning{"site-coefficient", fmt.Sprintf("%s = %s follows from what is given; %s, the site class and %s would give %s",
-				x.mce, shown(m.value), x.mapped, x.table.clause, shown(byTable)), of716(x.table.clause)})
+				x.mce, quantity.Short(m.value), x.mapped, x.table.clause, quantity.Short(byTable)), of716(x.table.clause)})
 		}
 		all[x.mce], all[x.des] = m, d
 	}
 	if m, long := all["S_MS"], all["S_M1"]; m.value > 0 && m.value < long.value {
 		warnings = append(warnings, Warning{"short-below-long", fmt.Sprintf("S_MS = %s is less than S_M1 = %s; the 2018 IBC takes S_MS not less than S_M1 except for the design category, which is not done here: where that code governs, give S_MS",
-			shown(m.value), shown(long.value)), cite.To("2018 IBC", "1613.2.3")})
+			quantity.Short(m.value), quantity.Short(long.value)), cite.To("2018 IBC", "1613.2.3")})
 	}
 	return warnings
 }
@@ -171,7 +171,7 @@ func (w ways716) coefficients(in Given, t siteTable, mapped string, direct bool,
 	}
 	if hasF {
 		if ok && !near(f.value, given, agree) {
-			f.doc = fmt.Sprintf("%s as given; %s has %s", tableWords[t.symbol], t.clause, shown(f.value))
+			f.doc = fmt.Sprintf("%s as given; %s has %s", tableWords[t.symbol], t.clause, quantity.Short(f.value))
 		} else {
 			f.doc = tableWords[t.symbol] + " as given"
 		}
@@ -179,7 +179,7 @@ func (w ways716) coefficients(in Given, t siteTable, mapped string, direct bool,
 		return f, s, true
 	}
 	if !ok && !direct && w.site.class != "F" { // F is refused as a whole
-		p.fail("site", "give S_DS and S_D1 from a study with  site_specific: study, or claim exception 1 with  site_specific: exception", "%s has no value for site class %s at %s = %s; 11.4.8 asks for a site-specific study", t.clause, w.site.word, mapped, shown(s))
+		p.fail("site", "give S_DS and S_D1 from a study with  site_specific: study, or claim exception 1 with  site_specific: exception", "%s has no value for site class %s at %s = %s; 11.4.8 asks for a site-specific study", t.clause, w.site.word, mapped, quantity.Short(s))
 	}
 	return f, s, ok
 }

@@ -35,6 +35,19 @@ var sites722 = []struct {
 	from, to float64
 }{{"A", 5000, 0}, {"B", 3000, 5000}, {"BC", 2100, 3000}, {"C", 1450, 2100}, {"CD", 1000, 1450}, {"D", 700, 1000}, {"DE", 500, 700}, {"E", 0, 500}}
 
+const foot = 0.3048 // m
+
+// siteOf722 is the site class of a shear wave velocity, m/s; a velocity on a limit is
+// of the softer class.
+func siteOf722(v float64) string {
+	for _, s := range sites722 {
+		if above(v, s.from*foot) {
+			return s.class
+		}
+	}
+	return "E"
+}
+
 var params722 = []ParameterDoc{
 	{Symbol: "S_S", Kind: Number, Doc: "mapped MCE_R acceleration at short periods, in g (for the design category)", Zero: true, Ref: of722("11.4.2")},
 	{Symbol: "S_1", Kind: Number, Doc: "mapped MCE_R acceleration at 1 s, in g (for the design category and base shear)", Zero: true, Ref: of722("11.4.2")},
@@ -121,7 +134,7 @@ func warn722(in Given, multi bool) []Warning {
 			Ref:  cite.To("ASCE/SEI article on 7-22 ground motions", ""),
 		})
 	} else if tl := in.Numbers["T_L"]; tl < 10 {
-		all = append(all, Warning{"long-period", fmt.Sprintf("T_L = %s s lies below 10 s: beyond 10 s the ordinates fall with (10 s/T)² from the last one, without the step down that 10 T_L/T² would make there", shown(tl)), of722("11.4.5.1")})
+		all = append(all, Warning{"long-period", fmt.Sprintf("T_L = %s s lies below 10 s: beyond 10 s the ordinates fall with (10 s/T)² from the last one, without the step down that 10 T_L/T² would make there", quantity.Short(tl)), of722("11.4.5.1")})
 	}
 	if in.Texts["site"] == "F" {
 		all = append(all, Warning{"site-class-f", "site class F needs a site-specific ground motion procedure", of722("11.4.7")})

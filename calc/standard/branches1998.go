@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"quoin/calc/cite"
+	"quoin/calc/quantity"
 )
 
 // elasticBranches are the branches of the elastic spectrum:
@@ -73,7 +74,7 @@ func (b *site1998) designBranches(t *Target) []Branch {
 		b.all["d_g"] = b.displacement()
 	}
 	if beta*ag > 2.5/q*ag*s {
-		b.fail("q", "see q and beta", "the lower bound beta = %s lies above the whole spectrum, 2.5 S/q = %s", shown(beta), shown(2.5*s/q))
+		b.fail("q", "see q and beta", "the lower bound beta = %s lies above the whole spectrum, 2.5 S/q = %s", quantity.Short(beta), quantity.Short(2.5*s/q))
 		return nil
 	}
 	main := b.four(ag*s, 2.5/q, 2.0/3, ground, "2.5 / q", "2 / 3", [4]string{"Eq. 3.13", "Eq. 3.14", "Eq. 3.15", "Eq. 3.16"})

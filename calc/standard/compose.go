@@ -8,7 +8,6 @@ import (
 	"strconv"
 
 	"quoin/calc/cite"
-	"quoin/calc/quantity"
 )
 
 // problems collects what is wrong with parameters.
@@ -132,8 +131,8 @@ func near(a, b, tolerance float64) bool {
 	return math.Abs(a-b) <= tolerance*max(math.Abs(a), math.Abs(b))
 }
 
+// above tells whether a lies above b by more than rounding.
+func above(a, b float64) bool { return a > b*(1+1e-12) }
+
 // written is a number in a formula, without the noise of binary fractions.
 func written(x float64) string { return strconv.FormatFloat(x, 'g', 12, 64) }
-
-// shown is a number in a message.
-func shown(x float64) string { return quantity.Format(x, min(4, quantity.Exact(x))) }

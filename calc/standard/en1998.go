@@ -183,7 +183,7 @@ func (b *site1998) national(symbol string, recommended float64, known bool, fiel
 	value, given := b.number(symbol)
 	switch {
 	case given && known && value != recommended:
-		b.all[symbol] = found{value: value, doc: doc + " (national value; recommended: " + shown(recommended) + ")"}
+		b.all[symbol] = found{value: value, doc: doc + " (national value; recommended: " + quantity.Short(recommended) + ")"}
 	case given && known:
 		b.all[symbol] = found{value: value, doc: doc + " (recommended value)"}
 	case given:
@@ -243,19 +243,19 @@ func (b *site1998) ground() {
 	case len(b.problems.all) > 0:
 		return
 	case tc < tb:
-		b.fail("T_C", "", "%s s lies below T_B = %s s", shown(tc), shown(tb))
+		b.fail("T_C", "", "%s s lies below T_B = %s s", quantity.Short(tc), quantity.Short(tb))
 	case td < tc:
-		b.fail("T_D", "", "%s s lies below T_C = %s s", shown(td), shown(tc))
+		b.fail("T_D", "", "%s s lies below T_C = %s s", quantity.Short(td), quantity.Short(tc))
 	}
 	if e, ok := b.all["T_E"]; ok {
 		if e.value < td {
-			b.fail("T_E", "", "%s s lies below T_D = %s s", shown(e.value), shown(td))
+			b.fail("T_E", "", "%s s lies below T_D = %s s", quantity.Short(e.value), quantity.Short(td))
 		}
 		if f := b.value("T_F"); !(f > e.value) {
-			b.fail("T_F", "", "%s s does not lie above T_E = %s s", shown(f), shown(e.value))
+			b.fail("T_F", "", "%s s does not lie above T_E = %s s", quantity.Short(f), quantity.Short(e.value))
 		}
 	} else if !b.design && td >= 4 {
-		b.fail("T_D", "", "%s s: the spectrum ends at 4 s, and T_D lies below", shown(td))
+		b.fail("T_D", "", "%s s: the spectrum ends at 4 s, and T_D lies below", quantity.Short(td))
 	}
 }
 
@@ -290,12 +290,12 @@ func (b *site1998) damping() {
 func (b *site1998) warnings() []Warning {
 	var all []Warning
 	if q := b.value("q"); b.vertical && q > 1.5 {
-		all = append(all, Warning{"vertical-q", "q = " + shown(q) + " in a vertical design spectrum: values above 1.5 must be justified by analysis", ofEN("3.2.2.5(6)")})
+		all = append(all, Warning{"vertical-q", "q = " + quantity.Short(q) + " in a vertical design spectrum: values above 1.5 must be justified by analysis", ofEN("3.2.2.5(6)")})
 	} else if q > 0 && q < 1 {
-		all = append(all, Warning{"low-q", "q = " + shown(q) + " lies below 1: the design spectrum is larger than the elastic one", ofEN("3.2.2.5")})
+		all = append(all, Warning{"low-q", "q = " + quantity.Short(q) + " lies below 1: the design spectrum is larger than the elastic one", ofEN("3.2.2.5")})
 	}
 	if ag := b.value("a_g") / quantity.Gravity; ag > 1.5 {
-		all = append(all, Warning{"large-value", "a_g = " + shown(ag) + " g is very large: was it given in another unit?", cite.Ref{}})
+		all = append(all, Warning{"large-value", "a_g = " + quantity.Short(ag) + " g is very large: was it given in another unit?", cite.Ref{}})
 	}
 	return all
 }

@@ -161,13 +161,35 @@ func TestMultiPeriodRefusals(t *testing.T) {
 	}
 }
 
+// TestSiteOfVelocity: a velocity on a limit is of the softer class, in whatever unit
+// it was written, and a class that it does not belong to is refused.
+func TestSiteOfVelocity(t *testing.T) {
+	for feet, want := range map[float64][2]string{5000: {"B", "A"}, 3000: {"BC", "B"}, 2100: {"C", "BC"}, 1450: {"CD", "C"}, 1000: {"D", "CD"}, 700: {"DE", "D"}, 500: {"E", "DE"}} {
+		for _, v := range []float64{feet * foot, math.Nextafter(feet*foot, 0), math.Nextafter(feet*foot, 1e4)} {
+			if got := siteOf722(v); got != want[0] {
+				t.Errorf("%v ft/s (%v m/s) is of class %s, want %s", feet, v, got, want[0])
+			}
+		}
+		if got := siteOf722(feet * foot * 1.0001); got != want[1] {
+			t.Errorf("above %v ft/s: class %s, want %s", feet, got, want[1])
+		}
+		for i, site := range want {
+			var p problems
+			siteWindow(Given{Numbers: map[string]float64{"vs30": feet * foot}, Texts: map[string]string{"site": site}}, &p)
+			if refused := len(p.all) == 1 && Problems(p.err())[0].Symbol == "vs30"; refused != (i == 1) {
+				t.Errorf("%v ft/s with class %s: %v", feet, site, p.all)
+			}
+		}
+	}
+}
+
 // TestWindow: the range of periods for S_D1 follows from the ground.
 func TestWindow(t *testing.T) {
 	for _, c := range []struct {
 		site string
 		vs30 float64
 		want float64
-	}{{"C", 0, 2}, {"BC", 0, 2}, {"A", 0, 2}, {"CD", 0, 5}, {"D", 0, 5}, {"E", 0, 5}, {"default", 0, 5}, {"F", 0, 5}, {"", 443, 2}, {"", 441, 5}, {"D", 250, 5}, {"C", 442, 2}, {"", 0, 0}} {
+	}{{"C", 0, 2}, {"BC", 0, 2}, {"A", 0, 2}, {"CD", 0, 5}, {"D", 0, 5}, {"E", 0, 5}, {"default", 0, 5}, {"F", 0, 5}, {"", 443, 2}, {"", 441, 5}, {"D", 250, 5}, {"C", 442, 2}, {"", 1450 * foot, 5}, {"CD", 1450 * foot, 5}, {"CD", 441.96000000000004, 5}, {"", 441.96000000000004, 5}, {"F", 500, 2}, {"", 0, 0}} {
 		in := Given{Numbers: map[string]float64{}, Texts: map[string]string{}}
 		if c.site != "" {
 			in.Texts["site"] = c.site

@@ -81,24 +81,18 @@ type window struct {
 // siteWindow follows from the shear wave velocity or the site class: 1 s to 2 s
 // on ground faster than 1450 ft/s, else to 5 s. It holds the two to each other.
 func siteWindow(in Given, p *problems) window {
-	const foot = 0.3048
 	site, hasSite := in.Texts["site"]
 	v, hasV := in.number("vs30")
-	ranked := map[string][2]float64{}
-	of := ""
+	slowest := map[string]float64{}
 	for _, s := range sites722 {
-		ranked[s.class] = [2]float64{s.from * foot, s.to * foot}
-		if of == "" && v > s.from*foot {
-			of = s.class
-		}
+		slowest[s.class] = s.from * foot
 	}
-	limits, ok := ranked[site]
-	const slack = 1e-3 // limits are rounded when written in m/s
-	if hasV && ok && (v < limits[0]*(1-slack) || limits[1] > 0 && v > limits[1]*(1+slack)) {
-		p.fail("vs30", "give one of the two", "%s m/s is of site class %s, not %s", shown(v), of, site)
+	from, ranked := slowest[site]
+	if of := siteOf722(v); hasV && ranked && of != site {
+		p.fail("vs30", "give one of the two", "%s m/s is of site class %s, not %s", quantity.Short(v), of, site)
 	}
 	switch {
-	case hasV && v > 1450*foot:
+	case hasV && above(v, 1450*foot):
 		return window{2, "v_s30 above 442 m/s"}
 	case hasV:
 		return window{5, "v_s30 up to 442 m/s"}
@@ -108,7 +102,7 @@ func siteWindow(in Given, p *problems) window {
 		return window{5, "site class F"}
 	case site == "default":
 		return window{5, "the default site class, which stands for C, CD and D: the longer range"}
-	case limits[0] >= 1450*foot:
+	case from >= 1450*foot:
 		return window{2, "site class " + site}
 	}
 	return window{5, "site class " + site}
@@ -156,7 +150,7 @@ func (w window) parameters(in Given, sa []float64, all map[string]found, p *prob
 			if _, ok := in.number(x.des); !ok {
 				symbol = x.mce
 			}
-			p.fail(symbol, "leave it away, or see whether the ordinates are of this site", "%s = %s does not agree with the ordinates, which give %s", x.des, shown(g.value), shown(d.value))
+			p.fail(symbol, "leave it away, or see whether the ordinates are of this site", "%s = %s does not agree with the ordinates, which give %s", x.des, quantity.Short(g.value), quantity.Short(d.value))
 		}
 		all[x.des], all[x.mce] = g, m
 	}

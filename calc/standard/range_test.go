@@ -40,6 +40,24 @@ func TestRangesOfMaxima(t *testing.T) {
 	}
 }
 
+// TestEndsOfATable: a period outside by rounding alone is read at the end, and one
+// outside by more is refused.
+func TestEndsOfATable(t *testing.T) {
+	const first, last = 0.1, 1.3682434248083695
+	target, err := Table([]float64{first, last}, []float64{2, 5}, 0.05)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range []struct {
+		T, want float64 // 0: refused
+	}{{1.3682434248083697, 5}, {last * (1 + 5e-13), 5}, {last * (1 + 5e-12), 0}, {first * (1 - 5e-13), 2}, {first * (1 - 5e-12), 0}} {
+		got, err := target.PSA(c.T)
+		if (err != nil) != (c.want == 0) || err == nil && !near(got, c.want, 1e-11) {
+			t.Errorf("PSA(%v s) = %v, %v, want %v", c.T, got, err, c.want)
+		}
+	}
+}
+
 // TestDisplacementPeriods: T_E and T_F of EN 1998-1 Table A.1 for every ground.
 func TestDisplacementPeriods(t *testing.T) {
 	for ground, want := range map[string]float64{"A": 4.5, "B": 5, "C": 6, "D": 6, "E": 6} {

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"quoin/calc/cite"
+	"quoin/calc/quantity"
 )
 
 // siteTable is a table of ASCE/SEI 7-16 by site class: straight lines between
@@ -55,7 +56,7 @@ func (t siteTable) at(class string, x float64) (f found, ok bool) {
 		return f, false
 	}
 	f.ref = of716(t.clause)
-	f.doc = fmt.Sprintf("%s for site class %s at %s = %s", tableWords[t.symbol], class, t.over, shown(x))
+	f.doc = fmt.Sprintf("%s for site class %s at %s = %s", tableWords[t.symbol], class, t.over, quantity.Short(x))
 	n := len(row) - 1
 	switch {
 	case x <= t.columns[0]:
@@ -79,7 +80,7 @@ func (t siteTable) at(class string, x float64) (f found, ok bool) {
 		f.value = z
 	default:
 		f.value = y + (x-a)/(b-a)*(z-y)
-		f.formula = fmt.Sprintf("%s + (%s - %s) * (%s - %s) / (%s - %s)", shown(y), shown(z), shown(y), t.over, shown(a), shown(b), shown(a))
+		f.formula = fmt.Sprintf("%s + (%s - %s) * (%s - %s) / (%s - %s)", quantity.Short(y), quantity.Short(z), quantity.Short(y), t.over, quantity.Short(a), quantity.Short(b), quantity.Short(a))
 	}
 	return f, true
 }
@@ -125,7 +126,7 @@ func (s site716) coefficient(t siteTable, x float64, claimed bool) (f found, ok 
 		if f.value < 1.2 {
 			inner := f.formula
 			if inner == "" {
-				inner = shown(f.value)
+				inner = quantity.Short(f.value)
 			}
 			f.value, f.formula = 1.2, "max("+inner+", 1.2)"
 		}

@@ -134,12 +134,25 @@ func (t *Target) BranchAt(T float64) (Branch, error) {
 	if math.IsNaN(T) || math.IsInf(T, 0) || T < 0 {
 		return Branch{}, fmt.Errorf("a spectrum is read at a finite period from 0 up, not at %v s", T)
 	}
+	T = t.settled(T)
 	from, to := t.Range()
 	if T < from || T > to {
 		return Branch{}, fmt.Errorf("period %s s lies outside the spectrum, which runs from %.6g s to %.6g s", outside(T, from, to), from, to)
 	}
 	i := slices.IndexFunc(t.Branches, func(b Branch) bool { return b.To == 0 || T <= b.To })
 	return t.Branches[i], nil
+}
+
+// settled is a period that lies outside by rounding alone, put on the end.
+func (t *Target) settled(T float64) float64 {
+	from, to := t.Range()
+	switch {
+	case T < from && !above(from, T):
+		return from
+	case T > to && !above(T, to):
+		return to
+	}
+	return T
 }
 
 // Range is the first and the last period of the spectrum, s; the last is
@@ -163,6 +176,14 @@ func (t *Target) Series(periods []float64) ([]float64, error) {
 		out[i] = y
 	}
 	return out, nil
+}
+
+// RaisesCs tells whether a structure of period T, s, is designed for more than the
+// ordinates say: exception 2 to ASCE/SEI 7-16 11.4.8 raises C_s from T_S on and
+// leaves the spectrum as it is.
+func (t *Target) RaisesCs(T float64) bool {
+	i := slices.IndexFunc(t.Corners, func(c Corner) bool { return c.Symbol == "T_S" })
+	return t.Exception == 2 && (i < 0 || T > t.Corners[i].T)
 }
 
 // Parameter returns the parameter with this symbol.

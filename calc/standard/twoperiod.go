@@ -29,7 +29,7 @@ func (in Given) pair(p *problems, mce, des string) (m, d found, ok bool) {
 	case !hasD:
 		d = found{value: 2 * sm / 3, formula: "2 / 3 * " + mce}
 	case !near(2*sm/3, sd, agree):
-		p.fail(des, "give one of the two", "%s does not agree with 2/3 %s = %s", shown(sd), mce, shown(2*sm/3))
+		p.fail(des, "give one of the two", "%s does not agree with 2/3 %s = %s", quantity.Short(sd), mce, quantity.Short(2*sm/3))
 	}
 	return m, d, true
 }
@@ -67,7 +67,7 @@ func twoPeriod(sds, sd1, tl, factor float64, times string, clauses [4]cite.Ref) 
 // late refuses a T_L below T_S.
 func late(p *problems, in Given, ts float64) {
 	if tl, ok := in.number("T_L"); ok && !(tl >= ts) {
-		p.fail("T_L", "", "%s s lies below T_S = S_D1/S_DS = %s s", shown(tl), shown(ts))
+		p.fail("T_L", "", "%s s lies below T_S = S_D1/S_DS = %s s", quantity.Short(tl), quantity.Short(ts))
 	}
 }
 

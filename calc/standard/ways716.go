@@ -1,6 +1,10 @@
 package standard
 
-import "fmt"
+import (
+	"fmt"
+
+	"quoin/calc/quantity"
+)
 
 // ways716 is how 11.4.8 of ASCE/SEI 7-16 is met: its conditions, as they stand
 // for the site, and what the author states.
@@ -58,8 +62,8 @@ func (s site716) ways(in Given, p *problems) ways716 {
 	known := s.word != ""
 	stiff := known && s.class != "D" && s.class != "E" // no condition on S_S or S_1
 	isF := condition(known, s.class == "F", "site class F: a ground response analysis (21.1)", "site class F")
-	shortE := condition(known && s.class != "E" || s.class == "E" && hasSS, s.class == "E" && ss >= 1, "site class E with S_S ≥ 1.0", "site class E with S_S = "+shown(ss))
-	longDE := condition(stiff || known && hasS1, !stiff && s1 >= 0.2, "site class D or E with S_1 ≥ 0.2", "site class "+s.class+" with S_1 = "+shown(s1))
+	shortE := condition(known && s.class != "E" || s.class == "E" && hasSS, s.class == "E" && ss >= 1, "site class E with S_S ≥ 1.0", "site class E with S_S = "+quantity.Short(ss))
+	longDE := condition(stiff || known && hasS1, !stiff && s1 >= 0.2, "site class D or E with S_1 ≥ 0.2", "site class "+s.class+" with S_1 = "+quantity.Short(s1))
 	w.conditions = append(w.conditions, Condition{"isolated structures and structures with damping systems on sites with S_1 ≥ 0.6: for the author to see", notEvaluated, ref})
 	warn := func(code, format string, args ...any) {
 		w.warnings = append(w.warnings, Warning{code, fmt.Sprintf(format, args...), ref})

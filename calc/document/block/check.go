@@ -13,7 +13,7 @@ import (
 
 // Check makes a check of the block. It is what a check line of the same text
 // would be, but that it reads the block's own exports: "d.drift <= d.drift_limit".
-// Its text is its id.
+// Its text is its id. A ref without a key: the limit is the author's.
 func (r *Run) Check(text, description string, ref cite.Ref) {
 	line, findings := formula.ParseLine("check "+text, nil)
 	if len(findings) > 0 {
@@ -24,9 +24,19 @@ func (r *Run) Check(text, description string, ref cite.Ref) {
 		r.Diags.Errorf(f.Code, r.Place, "%s: %s", line.Text, f.Summary)
 	}
 	for _, c := range CheckRows(line.Text, line.Tree, rows, relation, r.System()) {
-		c.Description, c.Ref = description, &ref
+		c.Description = description
+		c.Ref, c.RefText = sourced(ref)
 		r.Checks = append(r.Checks, c)
 	}
+}
+
+// sourced is a source as shown: its clause, or that the author states it, where
+// there is none.
+func sourced(ref cite.Ref) (*cite.Ref, string) {
+	if ref.Key == "" {
+		return nil, "as stated"
+	}
+	return &ref, ""
 }
 
 // ownValues reads what a block has exported so far.

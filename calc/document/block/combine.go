@@ -2,7 +2,10 @@ package block
 
 import (
 	"fmt"
+	"math"
+	"slices"
 	"strconv"
+	"strings"
 
 	"quoin/calc/cite"
 	"quoin/calc/document/field"
@@ -43,7 +46,7 @@ type combine struct {
 	R         field.Field `name:"R" is:"number" must:"positive" default:"1" doc:"response modification coefficient; forces and displacements are divided by R/I_e"`
 	Ie        field.Field `name:"I_e" is:"number" must:"positive" default:"1" doc:"importance factor"`
 	Residual  field.Field `name:"residual" is:"choice" of:"none|missing mass" default:"none" doc:"missing mass: the mass that the modes do not move is added as rigid, at the zero-period acceleration"`
-	ZPA       field.Field `name:"zpa" is:"acceleration" must:"positive" label:"zero-period acceleration" doc:"acceleration of the residual, not divided by R/I_e; that of the target at T = 0, or the peak acceleration of the record, if not given"`
+	ZPA       field.Field `name:"zpa" is:"acceleration" must:"positive" label:"zero-period acceleration" doc:"acceleration of the residual, as the ground has it: stated undivided, divided by R/I_e here; that of the target at T = 0, or the peak acceleration of the record, if not given"`
 	ScaleTo   field.Field `name:"scale_to" is:"force" must:"positive" doc:"a base shear: forces, shears and moments are multiplied by max(1, scale_to/base_shear), displacements are not"`
 }
 
@@ -79,12 +82,14 @@ func (b *combine) Run(r *Run) {
 		return
 	}
 	c.Reduced(in.basis, b.R.SI(), b.Ie.SI(), in.q)
+	c.Unraised = in.target != nil && in.target.RaisesCs(slices.Max(c.T))
 	if b.Residual.Text() != "none" {
 		if c = b.withResidual(r, c, modes, in); c == nil {
 			return
 		}
 	}
 	if b.ScaleTo.Given {
+		c.Limb = b.limb(r, modes, in)
 		if c, err = c.ScaledTo(b.ScaleTo.SI()); err != nil {
 			r.Fail(b.ScaleTo, "combine", "%s", err)
 			return
@@ -92,6 +97,7 @@ func (b *combine) Run(r *Run) {
 	}
 	r.Made = c
 	b.results(r, c, in)
+	b.unraised(r, c)
 }
 
 // demand is what is read of the spectrum.
@@ -103,6 +109,8 @@ type demand struct {
 	basis string    // of a target
 	q     float64   // that a target is divided by already; 0: none
 	tells string    // where zpa comes from
+
+	target *standard.Target // nil: the spectrum is that of a record
 }
 
 // read reads the spectrum at every mode.
@@ -145,6 +153,12 @@ func (b *combine) read(r *Run, modes *modal.Modes) (in demand, ok bool) {
 		r.Fail(b.Target, "target-vertical", "the target %s is of vertical motion, the modes are lateral", name).WithHint("use the horizontal spectrum")
 		return in, false
 	}
+	if t.Exception == 3 {
+		r.Fail(b.Target, "exception-modal", "the target %s rests on exception 3 to 11.4.8, which holds for design by the equivalent lateral force procedure alone", name).
+			WithHint("find the forces by a static block, or give the target the values of a site-specific study")
+		return in, false
+	}
+	in.target = t
 	if in.basis, in.q = t.Basis, t.Q; t.Q > 0 && b.R.SI()/b.Ie.SI() != 1 {
 		at := b.R
 		if !at.Given {
@@ -183,7 +197,7 @@ func (b *combine) read(r *Run, modes *modal.Modes) (in demand, ok bool) {
 	return in, true
 }
 
-// left reads the spectrum at the modes left out, where a residual is asked for; 0
+// left reads the spectrum at the modes left out, where a residual is asked for; NaN
 // where it does not reach.
 func (b *combine) left(modes *modal.Modes, psa func(T float64) (float64, error)) []float64 {
 	if b.Residual.Text() == "none" {
@@ -191,8 +205,9 @@ func (b *combine) left(modes *modal.Modes, psa func(T float64) (float64, error))
 	}
 	out := make([]float64, len(modes.Left))
 	for i, o := range modes.Left {
-		if a, err := psa(o.T); err == nil {
-			out[i] = a
+		a, err := psa(o.T)
+		if out[i] = a; err != nil {
+			out[i] = math.NaN()
 		}
 	}
 	return out
@@ -245,7 +260,7 @@ func (b *combine) results(r *Run, c *modal.Combined, in demand) {
 	}
 	for _, w := range c.Warnings {
 		r.Warn(w.Code, "%s", w.Text)
-		if w.Code != "residual-amplified" { // the caution of every residual says it
+		if !strings.HasPrefix(w.Code, "residual-") { // the caution of every residual says it
 			r.Caution(w.Code)
 		}
 	}

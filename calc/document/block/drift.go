@@ -42,7 +42,7 @@ type drift struct {
 	Rho    field.Field `name:"rho" is:"number" must:"positive" doc:"ASCE/SEI 7: redundancy factor; it divides the limit, for moment frames in design categories D to F; 1, if not given"`
 	System field.Field `name:"system" is:"choice" of:"tolerant finishes|masonry cantilever|masonry|other" doc:"ASCE/SEI 7: row of the table of allowed drifts; tolerant finishes: four storeys or fewer, no masonry, finishes designed for the drifts"`
 	Risk   field.Field `name:"risk" is:"choice" of:"I|II|III|IV" doc:"ASCE/SEI 7: risk category"`
-	Scale  field.Field `name:"scale_drifts" is:"choice" of:"yes|no" doc:"ASCE/SEI 7, from a combine block with scale_to: yes where C_s is governed by 0.5 S_1/(R/I_e), so that drifts are scaled like forces"`
+	Scale  field.Field `name:"scale_drifts" is:"choice" of:"yes|no" doc:"ASCE/SEI 7, from a combine block with scale_to: yes where C_s is governed by 0.5 S_1/(R/I_e), so that drifts are scaled like forces; found, if not given, where scale_to is made of a static block"`
 
 	Qd       field.Field `name:"q_d" label:"q_d" is:"number" must:"positive" doc:"EN 1998-1: displacement behaviour factor; q of the analysis, if not given"`
 	Class    field.Field `name:"importance_class" is:"choice" of:"I|II|III|IV" doc:"EN 1998-1: importance class, for nu"`
@@ -51,7 +51,7 @@ type drift struct {
 
 	P     field.Field `name:"P" is:"force" must:"positive" many:"yes" doc:"vertical load at and above each level; lowest first, no load factor above 1.0; without it stability is not evaluated"`
 	Beta  field.Field `name:"beta" is:"number" must:"positive" many:"yes" doc:"ASCE/SEI 7: shear demand over shear capacity of a storey; one or one a storey; 1, if not given"`
-	Limit field.Field `name:"limit" is:"number" must:"positive" many:"yes" show:"" doc:"allowed drift over storey height, one or one a storey, in place of the table of the standard"`
+	Limit field.Field `name:"limit" is:"number" must:"positive" many:"yes" show:"" doc:"allowed drift over storey height, one or one a storey, in place of system and risk; shown as stated, and divided by rho like those of the table"`
 }
 
 // fields of one standard only.
@@ -87,6 +87,9 @@ type analysis struct {
 	divisor  float64 // of the elastic response
 	scaled   float64 // factor that forces were multiplied by and drifts were not
 	combined bool
+	scale    bool   // drifts are multiplied by scaled too
+	unraised bool   // the spectrum was not raised, as C_s is by an exception
+	limb     string // of C_s, that governs what forces were scaled to; empty: not known
 }
 
 func (b *drift) analysis(r *Run) analysis {
@@ -103,9 +106,10 @@ func (b *drift) analysis(r *Run) analysis {
 		if k, ok := s.StoreyStiffness(); ok {
 			a.Stiffness = k
 		}
-		if m := s.Mass(); m > 0 {
-			a.Weight = []float64{m * quantity.Gravity}
+		for _, m := range s.MassAbove() {
+			a.Weight = append(a.Weight, m*quantity.Gravity)
 		}
+		a.limb, a.unraised = s.Limb, s.Unraised
 		a.ie, a.q, a.divisor, a.scaled, a.combined = s.Ie, s.Q, s.Divisor, s.ScaleFactor, true
 	}
 	return a
@@ -244,7 +248,20 @@ func (b *drift) scaling(r *Run, a *analysis) bool {
 		r.Fail(b.Scale, "drift-field", "%s is no modal combination: its drifts are those of its forces already", a.name).WithHint("leave it out")
 		return false
 	}
-	if b.Scale.Text() == "yes" {
+	least := a.limb == lateral.LeastSymbol
+	clause := lateral.DriftClausesOf(a.Basis).Combined
+	switch {
+	case a.scaled > 1 && least && b.Scale.Text() == "no":
+		r.Fail(b.Scale, "drift-unscaled", "the forces of %s were scaled by %s to a base shear that 0.5 S_1/(R/I_e) governs, and drifts follow them there (%s)", a.name, short(a.scaled), clause).
+			WithHint("leave the field out: drifts are then scaled")
+		return false
+	case b.Scale.Given:
+		a.scale = b.Scale.Text() == "yes"
+	case a.scaled > 1 && a.limb != "":
+		a.scale = least
+		r.Used("scale_drifts", "scale_drifts", plain(map[bool]string{true: "yes", false: "no"}[least]), "by what governs C_s")
+	}
+	if a.scale {
 		a.DriftInput = a.Times(a.scaled)
 	}
 	return true

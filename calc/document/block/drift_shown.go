@@ -30,6 +30,9 @@ func (b *drift) results(r *Run, a analysis, d *lateral.Drift) {
 		r.Number("nu", d.Nu, pure)
 	}
 	clauses := lateral.DriftClausesOf(d.Basis)
+	if b.Limit.Given {
+		clauses.Limit = cite.Ref{}
+	}
 	demand := r.ID("drift")
 	if a.european() {
 		demand = r.ID("nu") + " * " + demand
@@ -67,12 +70,15 @@ func (b *drift) doubts(r *Run, a analysis, d *lateral.Drift, clauses lateral.Dri
 	if a.european() {
 		return
 	}
-	if a.combined && !b.Scale.Given {
+	if a.combined && !b.Scale.Given && a.limb == "" {
 		r.Caution("drift-scaling")
 		if a.scaled > 1 {
 			r.WarnAt(b.From, "drift-scaling", "the forces of %s were scaled by %s and these drifts were not; where C_s is governed by 0.5 S_1/(R/I_e) they must be (%s): state scale_drifts: yes, or no where it is not", a.name, short(a.scaled), clauses.Combined)
 			r.Refs = append(r.Refs, clauses.Combined)
 		}
+	}
+	if a.unraised && !a.scale {
+		r.WarnAt(b.From, "exception-raise", "the drifts of %s are of a spectrum that exception 2 to 11.4.8 leaves unraised, up to 1.5 times too small: state scale_drifts: yes, or raise the spectrum (site_specific: supplement 3)", a.name)
 	}
 	if a.divisor == 1 && a.Cd != 1 {
 		r.WarnAt(b.From, "drift-unreduced", "%s is not divided by R/I_e (which is 1 there): C_d/I_e = %s multiplies the full elastic drift", a.name, short(d.Factor))
@@ -95,7 +101,8 @@ func (s substituted) Call(string, []quantity.Value) (quantity.Value, string, err
 	panic("block: an equation of a method calls no block")
 }
 
-// equation adds symbol = text = numbers = result to the method.
+// equation adds symbol = text = numbers = result to the method; a ref without a key:
+// it is as the author states.
 func (s substituted) equation(r *Run, symbol, text, description string, ref cite.Ref) {
 	tree, findings := formula.ParseExpr(text, nil)
 	if len(findings) > 0 {
@@ -108,9 +115,11 @@ func (s substituted) equation(r *Run, symbol, text, description string, ref cite
 	v.Unit = s[symbol].Unit
 	formula.ChooseDigits(tree, r.System(), v.Unit, quantity.Digits)
 	formula.DropZeros(tree)
-	r.Method = append(r.Method, exhibit.Item{Equation: &exhibit.Equation{Symbol: &expr.Node{Op: expr.Name, Text: symbol, ID: s[symbol].ID}, Tree: tree, Result: &v,
-		Digits: quantity.Digits, Description: description, Ref: &ref}})
-	r.Refs = append(r.Refs, ref)
+	e := &exhibit.Equation{Symbol: &expr.Node{Op: expr.Name, Text: symbol, ID: s[symbol].ID}, Tree: tree, Result: &v, Digits: quantity.Digits, Description: description}
+	if e.Ref, e.RefText = sourced(ref); e.Ref != nil {
+		r.Refs = append(r.Refs, ref)
+	}
+	r.Method = append(r.Method, exhibit.Item{Equation: e})
 }
 
 func (b *drift) method(r *Run, a analysis, d *lateral.Drift, clauses lateral.DriftClauses) {
@@ -187,7 +196,7 @@ func (b *drift) said(a analysis, d *lateral.Drift) string {
 	switch {
 	case !a.combined:
 		text += "Drifts and the storey shears in $\\theta$ are those of one set of forces. "
-	case b.Scale.Text() == "yes":
+	case a.scale:
 		text += "Drifts and the storey shears in $\\theta$ are combined over the modes, each by itself, and both are scaled by " + short(a.scaled) + ". "
 	default:
 		text += "Drifts and the storey shears in $\\theta$ are combined over the modes, each by itself, and neither is scaled to a base shear. "
@@ -206,7 +215,7 @@ func (b *drift) said(a analysis, d *lateral.Drift) string {
 
 func (b *drift) table(r *Run, a analysis, d *lateral.Drift) {
 	u := unitsOf(r.System())
-	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storey drifts of "+a.name+" and their limits, highest storey on top; displacements are those of the level above, at the centre"),
+	t := exhibit.Table{ID: r.Name + "-storeys", Caption: Lines(&b.common, "Storey drifts of "+a.name+" by "+r.Name+" and their limits, highest storey on top; displacements are those of the level above, at the centre"),
 		Columns: []exhibit.Column{Words("storey under"), Col("height", u.length)}}
 	levels := len(d.Displacement) > 0
 	if levels {
@@ -287,6 +296,6 @@ func (b *drift) figure(r *Run, a analysis, d *lateral.Drift) {
 	if stable >= 0 {
 		seen += fmt.Sprintf(" Beside it the stability coefficient with its limit: nearest under level %s, %s against %s.", d.Levels[stable], short(d.Theta[stable]), short(d.ThetaLimit[stable]))
 	}
-	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Storey drifts of "+a.name+" over the height with their limits"), Beside: true, Panels: panels,
+	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Storey drifts of "+a.name+" by "+r.Name+" over the height with their limits"), Beside: true, Panels: panels,
 		Alt: seen})
 }

@@ -189,6 +189,54 @@ func TestDriftScaled(t *testing.T) {
 	}
 }
 
+// combinedSix is the response of the six storeys, scaled by 1.25 to a base shear
+// whose C_s a limb governs.
+func combinedSix(limb string) *modal.Combined {
+	s := sixStoreys("ASCE/SEI 7-22")
+	c := &modal.Combined{Basis: s.Basis, R: 8, Ie: 1, Divisor: 8, Levels: s.Levels, H: s.H, Hs: s.Hs, ScaleFactor: 1.25, Limb: limb,
+		Drift: modal.Response{Combined: s.Drift, Modal: [][]float64{s.Drift}}, Displacement: modal.Response{Combined: s.Displacement}}
+	scaled := make([]float64, 6)
+	for i, v := range s.DriftShear {
+		scaled[i] = 1.25 * v
+		c.LevelMass = append(c.LevelMass, s.W[i]/quantity.Gravity)
+	}
+	c.StoreyShear = modal.Response{Combined: scaled, Modal: [][]float64{scaled}}
+	return c
+}
+
+// TestDriftFollowsTheLimb: where 0.5 S_1/(R/I_e) governs the base shear that forces
+// were scaled to, drifts are scaled; where another limb does, they are not.
+func TestDriftFollowsTheLimb(t *testing.T) {
+	for limb, factor := range map[string]float64{lateral.LeastSymbol: 1.25, "C_s_max": 1, "": 1} {
+		c := combinedSix(limb)
+		r := judged(t, c, "C_d: 5.5", "limit: 0.02", driftLoads)
+		if r.Diags.HasErrors() {
+			t.Fatal(r.Diags)
+		}
+		if got, want := driftValue(t, r, "drift")[0], 5.5*c.Drift.Combined[0]*factor; math.Abs(got/want-1) > 1e-12 {
+			t.Errorf("limb %q: drift %v, want %v", limb, got, want)
+		}
+		if said := len(r.Diags) == 1 && r.Diags[0].Code == "drift-scaling"; said != (limb == "") {
+			t.Errorf("limb %q: %v", limb, r.Diags)
+		}
+	}
+	if r := judged(t, combinedSix(lateral.LeastSymbol), "C_d: 5.5", "limit: 0.02", "scale_drifts: no"); len(r.Diags) != 1 || r.Diags[0].Code != "drift-unscaled" || r.Diags[0].Range.Line != 4 {
+		t.Errorf("scale_drifts: no against the limb: %v", r.Diags)
+	}
+	if r := judged(t, combinedSix("C_s_max"), "C_d: 5.5", "limit: 0.02", driftLoads, "scale_drifts: yes"); len(r.Diags) > 0 {
+		t.Errorf("scaling on the safe side: %v", r.Diags)
+	}
+}
+
+// TestDriftLightAbove: a combination carries its masses, so that a load too light at
+// an upper storey alone is told.
+func TestDriftLightAbove(t *testing.T) {
+	r := judged(t, combinedSix("C_s_max"), "C_d: 5.5", "limit: 0.02", `P: "[4000 kip, 3300 kip, 2600 kip, 1950 kip, 1200 kip, 600 kip]"`)
+	if len(r.Diags) != 1 || r.Diags[0].Code != "gravity-load" || !strings.Contains(r.Diags[0].Summary, "above L5:") {
+		t.Errorf("P below the weight at L5: %v", r.Diags)
+	}
+}
+
 // TestDriftRefuses: each wrong field is told where it stands.
 func TestDriftRefuses(t *testing.T) {
 	asce, en := sixStoreys("ASCE/SEI 7-22"), sixStoreys("EN 1998-1:2004")
@@ -232,5 +280,59 @@ func TestDriftRefuses(t *testing.T) {
 	one := judged(t, asce, "C_d: 5", "limit: 0.02", "P:", "  - 3900 kip", "  - 3200 kip", "  - 2550 kip", "  - 2600 kip", "  - 1250 kip", "  - 600 kip")
 	if len(one.Diags) != 1 || one.Diags[0].Range.Line != 8 || one.Diags[0].Range.Column != 5 {
 		t.Errorf("a load larger than the one below it: %v", one.Diags)
+	}
+}
+
+// TestDriftOfOwnLimit: a limit that the author gives is none of the standard's.
+func TestDriftOfOwnLimit(t *testing.T) {
+	for _, c := range []struct {
+		basis string
+		lines []string
+		table string // clause of the limit
+	}{
+		{"ASCE/SEI 7-22", []string{"C_d: 5.5", "limit: 0.02"}, "12.12"},
+		{"EN 1998-1:2004", []string{"nu: 0.5", "limit: 0.01"}, "4.4.3.2"},
+		{"ASCE/SEI 7-22", []string{"C_d: 5.5", "system: other", "risk: II"}, ""},
+	} {
+		r := judged(t, sixStoreys(c.basis), c.lines...)
+		stated := c.table != ""
+		if r.Checks[0].RefText == "as stated" != stated || (r.Checks[0].Ref == nil) != stated {
+			t.Errorf("%q: the check cites %v, %q", c.lines, r.Checks[0].Ref, r.Checks[0].RefText)
+		}
+		last := r.Method[len(r.Method)-1].Equation
+		if (last.Ref == nil) != stated || last.RefText == "as stated" != stated {
+			t.Errorf("%q: the equation cites %v, %q", c.lines, last.Ref, last.RefText)
+		}
+		for _, ref := range r.Refs {
+			if stated && strings.Contains(ref.Clause, c.table) {
+				t.Errorf("%q: %s is cited", c.lines, ref)
+			}
+		}
+	}
+}
+
+// TestDriftWords: captions name the block, and the words for a figure speak of
+// stability where there is one.
+func TestDriftWords(t *testing.T) {
+	for _, loads := range []bool{false, true} {
+		lines := []string{"C_d: 5.5", "limit: 0.02"}
+		if loads {
+			lines = append(lines, driftLoads)
+		}
+		r := judged(t, sixStoreys("ASCE/SEI 7-22"), lines...)
+		for _, it := range r.Results {
+			caption := ""
+			if it.Figure != nil {
+				caption = it.Figure.Caption
+				if strings.Contains(it.Figure.Alt, "stability") != loads {
+					t.Errorf("loads %v: %q", loads, it.Figure.Alt)
+				}
+			} else if it.Table != nil {
+				caption = it.Table.Caption
+			}
+			if caption != "" && !strings.Contains(caption, "of elf by d") {
+				t.Errorf("%q does not name the block", caption)
+			}
+		}
 	}
 }

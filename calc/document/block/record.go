@@ -43,7 +43,7 @@ type record struct {
 	File    field.Field `name:"file" is:"file" doc:"the record file, relative to the document"`
 	Format  field.Field `name:"format" is:"text" default:"auto" doc:"format of the file; found from its content if auto"`
 	Channel field.Field `name:"channel" is:"text" doc:"which column or trace of the file: its name, or its number from 1, a column of times not counted"`
-	Step    field.Field `name:"step" is:"time" must:"positive" doc:"time between samples; not needed where the file states it"`
+	Step    field.Field `name:"step" is:"time" must:"positive" doc:"time between samples; not needed where the file states it, needed with form"`
 	Unit    field.Field `name:"unit" is:"text" label:"unit in file" doc:"unit of the numbers in the file; not needed where the file states it"`
 	Scale   field.Field `name:"scale" is:"number" default:"1" doc:"factor on the acceleration"`
 	From    field.Field `name:"from" is:"time" must:"not-negative" doc:"start of the stretch that is used; the start of the record if not given"`

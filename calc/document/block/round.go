@@ -14,5 +14,5 @@ func round12(x float64) float64 {
 
 // short is a number in a sentence: 8, 0.05, 0.6667.
 func short(x float64) string {
-	return quantity.Format(x, min(quantity.Digits, quantity.Exact(x)))
+	return quantity.Short(x)
 }

@@ -107,16 +107,12 @@ func (b *static) figures(r *Run, s *lateral.Static) {
 	}
 	stepped := storeySteps(s.H, s.Shear)
 	foot := s.H[0] - s.Hs[0]
-	var force []exhibit.FigSerie
-	for i, f := range s.F {
-		force = append(force, exhibit.FigSerie{X: []float64{0, f}, Y: []float64{s.H[i], s.H[i]}, Role: exhibit.Data, Dots: true})
-	}
 	feet := append([]float64{foot}, s.H...)
 	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Static lateral forces, storey shears and overturning moments of "+r.Name+" over the height"), Beside: true,
 		Alt: fmt.Sprintf("Profiles over the height of the structure: lateral force at each level, %s %s at the highest; storey shear in steps, %s %s at the base; overturning moment growing to %s %s at the base.",
 			short(u.force.From(s.F[len(s.F)-1])), u.force.Pretty(), short(u.force.From(s.Shear[0])), u.force.Pretty(), short(u.moment.From(s.Moment[0])), u.moment.Pretty()),
 		Panels: []exhibit.Panel{
-			panel("lateral force", "F", u.force, force...),
+			panel("lateral force", "F", u.force, exhibit.FigSerie{X: s.F, Y: s.H, Role: exhibit.Data, Dots: true}),
 			panel("storey shear", "V", u.force, exhibit.FigSerie{X: stepped.x, Y: stepped.y, Role: exhibit.Data}),
 			panel("overturning moment", "M", u.moment, exhibit.FigSerie{X: append(append([]float64{}, s.Moment...), 0), Y: feet, Role: exhibit.Data}),
 		}})

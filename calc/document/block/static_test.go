@@ -2,6 +2,7 @@ package block
 
 import (
 	"math"
+	"slices"
 	"strings"
 	"testing"
 
@@ -9,6 +10,7 @@ import (
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
 	"quoin/calc/expr"
+	"quoin/calc/lateral"
 	"quoin/calc/modal"
 	"quoin/calc/quantity"
 	"quoin/calc/standard"
@@ -120,6 +122,36 @@ func TestStaticEuropean(t *testing.T) {
 	if len(shaped.Diags) != 1 || shaped.Diags[0].Code != "lambda" || shaped.Diags[0].Range.Line != 8 {
 		t.Errorf("lambda below its rule: %v", shaped.Diags)
 	}
+}
+
+// TestTargetDampingWithRounding: 5 % that is the result of a calculation is 5 %.
+func TestTargetDampingWithRounding(t *testing.T) {
+	b := &target{Basis: said(2, "ASCE/SEI 7-22"), Damping: asked(3, 0.05*(1+1e-12), "")}
+	std, _ := standard.Lookup("ASCE/SEI 7-22")
+	for z, want := range map[float64]bool{0.05 * (1 + 1e-12): true, 0.0501: false} {
+		b.Damping = asked(3, z, "")
+		r := &Run{Env: products{}, Kind: targetKind}
+		if got := b.damping(r, std, standard.Given{}, nil); got != want {
+			t.Errorf("damping %v: %v, %v", z, got, r.Diags)
+		}
+	}
+}
+
+// TestStaticForcesAreOneSeries: level and force, so that the data of the figure are two
+// columns.
+func TestStaticForcesAreOneSeries(t *testing.T) {
+	r := european(t, func(b *static, _ *standard.Target) { b.Ct = asked(6, 0.075, "") })
+	for _, it := range r.Results {
+		if it.Figure == nil || it.Figure.ID != "f" {
+			continue
+		}
+		series, want := it.Figure.Panels[0].Series, r.Made.(*lateral.Static)
+		if len(series) != 1 || !slices.Equal(series[0].X, want.F) || !slices.Equal(series[0].Y, want.H) {
+			t.Errorf("the forces are drawn as %v", series)
+		}
+		return
+	}
+	t.Fatal("no figure")
 }
 
 // TestStaticPlaces: what is wrong is told at the field, or at the block where the

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"fmt"
 	"regexp"
 
 	"quoin/calc/lateral"
@@ -163,6 +164,7 @@ func (r *Run) targetSymbols(t *standard.Target) {
 // staticSymbols are those of the static method of the standard.
 func (r *Run) staticSymbols(s *lateral.Static) {
 	u := unitsOf(r.System())
+	r.approximateSymbols(s)
 	r.Symbol("C_t", "coefficient of the approximate period", pure)
 	r.Symbol("K", "stiffness matrix", u.stiffness)
 	r.Symbol("u", "elastic displacement of the levels", u.small)
@@ -197,6 +199,25 @@ func (r *Run) staticSymbols(s *lateral.Static) {
 	r.Symbol("w_i", "seismic weight at level i", u.force)
 	r.Symbol("h_x", "elevation of level x above the base", u.length)
 	r.Symbol("h_i", "elevation of level i above the base", u.length)
+}
+
+// approximateSymbols are those of the rule that the approximate period was found by.
+func (r *Run) approximateSymbols(s *lateral.Static) {
+	u := unitsOf(r.System())
+	switch s.PeriodRule {
+	case "storeys":
+		r.Symbol("N", "number of storeys above the base", pure)
+	case "displacement":
+		r.Symbol("d", "displacement of the top under the gravity loads applied horizontally", u.small)
+	case "walls":
+		r.Symbol("C_q", "coefficient of the approximate period of structures with shear walls", pure)
+		r.Symbol("C_w", "effective area of the shear walls, in percent of the area at the base", pure)
+		r.Symbol("A_B", "area of the structure at its base", quantity.MustUnit(s.HeightUnit+"^2"))
+		for i := range s.Walls {
+			r.Symbol(fmt.Sprintf("D_%d", i+1), fmt.Sprintf("length of shear wall %d", i+1), quantity.MustUnit(s.HeightUnit))
+			r.Symbol(fmt.Sprintf("t_%d", i+1), fmt.Sprintf("thickness of shear wall %d", i+1), u.small)
+		}
+	}
 }
 
 // driftSymbols are those of drifts and stability by the standard.

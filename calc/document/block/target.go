@@ -54,7 +54,7 @@ type target struct {
 	S1       field.Field `name:"S_1" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"not-negative" doc:"mapped acceleration at 1 s, in g"`
 	Site     field.Field `name:"site" is:"text" label:"site class" doc:"site class: A, B, C, D, E, F or default (7-16 also B estimated, 7-22 also BC, CD, DE)"`
 	Vs30     field.Field `name:"vs30" is:"velocity" must:"positive" show:"m/s|ft/s" label:"mean shear wave velocity" doc:"of 7-22 ordinates: mean shear wave velocity of the upper 30 m, in place of or beside the site class"`
-	Specific field.Field `name:"site_specific" is:"text" label:"site-specific study" doc:"of 7-16: how 11.4.8 is met, where it asks for a study: study, exception, or supplement 3"`
+	Specific field.Field `name:"site_specific" is:"text" label:"site-specific study" doc:"of 7-16: how 11.4.8 is met, where it asks for a study: study (with S_DS and S_D1 of the study), exception, or supplement 3"`
 	Fa       field.Field `name:"F_a" is:"number" must:"positive" doc:"of 7-16: short-period site coefficient, where it is not that of the table"`
 	Fv       field.Field `name:"F_v" is:"number" must:"positive" doc:"of 7-16: long-period site coefficient, where it is not that of the table"`
 	SMS      field.Field `name:"S_MS" is:"number" hint:"a spectral value is a pure number, in g: write 1.0, not 1.0 g" must:"positive" doc:"MCE_R acceleration at short periods, in g"`
@@ -176,7 +176,7 @@ func (b *target) damping(r *Run, std standard.Standard, given standard.Given, at
 		return true
 	}
 	switch z := b.Damping.SI(); {
-	case std.Damping == "" && z != 0.05:
+	case std.Damping == "" && relative(z, 0.05) > 1e-9:
 		r.Fail(b.Damping, "target-damping", "the spectrum of %s holds for 5 %% damping; the standard gives no rule for another here", std.Basis)
 		return false
 	case std.Damping == "":

@@ -1,0 +1,76 @@
+package block
+
+import (
+	"slices"
+	"strings"
+
+	"quoin/calc/expr"
+	"quoin/calc/lateral"
+	"quoin/calc/modal"
+)
+
+// statics are the static forces that a tree is made of, formula names followed to
+// their lines.
+func (r *Run) statics(tree *expr.Node) []*lateral.Static {
+	var out []*lateral.Static
+	seen := map[string]bool{}
+	var walk func(n *expr.Node)
+	walk = func(n *expr.Node) {
+		if n == nil {
+			return
+		}
+		if n.Op == expr.Name {
+			first, _, dotted := strings.Cut(n.Text, ".")
+			switch {
+			case seen[first]:
+			case !dotted:
+				seen[first] = true
+				line, _ := r.Line(first)
+				walk(line)
+			case r.KindOf(first) == staticKind.Name:
+				seen[first] = true
+				if s, ok := r.Product(first).(*lateral.Static); ok {
+					out = append(out, s)
+				}
+			}
+		}
+		for _, a := range n.Args {
+			walk(a)
+		}
+	}
+	walk(tree)
+	return out
+}
+
+// limb is the symbol of the limb of C_s that governs what forces are scaled to: that
+// of the static block which scale_to is made of, or the one that its value tells.
+func (b *combine) limb(r *Run, modes *modal.Modes, in demand) string {
+	symbol := ""
+	for _, s := range r.statics(b.ScaleTo.Tree) {
+		if symbol = s.Governing(); symbol == lateral.LeastSymbol {
+			return symbol
+		}
+	}
+	if symbol == "" && in.target != nil && lateral.IsLeast(in.target, b.ScaleTo.SI(), modes.Model.Weight, b.R.SI(), b.Ie.SI()) {
+		return lateral.LeastSymbol
+	}
+	return symbol
+}
+
+// unraised warns of a spectrum that exception 2 to ASCE/SEI 7-16 11.4.8 leaves as it
+// is and raises C_s alone.
+func (b *combine) unraised(r *Run, c *modal.Combined) {
+	if !c.Unraised {
+		return
+	}
+	const left = "displacements and drifts are of the unraised spectrum, up to 1.5 times too small"
+	all := r.statics(b.ScaleTo.Tree)
+	switch raised := func(s *lateral.Static) bool { return s.Exception == 2 }; {
+	case !b.ScaleTo.Given:
+		r.WarnAt(b.Target, "exception-raise", "exception 2 to 11.4.8 raises C_s by half and not the spectrum of %s: base shear and forces here are up to 1.5 times too small until scaled to the base shear of the static procedure with the raised C_s (scale_to: NAME.V); %s", b.Target.Text(), left)
+	case len(all) > 0 && !slices.ContainsFunc(all, func(s *lateral.Static) bool { return !raised(s) }):
+		r.WarnAt(b.Target, "exception-raise", "exception 2 to 11.4.8 raises C_s by half and not the spectrum of %s: forces are scaled to the raised base shear, %s", b.Target.Text(), left)
+	default:
+		r.WarnAt(b.ScaleTo, "exception-raise", "exception 2 to 11.4.8 raises C_s by half and not the spectrum of %s: see that scale_to is the base shear of the static procedure with the raised C_s; %s", b.Target.Text(), left)
+	}
+}
