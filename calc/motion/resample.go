@@ -182,3 +182,20 @@ func fraction(x float64, most int) (p, q int) {
 	}
 	return 0, 0
 }
+
+// Lost is the share of the energy of before, the integral of a², that after does not
+// hold; 0 where before is at rest. Both are read as band-limited: by Parseval the
+// integral is the sum of a² over the samples times the step.
+func Lost(before, after *Record) float64 {
+	energy := func(r *Record) (sum float64) {
+		for _, a := range r.A {
+			sum += a * a * r.Step
+		}
+		return sum
+	}
+	all := energy(before)
+	if all == 0 {
+		return 0
+	}
+	return 1 - energy(after)/all
+}

@@ -19,10 +19,8 @@ func (a *app) build(file string) int {
 	if err != nil {
 		return a.fail(file, err)
 	}
-	dir := a.flags.out
-	if dir == "" {
-		dir = src.folder()
-	}
+	dir := a.folder(src)
+	a.keepOut(file, dir)
 	// Before the work, not after it.
 	for _, ready := range []func(string) error{ledger.Repair, ledger.Replaceable} {
 		if err := ready(dir); err != nil {
@@ -52,12 +50,30 @@ func (a *app) build(file string) int {
 	return a.outcome(src, res, err, dir, unchanged)
 }
 
+// folder is where the package of src goes.
+func (a *app) folder(src source) string {
+	if a.flags.out != "" {
+		return a.flags.out
+	}
+	return src.folder()
+}
+
+// keepOut goes on without the cache where it lies in the folder of the package,
+// which holds nothing but the package.
+func (a *app) keepOut(file, dir string) {
+	if a.cache != nil && inside(a.cache.folder, dir) {
+		fmt.Fprint(a.stderr, fileWarning(file, cacheInPackage))
+		a.cache = nil
+	}
+}
+
 // check runs FILE, draws nothing and writes nothing.
 func (a *app) check(file string) int {
 	src, err := locate(file, a.flags.root)
 	if err != nil {
 		return a.fail(file, err)
 	}
+	a.keepOut(file, a.folder(src))
 	bar := a.progress()
 	defer bar.done()
 	res, err := a.compute(src, bar)
@@ -112,6 +128,10 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 
 // fail says why FILE could not be run or written.
 func (a *app) fail(file string, err error) int {
+	var taken *ledger.Occupied
+	if errors.As(err, &taken) {
+		err = errors.New(err.Error() + "; " + moveAway)
+	}
 	if a.flags.json {
 		a.writeJSON(outcome{File: file, Failure: err.Error()})
 	}

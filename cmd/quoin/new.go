@@ -7,7 +7,11 @@ import (
 	"io/fs"
 	"os"
 	"path/filepath"
+	"slices"
+	"strconv"
 	"strings"
+	"unicode"
+	"unicode/utf8"
 
 	"github.com/spf13/cobra"
 )
@@ -25,14 +29,16 @@ var renamed = map[string]string{"gitignore": ".gitignore"}
 func (a *app) new(_ *cobra.Command, args []string) error {
 	units := strings.ToUpper(a.flags.units)
 	switch {
-	case len(args) != 1 || args[0] == "":
+	case len(args) > 1:
+		return errOneDir
+	case len(args) == 0 || args[0] == "":
 		return errNoDir
 	case units != "SI" && units != "US":
 		return errUnits
 	}
 	dir := args[0]
 	if err := makeStarter(dir, units); err != nil {
-		fmt.Fprint(a.stderr, fileError(dir, reason(err).Error()))
+		fmt.Fprint(a.stderr, fileError(printable(dir), reason(err).Error()))
 		a.code = exitErrors
 		return nil
 	}
@@ -45,6 +51,10 @@ func makeStarter(dir, units string) error {
 	switch list, err := os.ReadDir(dir); {
 	case err == nil && len(list) > 0:
 		return errors.New(notEmpty)
+	case err != nil && !nameable(dir):
+		return errors.New(badName)
+	case err != nil && isLink(dir):
+		return errors.New(deadLink)
 	case err != nil && !errors.Is(err, fs.ErrNotExist):
 		if info, e := os.Stat(dir); e == nil && !info.IsDir() {
 			return errors.New(isFile)
@@ -74,6 +84,38 @@ func makeStarter(dir, units string) error {
 		}
 	}
 	return nil
+}
+
+// nameable tells whether the folders of dir that are not there yet have names that
+// every system can hold: a package is made to be handed over.
+func nameable(dir string) bool {
+	for dir = filepath.Clean(dir); ; dir = filepath.Dir(dir) {
+		if _, err := os.Lstat(dir); err == nil || dir == filepath.Dir(dir) {
+			return true
+		}
+		name := filepath.Base(dir)
+		stem, _, _ := strings.Cut(strings.ToUpper(name), ".")
+		if strings.ContainsFunc(name, func(c rune) bool { return !unicode.IsPrint(c) || strings.ContainsRune(`<>:"|?*\`, c) }) ||
+			strings.TrimRight(name, ". ") != name || slices.Contains(devices, stem) {
+			return false
+		}
+	}
+}
+
+// devices are names that one system keeps for itself.
+var devices = strings.Fields("CON PRN AUX NUL COM1 COM2 COM3 COM4 COM5 COM6 COM7 COM8 COM9 LPT1 LPT2 LPT3 LPT4 LPT5 LPT6 LPT7 LPT8 LPT9")
+
+func isLink(path string) bool {
+	info, err := os.Lstat(path)
+	return err == nil && info.Mode()&fs.ModeSymlink != 0
+}
+
+// printable is a name in one line: quoted, where it holds what cannot be seen.
+func printable(name string) string {
+	if strings.ContainsFunc(name, func(c rune) bool { return !unicode.IsPrint(c) }) || !utf8.ValidString(name) {
+		return strconv.Quote(name)
+	}
+	return name
 }
 
 // writeNew writes a file that is not there yet.

@@ -59,6 +59,25 @@ func real(path string) (string, error) {
 	return filepath.EvalSymlinks(path)
 }
 
+// inside tells whether path is dir or lies below it, links followed as far as the
+// paths exist.
+func inside(path, dir string) bool {
+	rel, err := filepath.Rel(settled(dir), settled(path))
+	return err == nil && filepath.IsLocal(rel)
+}
+
+// settled is an absolute path with the links of what exists of it followed.
+func settled(path string) string {
+	if full, err := real(path); err == nil {
+		return full
+	}
+	path, err := filepath.Abs(path)
+	if parent := filepath.Dir(path); err == nil && parent != path {
+		return filepath.Join(settled(parent), filepath.Base(path))
+	}
+	return path
+}
+
 // reason is an error of the file system without the path, which the message
 // begins with anyway.
 func reason(err error) error {

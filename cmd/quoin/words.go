@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"strings"
+	"unicode"
 
 	"quoin/calc/exhibit"
 )
@@ -33,6 +34,7 @@ git work tree that holds FILE, else FILE's own folder.
 What was computed and drawn before by this very program from the same inputs is
 taken from a cache: the folder that QUOIN_CACHE names, else quoin in the user's
 cache folder. It may be deleted at any time, and never changes a byte of a package.
+It is not used where it would lie inside the package.
 
 Exit codes: 0 built, 1 errors, 2 wrong usage, 3 built, but with --strict a check
 is not met.`
@@ -86,6 +88,7 @@ func usageError(err error) string {
 
 var (
 	errNoDir   = fmt.Errorf("name a folder to make, as in: quoin new tower")
+	errOneDir  = fmt.Errorf("name one folder; a name with blanks stands in quotes")
 	errUnits   = fmt.Errorf("--units is SI or US")
 	errNoFile  = fmt.Errorf("name a FILE, as in: quoin build package.md")
 	errOneFile = fmt.Errorf("-o takes one FILE at a time")
@@ -108,6 +111,13 @@ func internalError(fault, place string) string {
 
 func fileError(file, text string) string { return fmt.Sprintf("%s: error: %s\n", file, text) }
 
+func fileWarning(file, text string) string { return fmt.Sprintf("%s: warning: %s\n", file, text) }
+
+const (
+	cacheInPackage = "QUOIN_CACHE names a folder inside the package, which holds nothing but the package; no cache is used"
+	moveAway       = "move it away, or build to another folder with -o"
+)
+
 const (
 	isFolder  = "this is a folder; name the markdown file in it"
 	notInRoot = "this file lies outside the root"
@@ -116,18 +126,30 @@ const (
 const (
 	notEmpty = "this folder holds something already; name a new or an empty one"
 	isFile   = "this is a file; name a folder"
+	deadLink = "this is a link that leads nowhere; name a folder"
+	badName  = "not every system can hold a folder of this name: leave out control characters, any of < > : \" | ? * \\, a dot or a blank at the end, and the names of devices"
 )
 
 // started says what to do with a new package.
 func started(dir string) string {
-	file := dir + "/package.md"
+	file, page := asWord(dir+"/package.md"), asWord(dir+"/package.package/index.html")
 	return fmt.Sprintf(`%[1]s: written, an invented building to start from
 next:
   quoin check %[1]s
-  quoin build %[1]s   and open %[2]s/package.package/index.html
+  quoin build %[1]s   and open %[2]s
   quoin blocks   shows all that a document can hold
 put your own data in the place of the invented: the front matter first, then storeys.csv
-`, file, dir)
+`, file, page)
+}
+
+// asWord is a path as a shell reads it back.
+func asWord(path string) string {
+	if strings.ContainsFunc(path, func(c rune) bool {
+		return !unicode.IsLetter(c) && !unicode.IsDigit(c) && !strings.ContainsRune("/._-+=@%,~", c)
+	}) || strings.HasPrefix(path, "-") {
+		return "'" + strings.ReplaceAll(path, "'", `'\''`) + "'"
+	}
+	return path
 }
 
 // summary is what a run comes to: where the package is, and how the checks came

@@ -129,6 +129,16 @@ func resolve(dir string) (string, error) {
 	return filepath.Join(parent, filepath.Base(dir)), nil
 }
 
+// Occupied is the error of a folder that holds something else than a package.
+type Occupied struct{ err error }
+
+func (e *Occupied) Error() string { return e.err.Error() }
+func (e *Occupied) Unwrap() error { return e.err }
+
+func occupied(format string, args ...any) error {
+	return &Occupied{fmt.Errorf(format, args...)}
+}
+
 func replaceable(dir string) error {
 	info, err := os.Lstat(dir)
 	if errors.Is(err, fs.ErrNotExist) {
@@ -138,18 +148,18 @@ func replaceable(dir string) error {
 		return err
 	}
 	if !info.IsDir() {
-		return fmt.Errorf("%s is a file, not the folder of a package", dir)
+		return occupied("%s is a file, not the folder of a package", dir)
 	}
 	text, err := os.ReadFile(filepath.Join(dir, ManifestFile))
 	if errors.Is(err, fs.ErrNotExist) {
-		return fmt.Errorf("%s exists and is not a package: it holds no %s", dir, ManifestFile)
+		return occupied("%s exists and is not a package: it holds no %s", dir, ManifestFile)
 	}
 	if err != nil {
 		return err
 	}
 	manifest, err := ReadManifest(text)
 	if err != nil {
-		return fmt.Errorf("%s exists and is not a package: %w", dir, err)
+		return occupied("%s exists and is not a package: %w", dir, err)
 	}
 	ours := map[string]bool{ManifestFile: true}
 	for _, f := range manifest.Files {
@@ -161,7 +171,7 @@ func replaceable(dir string) error {
 		}
 		rel, err := filepath.Rel(dir, path)
 		if err == nil && !ours[filepath.ToSlash(rel)] {
-			err = fmt.Errorf("%s holds a file that is no part of the package: %s", dir, rel)
+			err = occupied("%s holds a file that is no part of the package: %s", dir, rel)
 		}
 		return err
 	})

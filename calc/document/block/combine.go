@@ -94,11 +94,17 @@ func (b *combine) Run(r *Run) {
 			r.Fail(b.ScaleTo, "combine", "%s", err)
 			return
 		}
+		if c.ScaleFactor > unlikelyScale {
+			r.WarnAt(b.ScaleTo, "large-value", "scale_to is %s times the base shear of the modes: was it given in another unit?", quantity.Format(c.ScaleFactor, 3))
+		}
 	}
 	r.Made = c
 	b.results(r, c, in)
 	b.unraised(r, c)
 }
+
+// unlikelyScale is a factor on forces that points to a wrong unit.
+const unlikelyScale = 20
 
 // demand is what is read of the spectrum.
 type demand struct {

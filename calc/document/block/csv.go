@@ -2,9 +2,12 @@ package block
 
 import (
 	"bytes"
+	"errors"
 	"fmt"
+	"regexp"
 	"strconv"
 	"strings"
+	"unicode"
 	"unicode/utf8"
 
 	"quoin/calc/diag"
@@ -64,6 +67,11 @@ func (r *Run) readSheet(f field.Field, names, units field.Field) *sheet {
 			r.Diags.Errorf("table", lineRange(full, i+1, text), "%s", problem)
 			return nil
 		}
+		for _, c := range cells {
+			if !r.seen(c.text, c.at) {
+				return nil
+			}
+		}
 		if s.columns == nil && numeric(cells) {
 			switch {
 			case len(names.List) == len(cells) && !numbered(names):
@@ -83,7 +91,7 @@ func (r *Run) readSheet(f field.Field, names, units field.Field) *sheet {
 			for _, c := range cells {
 				col, err := head(c)
 				if err != nil {
-					r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("a head is written  name [unit]")
+					r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", or(unitHint(err), headForm))
 					return nil
 				}
 				if old := s.find(col.name); old != nil {
@@ -141,11 +149,17 @@ func separator(head string) string {
 	return ","
 }
 
+// mostCells bounds a row.
+const mostCells = 4096
+
 // split cuts a line into cells, quoted ones included, each with its place.
 func split(text, sep, file string, line int) ([]cell, string) {
 	var out []cell
-	start := 0
+	start, counted, column := 0, 0, 1 // column is that of the byte counted
 	for start <= len(text) {
+		if len(out) == mostCells {
+			return nil, fmt.Sprintf("this row has more than the %d cells that a row may have", mostCells)
+		}
 		rest := text[start:]
 		lead := len(rest) - len(strings.TrimLeft(rest, " "))
 		var value string
@@ -188,7 +202,9 @@ func split(text, sep, file string, line int) ([]cell, string) {
 			value = strings.TrimSpace(value)
 		}
 		from := start + lead
-		c := cell{text: value, at: diag.Range{File: file, Line: line, Column: utf8.RuneCountInString(text[:from]) + 1, EndLine: line}}
+		column += utf8.RuneCountInString(text[counted:from])
+		counted = from
+		c := cell{text: value, at: diag.Range{File: file, Line: line, Column: column, EndLine: line}}
 		c.at.EndColumn = c.at.Column + max(utf8.RuneCountInString(value), 1)
 		out = append(out, c)
 		if end < 0 {
@@ -201,6 +217,18 @@ func split(text, sep, file string, line int) ([]cell, string) {
 
 func lineRange(file string, line int, text string) diag.Range {
 	return diag.Range{File: file, Line: line, Column: 1, EndLine: line, EndColumn: max(utf8.RuneCountInString(text), 1) + 1}
+}
+
+// seen refuses a text of a data file that holds a character which hides or
+// reorders what a reader sees, as the document's own texts are.
+func (r *Run) seen(text string, at diag.Range) bool {
+	for _, c := range text {
+		if c != '\t' && (unicode.IsControl(c) || unicode.In(c, unicode.Cf, unicode.Zl, unicode.Zp)) {
+			r.Diags.Errorf("hidden-character", at, "the text holds the character U+%04X, which cannot be seen", c).WithHint("leave it out: it can make a reader see another text or number")
+			return false
+		}
+	}
+	return true
 }
 
 // head reads "name [unit]" or "name (unit)".
@@ -218,6 +246,60 @@ func head(c cell) (column, error) {
 		}
 	}
 	return col, nil
+}
+
+// headForm is how a head is written.
+const headForm = "a head is written  name [unit]"
+
+// unitHint is what to write instead of what is no unit, or "".
+func unitHint(err error) string {
+	var e *quantity.UnitError
+	if errors.As(err, &e) {
+		return e.Hint
+	}
+	return ""
+}
+
+// quoted is a cell in a message, cut where it is long.
+func quoted(text string) string {
+	if r := []rune(text); len(r) > 40 {
+		return strconv.Quote(string(r[:40])) + "…"
+	}
+	return strconv.Quote(text)
+}
+
+// begun tells whether a cell begins as a number does.
+func begun(text string) bool {
+	text = strings.TrimLeft(text, "+-−.")
+	return text != "" && text[0] >= '0' && text[0] <= '9'
+}
+
+// unpadded is a row without the empty cells at its end.
+func unpadded(row []cell) []cell {
+	for len(row) > 1 && row[len(row)-1].text == "" {
+		row = row[:len(row)-1]
+	}
+	return row
+}
+
+var decimalComma = regexp.MustCompile(`^[+-]?\d+,\d+$`)
+
+// numberHint says what may be wrong with a cell that is no number, or "". Sep is
+// what parts the cells, where only numbers are looked for.
+func numberHint(text, sep string) string {
+	_, err := strconv.ParseFloat(text, 64)
+	words := strings.Fields(text)
+	switch {
+	case errors.Is(err, strconv.ErrRange):
+		return "it is larger than any number that can be held here"
+	case decimalComma.MatchString(text):
+		return "decimals have a point"
+	case sep == "" || len(words) < 2:
+		return ""
+	case quantity.IsSymbol(strings.FieldsFunc(words[1], func(c rune) bool { return strings.ContainsRune("/*^·", c) })[0]):
+		return "the cells hold numbers alone; their unit is stated once, by the field unit"
+	}
+	return "between numbers stands a comma, a semicolon or a tab"
 }
 
 // find returns the column of a name, or nil.
@@ -260,7 +342,7 @@ func (r *Run) numbers(c *column, dim quantity.Dim) ([]float64, quantity.Unit, bo
 		}
 		switch {
 		case tree == nil || len(findings) > 0 || len(v.SI) != 1:
-			r.Diags.Errorf("table-number", cl.at, "%q is not a number", cl.text)
+			r.Diags.Errorf("table-number", cl.at, "%s is not a number", quoted(cl.text)).WithHint("%s", numberHint(cl.text, ""))
 			return nil, unit, false
 		case v.Unit.Text == "" && c.unit != nil:
 			out[i] = unit.To(v.SI[0])

@@ -127,6 +127,9 @@ func (b *drift) Run(r *Run) {
 		b.fail(r, err)
 		return
 	}
+	if b.Beta.Given && !b.P.Given {
+		r.WarnAt(b.Beta, "no-theta", "beta belongs to the limit of the stability coefficient, which is not evaluated without P: it has no effect")
+	}
 	r.Made = d
 	b.results(r, a, d)
 }

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"strconv"
 	"strings"
 
 	"quoin/calc/document/field"
@@ -90,7 +91,7 @@ func (b *figure) Check(c *Checks) {
 	}
 	switch {
 	case profiles == 0 && b.Over.Given:
-		c.Fail(b.Over, "figure-profile", "over belongs to profiles, and the figure has none").WithHint("- profile: response.storey_shear")
+		c.Fail(b.Over, "figure-profile", "over belongs to profiles, and the figure has none").WithHint("leave it out")
 	case profiles > 0 && profiles < len(b.Series):
 		c.Fail(b.Series[0].ways()[0], "figure-profile", "profiles stand over the height; other curves need a figure of their own")
 	case profiles > 0 && !b.Over.Given:
@@ -180,7 +181,7 @@ const mostDots = 24
 func (b *figure) vectors(r *Run, s *seriesFields) []drawn {
 	x, y := s.X.Value, s.Y.Value
 	if len(x.SI) != len(y.SI) {
-		r.Fail(s.Y, "length", "x has %d items, y has %d", len(x.SI), len(y.SI))
+		r.Fail(s.Y, "length", "x has %s, y has %d", counted(len(x.SI), "item"), len(y.SI))
 		return nil
 	}
 	if !sameLabels(x, y) {
@@ -205,6 +206,14 @@ func listed(labels []string) string {
 		return labels[0] + " to " + labels[len(labels)-1]
 	}
 	return strings.Join(labels, ", ")
+}
+
+// counted is a number of things: "1 item", "2 items".
+func counted(n int, what string) string {
+	if n != 1 {
+		what += "s"
+	}
+	return strconv.Itoa(n) + " " + what
 }
 
 func literalText(f field.Field, i int) bool {

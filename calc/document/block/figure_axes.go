@@ -38,7 +38,7 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 	if b.Series[0].Ratio.Given {
 		p.Lines = append(p.Lines, exhibit.RefLine{At: 1, Label: "1"})
 	}
-	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p)
+	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p, all)
 	if !ok {
 		return p, false
 	}
@@ -69,7 +69,13 @@ func axisUnit(r *Run, f field.Field, v quantity.Value) (quantity.Unit, bool) {
 	}
 	u, err := quantity.ParseUnit(f.Text())
 	if err != nil || !u.Dim.Is(v.Dim) {
-		r.Fail(f, "unit", "%s is no unit for %s", f.Text(), v.Dim.Name())
+		e := r.Fail(f, "unit", "%s is no unit for %s", f.Text(), v.Dim.Name())
+		switch hint := unitHint(err); {
+		case hint != "":
+			e.WithHint("%s", hint)
+		case err == nil:
+			e.WithHint("it is a unit of %s; for instance %s", u.Dim.Name(), r.System().Preferred(v.Dim).Pretty())
+		}
 		return u, false
 	}
 	return u, true
@@ -121,18 +127,22 @@ func (b *figure) inView(r *Run, p *exhibit.Panel) bool {
 	return true
 }
 
-// logarithmic leaves out the points that have no place on log axes, as a period
-// of zero.
-func (b *figure) logarithmic(r *Run, p *exhibit.Panel) bool {
+// logarithmic leaves out the points that have no place on log axes, and says so.
+// Only where a series of a block begins at a period of zero goes without saying.
+func (b *figure) logarithmic(r *Run, p *exhibit.Panel, all []drawn) bool {
 	if !p.X.Log && !p.Y.Log {
 		return true
 	}
 	for i := range p.Series {
 		s := &p.Series[i]
 		var u, v []float64
+		lost, points := 0, len(s.X)
 		for j := range s.X {
-			if !(p.X.Log && s.X[j] <= 0 || p.Y.Log && s.Y[j] <= 0) {
+			switch {
+			case !(p.X.Log && s.X[j] <= 0 || p.Y.Log && s.Y[j] <= 0):
 				u, v = append(u, s.X[j]), append(v, s.Y[j])
+			case s.ID == "" || s.X[j] != 0:
+				lost++
 			}
 		}
 		if s.X, s.Y = u, v; len(u) == 0 {
@@ -142,6 +152,9 @@ func (b *figure) logarithmic(r *Run, p *exhibit.Panel) bool {
 			}
 			r.Fail(at, "log-axis", "%s has no values greater than zero; a log axis cannot show it", s.Label)
 			return false
+		}
+		if lost > 0 {
+			r.WarnAt(all[i].from, "log-axis", "of %s, %d of %d points are not shown: they are not greater than zero, and the axis is logarithmic", s.Label, lost, points)
 		}
 	}
 	return true

@@ -33,7 +33,7 @@ func (b *figure) profile(r *Run, s *seriesFields) []drawn {
 	m := r.Product(b.Over.Text()).(*structure.Model)
 	v := s.Profile.Value
 	if len(v.SI) != len(m.H) {
-		r.Fail(s.Profile, "length", "the profile has %d items, %s has %d levels", len(v.SI), b.Over.Text(), len(m.H))
+		r.Fail(s.Profile, "length", "the profile has %s, %s has %s", counted(len(v.SI), "item"), b.Over.Text(), counted(len(m.H), "level"))
 		return nil
 	}
 	if len(v.Labels) > 0 && !slices.Equal(v.Labels, m.Levels) {

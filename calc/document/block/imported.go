@@ -67,6 +67,10 @@ func (b *modes) imported(r *Run) *modal.Modes {
 	} else {
 		g := places["shapes"]
 		g.whole = spanOf(b.Shapes)
+		if len(t.Elevation) > 1 && flat(b.Shapes) {
+			r.Diags.Errorf("modes-table", g.whole, "these are numbers, not rows: shapes has a row a mode").WithHint("a row stands in brackets of its own:  shapes: [[0.6, 1], [-1, 0.6]]")
+			return nil
+		}
 		for _, row := range b.Shapes {
 			if !row.Cells.Value.Dim.Is(quantity.None) {
 				r.Fail(row.Cells, "dimension", "a shape is of pure numbers, this is %s", row.Cells.Value.Dim.Name())

@@ -36,16 +36,13 @@ func (b *building) checkMatrices(c *Checks) {
 	case !mass:
 		b.Weight.check(c)
 	default:
-		if n := b.Mass.forms(b.Mass.File, b.Mass.Diagonal); n != 1 {
-			c.Diags.Errorf("structure-form", b.Mass.place(b.Mass.File, b.Mass.Diagonal), "the mass is given in %d ways: one of diagonal, rows, triplets and file is needed", n)
-		}
+		b.Mass.once(c, "mass", "diagonal, rows, triplets and file", b.Mass.File, b.Mass.Diagonal)
 	}
-	switch {
-	case !b.hasStiffness():
+	if !b.hasStiffness() {
 		c.Diags.Errorf("missing-field", c.Place, "a structure by matrices needs the field stiffness").WithHint("stiffness: {unit: kN/m, rows: [[300, -120], [-120, 120]]}  or  stiffness: {unit: kN/m, file: K.csv}")
-	case b.Stiffness.forms(b.Stiffness.File) != 1:
-		c.Diags.Errorf("structure-form", b.Stiffness.place(b.Stiffness.File), "the stiffness is given in %d ways: one of rows, triplets and file is needed", b.Stiffness.forms(b.Stiffness.File))
+		return
 	}
+	b.Stiffness.once(c, "stiffness", "rows, triplets and file", b.Stiffness.File)
 }
 
 // matrixPair is the two matrices as the document gives them.

@@ -3,6 +3,7 @@ package block
 import (
 	"bytes"
 	"fmt"
+	"slices"
 	"strconv"
 	"strings"
 	"unicode/utf8"
@@ -60,6 +61,16 @@ func (m *matrixFields) forms(others ...field.Field) (n int) {
 	return n
 }
 
+// once sees that a matrix is given in one way.
+func (m *matrixFields) once(c *Checks, what, ways string, others ...field.Field) {
+	switch n := m.forms(others...); {
+	case n == 0:
+		c.Diags.Errorf("structure-form", m.place(others...), "the %s has no entries: one of %s is needed", what, ways)
+	case n > 1:
+		c.Diags.Errorf("structure-form", m.place(others...), "the %s is given in %d ways: one of %s is needed", what, n, ways)
+	}
+}
+
 // grid is a matrix in SI and where each entry stands; at[i][j] has no line where
 // entry i, j was not written.
 type grid struct {
@@ -89,10 +100,7 @@ func (r *Run) matrixUnit(f field.Field, m measure) (*quantity.Unit, bool) {
 	}
 	u, err := quantity.ParseUnit(f.Text())
 	if err != nil {
-		e := r.Fail(f, "unit", "%s", err)
-		if ue, ok := err.(*quantity.UnitError); ok && ue.Hint != "" {
-			e.WithHint("%s", ue.Hint)
-		}
+		r.Fail(f, "unit", "%s", err).WithHint("%s", unitHint(err))
 		return nil, false
 	}
 	if !u.Dim.Is(m.dim) {
@@ -139,6 +147,10 @@ func (r *Run) matrix(m *matrixFields, file field.Field, n int, what measure) *gr
 	g := &grid{source: "the rows written in this document"}
 	if len(m.Rows) > 0 {
 		g.whole = spanOf(m.Rows)
+		if n > 1 && flat(m.Rows) {
+			r.Diags.Errorf("matrix-size", g.whole, "these are numbers, not rows of a matrix").WithHint("a row stands in brackets of its own:  rows: [[300, -120], [-120, 120]]")
+			return nil
+		}
 		for _, row := range m.Rows {
 			si, at, ok := r.cells(row.Cells, unit, what)
 			if !ok {
@@ -249,7 +261,8 @@ func (r *Run) matrixFile(f, unitField field.Field, unit *quantity.Unit, n int, m
 			r.Diags.Errorf("table", lineRange(full, i+1, text), "%s", problem)
 			return nil
 		}
-		if first && !numeric(row[:1]) {
+		row = unpadded(row)
+		if first && !begun(row[0].text) {
 			if headed = true; !r.heads(row, unitField, &unit, m) {
 				return nil
 			}
@@ -271,10 +284,7 @@ func (r *Run) matrixFile(f, unitField field.Field, unit *quantity.Unit, n int, m
 		for j, c := range row {
 			v, err := strconv.ParseFloat(c.text, 64)
 			if err != nil || strings.ContainsAny(c.text, "xXpP_nN") {
-				e := r.Diags.Errorf("table-number", c.at, "%q is not a number", c.text)
-				if len(row) == 1 && len(strings.Fields(c.text)) > 1 {
-					e.WithHint("between numbers stands a comma, a semicolon or a tab")
-				}
+				r.Diags.Errorf("table-number", c.at, "%s is not a number", quoted(c.text)).WithHint("%s", numberHint(c.text, sep))
 				return nil
 			}
 			x[j], at[j] = v, c.at
@@ -309,7 +319,7 @@ func (r *Run) heads(row []cell, unitField field.Field, unit **quantity.Unit, m m
 	for _, c := range row {
 		col, err := head(c)
 		if err != nil {
-			r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("a head is written  name [unit]")
+			r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", or(unitHint(err), headForm))
 			return false
 		}
 		names = append(names, strings.ToLower(col.name))
@@ -385,6 +395,11 @@ func across(f field.Field) diag.Range {
 		return f.At
 	}
 	return union(f.List[0].At, f.List[len(f.List)-1].At)
+}
+
+// flat tells whether what should be rows are single numbers: a bracket is missing.
+func flat(rows []rowFields) bool {
+	return len(rows) > 1 && !slices.ContainsFunc(rows, func(r rowFields) bool { return len(r.Cells.Value.SI) != 1 })
 }
 
 // spanOf is the place of rows, where they stand in one line; else that of the first.

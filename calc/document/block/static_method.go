@@ -145,7 +145,7 @@ func (b *static) approximateLines(w *workings, s *lateral.Static, c lateral.Clau
 		}
 		w.let("C_q", "", s.Cq, pure)
 		w.line("C_w", area+")", pure, s.Cw, "effective area of the shear walls of length D and thickness t, in percent of the area A_B at the base", c.Ref(c.Area))
-		w.line("T_a", "C_q * num(h_n, "+s.HeightUnit+") / sqrt(C_w) * 1 s", seconds, s.Ta, "approximate period of structures with shear walls; C_q for h_n in "+s.HeightUnit, c.Ref(c.Walls))
+		w.line("T_a", "C_q * num(h_n, "+s.HeightUnit+") / sqrt(C_w) * 1 s", seconds, s.Ta, "approximate period of structures with shear walls; C_q for h_n in "+s.HeightUnit+wallUnit(s.HeightUnit), c.Ref(c.Walls))
 	default:
 		from := "C_t and x as stated"
 		if s.System != "" {
@@ -267,4 +267,12 @@ func (b *static) europeanMethod(r *Run, s *lateral.Static) float64 {
 	}
 	r.Explain("Elastic displacements $u$ solve $K u = F$ with the forces of the design spectrum, already divided by $q$; they are not multiplied by $q_\\mathrm{d}$. The factor $\\delta$ of 4.3.3.2.4 for accidental torsion is not applied.", lateral.EN("4.3.3.2.4"))
 	return w.worst
+}
+
+// wallUnit says why C_q for metres is not the number that the standard prints.
+func wallUnit(unit string) string {
+	if unit != "m" {
+		return ""
+	}
+	return ": 0.0019 over 0.3048, which gives the period that feet give; 0.00058 as printed (from memory) does not"
 }

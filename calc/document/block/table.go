@@ -127,7 +127,7 @@ func (b *table) side(r *Run, t *exhibit.Table) bool {
 			return false
 		}
 		if len(v.SI) != len(first.Value.SI) {
-			r.Fail(c.Value, "length", "%s has %d items, %s has %d", c.Value.Written, len(v.SI), first.Written, len(first.Value.SI))
+			r.Fail(c.Value, "length", "%s has %s, %s has %d", c.Value.Written, counted(len(v.SI), "item"), first.Written, len(first.Value.SI))
 			return false
 		}
 		if len(v.Labels) > 0 {
@@ -151,7 +151,7 @@ func (b *table) side(r *Run, t *exhibit.Table) bool {
 	}
 	if b.Labels.Given {
 		if labels = b.Labels.Texts(); len(labels) != n {
-			r.Fail(b.Labels, "length", "there are %d labels for %d rows", len(labels), n)
+			r.Fail(b.Labels, "length", "labels has %s, the table %s", counted(len(labels), "item"), counted(n, "row"))
 			return false
 		}
 		head = ""
@@ -269,6 +269,12 @@ func (b *table) total(r *Run, t *exhibit.Table) bool {
 		}
 		f := b.Sum
 		f.At = it.At
+		for k := j + 1; j >= 0 && k < len(t.Columns); k++ {
+			if strings.EqualFold(t.Columns[k].Head, it.Text) {
+				r.Fail(f, "table-sum", "two columns have the head %s", it.Text).WithHint("name the column by its number, counted from 1, or give the two heads of their own")
+				return false
+			}
+		}
 		if j < 0 {
 			var heads []string
 			for _, c := range t.Columns[from:] {

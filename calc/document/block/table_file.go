@@ -3,9 +3,7 @@ package block
 import (
 	"strconv"
 	"strings"
-	"unicode"
 
-	"quoin/calc/diag"
 	"quoin/calc/exhibit"
 )
 
@@ -48,10 +46,8 @@ func (b *table) fromFile(r *Run, t *exhibit.Table) bool {
 		if c.unit != nil {
 			col.Unit = *c.unit
 		}
-		ok = r.seen(c.name, c.at) && ok
 		for i, cl := range c.cells {
 			text := strings.TrimSpace(cl.text)
-			ok = r.seen(text, cl.at) && ok
 			x, err := strconv.ParseFloat(strings.ReplaceAll(text, "−", "-"), 64)
 			cell := exhibit.Cell{Text: text}
 			switch {
@@ -66,18 +62,6 @@ func (b *table) fromFile(r *Run, t *exhibit.Table) bool {
 		t.Columns = append(t.Columns, col)
 	}
 	return ok
-}
-
-// seen refuses a text of a data file that holds a character which hides or
-// reorders what a reader sees, as the document's own texts are.
-func (r *Run) seen(text string, at diag.Range) bool {
-	for _, c := range text {
-		if c != '\t' && (unicode.IsControl(c) || unicode.In(c, unicode.Cf, unicode.Zl, unicode.Zp)) {
-			r.Diags.Errorf("hidden-character", at, "the text holds the character U+%04X, which cannot be seen", c).WithHint("leave it out: it can make a reader see another text or number")
-			return false
-		}
-	}
-	return true
 }
 
 func isFinite(x float64) bool { return x-x == 0 }

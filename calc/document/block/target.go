@@ -1,6 +1,7 @@
 package block
 
 import (
+	"fmt"
 	"slices"
 	"strings"
 
@@ -119,20 +120,25 @@ func (b *target) Run(r *Run) {
 		return
 	}
 	given, at := b.given(basis)
-	if !b.damping(r, std, given, at) || !b.files(r, basis, given, at) {
+	cells := map[string][]cell{}
+	if !b.damping(r, std, given, at) || !b.files(r, basis, given, cells) {
 		return
 	}
 	t, err := standard.Build(basis, given)
 	if err != nil {
 		for _, p := range standard.Problems(err) {
-			r.Fail(at[p.Symbol], "target", "%s", standard.Said(named(p.Symbol, basis), p.Problem)).WithHint("%s", p.Hint)
+			f, row := at.fault(p), 0
+			if fmt.Sscanf(p.Problem, "row %d ", &row); row >= 1 && row <= len(cells[p.Symbol]) {
+				f.At = cells[p.Symbol][row-1].at
+			}
+			r.Fail(f, "target", "%s", standard.Said(named(p.Symbol, basis), p.Problem)).WithHint("%s", p.Hint)
 		}
 		if len(standard.Problems(err)) == 0 {
 			r.Fail(b.Basis, "target", "%s", err)
 		}
 		return
 	}
-	b.results(r, t)
+	b.results(r, t, at)
 }
 
 // named is a parameter as the document knows it.
@@ -144,9 +150,9 @@ func named(symbol, basis string) string {
 }
 
 // given are the numbers and words of the fields by symbol, and where each stands.
-func (b *target) given(basis string) (standard.Given, map[string]field.Field) {
+func (b *target) given(basis string) (standard.Given, places) {
 	given := standard.Given{Numbers: map[string]float64{}, Texts: map[string]string{}, Columns: map[string][]float64{}}
-	at := map[string]field.Field{}
+	at := places{}
 	field.Top(b, func(f *field.Field, s field.Spec) {
 		at[s.Name] = *f
 		switch s.Name {
@@ -171,7 +177,7 @@ func (b *target) given(basis string) (standard.Given, map[string]field.Field) {
 
 // damping is the field damping: of a table, or another word for the standard's
 // own parameter.
-func (b *target) damping(r *Run, std standard.Standard, given standard.Given, at map[string]field.Field) bool {
+func (b *target) damping(r *Run, std standard.Standard, given standard.Given, at places) bool {
 	if !b.Damping.Given || std.Basis == tableBasis {
 		return true
 	}
@@ -191,7 +197,7 @@ func (b *target) damping(r *Run, std standard.Standard, given standard.Given, at
 }
 
 // files reads the columns of a table or of ordinates.
-func (b *target) files(r *Run, basis string, given standard.Given, at map[string]field.Field) bool {
+func (b *target) files(r *Run, basis string, given standard.Given, cells map[string][]cell) bool {
 	names, units, damping := b.Table.Columns, b.Table.Units, b.Table.Damping
 	if b.Columns.Given {
 		names = b.Columns
@@ -207,7 +213,7 @@ func (b *target) files(r *Run, basis string, given standard.Given, at map[string
 		r.Fail(b.Ordin, "target-basis", "ordinates belong to the multi-period spectrum of ASCE/SEI 7-22, and this target is a table").WithHint("give one of the two")
 		return false
 	case basis == tableBasis:
-		if !b.columns(r, b.Table.File, names, units, given) {
+		if !b.columns(r, b.Table.File, names, units, given, cells) {
 			return false
 		}
 		if !damping.Given {
@@ -219,7 +225,7 @@ func (b *target) files(r *Run, basis string, given standard.Given, at map[string
 		r.Used("table", "table", plain(b.Table.File.Text()), "")
 		r.Used("rows", "rows of the table", plain(quantity.Plain(float64(len(given.Columns["T"])))), "")
 	case b.Ordin.Given:
-		if !b.columns(r, b.Ordin, names, units, given) {
+		if !b.columns(r, b.Ordin, names, units, given, cells) {
 			return false
 		}
 		r.Used("rows", "rows of the ordinates", plain(quantity.Plain(float64(len(given.Columns["T"])))), "")
@@ -238,7 +244,7 @@ func bases() []string {
 }
 
 // columns reads the columns of period and ordinate of a file.
-func (b *target) columns(r *Run, file, names, units field.Field, given standard.Given) bool {
+func (b *target) columns(r *Run, file, names, units field.Field, given standard.Given, cells map[string][]cell) bool {
 	s := r.readSheet(file, names, units)
 	if s == nil {
 		return false
@@ -266,7 +272,7 @@ func (b *target) columns(r *Run, file, names, units field.Field, given standard.
 			}
 			u, err := quantity.ParseUnit(units.List[i].Text)
 			if err != nil {
-				r.Diags.Errorf("unit", units.List[i].At, "%s", err)
+				r.Diags.Errorf("unit", units.List[i].At, "%s", err).WithHint("%s", unitHint(err))
 				return false
 			}
 			if c.unit != nil && c.unit.Text != u.Text {
@@ -283,7 +289,7 @@ func (b *target) columns(r *Run, file, names, units field.Field, given standard.
 		if !ok {
 			return false
 		}
-		given.Columns[key] = x
+		given.Columns[key], cells[key] = x, c.cells
 	}
 	return true
 }

@@ -12,7 +12,7 @@ import (
 	"quoin/calc/standard"
 )
 
-func (b *target) results(r *Run, t *standard.Target) {
+func (b *target) results(r *Run, t *standard.Target, at places) {
 	r.Made = t
 	std, _ := standard.Lookup(t.Basis)
 	for _, p := range t.Parameters {
@@ -29,7 +29,11 @@ func (b *target) results(r *Run, t *standard.Target) {
 			r.Caution(w.Code)
 			fallthrough
 		default:
-			r.Warn(w.Code, "%s", w.Text)
+			if f, ok := at.doubt(t, w); ok {
+				r.WarnAt(f, w.Code, "%s", w.Text)
+			} else {
+				r.Warn(w.Code, "%s", w.Text)
+			}
 		}
 	}
 	switch {

@@ -122,6 +122,10 @@ func (b *record) treated(r *Run, rec *motion.Record) *motion.Record {
 		}
 		t, fields := b.Treat[i].treatment()
 		r.Echo.Rows = append(r.Echo.Rows, exhibit.EchoRow{Field: fmt.Sprintf("treat[%d]", i+1), Label: fmt.Sprintf("treat, step %d", i+1), Value: plain(t.String())})
+		if taper, ok := t.(motion.Taper); ok && taper.Start+taper.End == 0 {
+			r.Diags.Errorf("treat-step", b.Treat[i].groups()[0].At, "a taper without length changes nothing").WithHint("leave the step out, or give start or end a length")
+			return nil
+		}
 		out, residual, err := t.Apply(rec)
 		if err != nil {
 			at, hint := b.Treat[i].groups()[0].At, ""
@@ -135,7 +139,8 @@ func (b *record) treated(r *Run, rec *motion.Record) *motion.Record {
 			r.Diags.Errorf("treat", at, "%s", err).WithHint("%s", hint)
 			return nil
 		}
-		b.doubts(r, t, rec)
+		fields[""] = field.Field{At: b.Treat[i].groups()[0].At} // the step as a whole
+		b.doubts(r, t, rec, out, fields)
 		if residual.What != "" {
 			r.Crosscheck(fmt.Sprintf("step %d (%s): %s", i+1, b.Treat[i].groups()[0].name, residual.What), residual.Value, residual.Limit)
 		}
@@ -165,19 +170,22 @@ func about(t float64) exhibit.Cell {
 }
 
 // doubts warns of what a step will not do well on this record.
-func (b *record) doubts(r *Run, t motion.Treatment, rec *motion.Record) {
+func (b *record) doubts(r *Run, t motion.Treatment, rec, out *motion.Record, fields map[string]field.Field) {
 	switch t := t.(type) {
 	case motion.Bandpass:
 		if t.From > 0 && t.From*rec.Duration() < 1 {
-			r.Warn("treat", "the lower corner of %s Hz is below one wave over the record (%s s): such a filter can hardly tell drift from motion", short(round12(t.From)), quantity.Format(rec.Duration(), 3))
+			r.WarnAt(fields["from"], "treat", "the lower corner of %s Hz is below one wave over the record (%s s): such a filter can hardly tell drift from motion", short(round12(t.From)), quantity.Format(rec.Duration(), 3))
 		}
 		peak := motion.Measure(rec).PGA
 		if ends := max(math.Abs(rec.A[0]), math.Abs(rec.A[len(rec.A)-1])); ends > 0.01*peak {
-			r.Warn("treat", "the record jumps to zero by %s %% of its peak at an end before it is filtered; taper it first", quantity.Format(100*ends/peak, 2))
+			r.WarnAt(fields[""], "treat", "the record jumps to zero by %s %% of its peak at an end before it is filtered; taper it first", quantity.Format(100*ends/peak, 2))
 		}
 	case motion.Resample:
 		if t.Step == rec.Step {
-			r.Warn("treat", "the record has the step of %s s already; resampling changes nothing", short(round12(t.Step)))
+			r.WarnAt(fields["step"], "treat", "the record has the step of %s s already; resampling changes nothing", short(round12(t.Step)))
+		}
+		if lost := motion.Lost(rec, out); t.Step > rec.Step && lost > 0.01 {
+			r.WarnAt(fields["step"], "treat", "a step of %s s holds no motion above %s Hz: resampling removes %s %% of the energy of the record, the integral of a²", short(round12(t.Step)), quantity.Format(0.5/t.Step, 3), quantity.Format(100*lost, 3))
 		}
 	}
 }

@@ -21,6 +21,7 @@ type decoder struct {
 	what  string
 	names formula.Names
 	diags diag.List
+	key   string // the name that leads to the group being read
 }
 
 // slot is where a field name leads.
@@ -66,6 +67,9 @@ func (d *decoder) group(n Node, v reflect.Value) {
 		}
 		for _, s := range all {
 			if s.spec.Short {
+				if f, ok := s.value.Addr().Interface().(*Field); ok && d.key != "" {
+					f.As, s.spec.Name = d.key, d.key
+				}
 				d.one(n, s)
 				d.missing(n, all)
 				return
@@ -74,6 +78,13 @@ func (d *decoder) group(n Node, v reflect.Value) {
 		e := d.diags.Errorf("shape", n.At, "%s is a mapping: lines of  field: value", d.what)
 		if name, value, ok := strings.Cut(n.Text, "="); ok {
 			e.WithHint("a field is written with a colon: %s: %s", strings.TrimSpace(name), strings.TrimSpace(value))
+		} else if m, ok := v.Addr().Interface().(marked); ok {
+			var names []string
+			for _, s := range all {
+				names = append(names, s.spec.Name)
+			}
+			e.WithHint("its fields are %s", strings.Join(names, ", "))
+			m.unmark() // it is said what is wrong
 		}
 		return
 	}
@@ -155,17 +166,21 @@ func (d *decoder) one(n Node, s slot) {
 	}
 	switch s.value.Kind() {
 	case reflect.Struct:
+		key := d.key
+		d.key = s.spec.Name
 		d.group(n, s.value)
+		d.key = key
 	case reflect.Slice:
 		items := n.Items
 		if n.IsMap || n.Scalar() && n.Text != "" {
 			items = []Node{n}
 		}
 		out := reflect.MakeSlice(s.value.Type(), len(items), len(items))
-		what := d.what
+		what, key := d.what, d.key
 		for i, it := range items {
+			d.key = ""
 			d.group(it, out.Index(i))
-			d.what = what
+			d.what, d.key = what, key
 		}
 		s.value.Set(out)
 	}

@@ -27,6 +27,7 @@ import (
 //	short    "yes": a scalar in place of the mapping sets this field
 type Field struct {
 	Given   bool
+	As      string // the name it goes by in the document, where that is the one of its group
 	Written string // as in the source, or the default
 	At      diag.Range
 	List    []Item         // texts (one unless many)
@@ -44,9 +45,13 @@ type Group struct {
 }
 
 func (g *Group) mark(at diag.Range) { g.Given, g.At = true, at }
+func (g *Group) unmark()            { g.Given = false }
 
 // marked is a struct that embeds a Group.
-type marked interface{ mark(at diag.Range) }
+type marked interface {
+	mark(at diag.Range)
+	unmark()
+}
 
 // Item is one text of a field.
 type Item struct {
@@ -247,6 +252,9 @@ func (f *Field) resolve(s Spec, scope formula.Scope, diags *diag.List) {
 	if !s.Quantity || len(f.trees()) == 0 {
 		return
 	}
+	if f.As != "" {
+		s.Name = f.As
+	}
 	var parts []quantity.Value
 	for i, tree := range f.trees() {
 		v, findings := formula.Evaluate(tree, scope)
@@ -259,6 +267,8 @@ func (f *Field) resolve(s Spec, scope formula.Scope, diags *diag.List) {
 			hint := s.Hint
 			if hint == "" && v.Dim.Is(quantity.None) {
 				hint = "write the unit after the number, for instance " + s.Unit(quantity.SI).Pretty()
+			} else if hint == "" && s.Dim.Is(quantity.Force) && v.Dim.Is(quantity.Mass) {
+				hint = "a weight is a force (kN, kip): that of a mass (t, kg) is the mass times 9.80665 m/s^2"
 			}
 			diags.Errorf("dimension", f.spot(i, 0, len(f.List[i].Text)), "%s must be %s, this is %s", s.Name, s.Dim.Name(), v.Dim.Name()).WithHint("%s", hint)
 			return

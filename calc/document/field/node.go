@@ -204,6 +204,11 @@ func (p *reader) node(n ast.Node, depth int) Node {
 		return p.mapping([]*ast.MappingValueNode{n}, depth)
 	case *ast.SequenceNode:
 		out := Node{At: at, IsList: true}
+		if n.IsFlowStyle && n.End != nil {
+			if end := p.rangeOf(n.End); end.Line == at.Line && end.EndColumn > at.EndColumn {
+				out.At.EndColumn = end.EndColumn
+			}
+		}
 		for _, v := range n.Values {
 			out.Items = append(out.Items, p.node(v, depth+1))
 		}
