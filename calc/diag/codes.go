@@ -138,6 +138,7 @@ var Codes = []Code{
 	{"second-order-analysis", "The stability coefficient lies between 0.20 and 0.30, where EN 1998-1 asks for a second-order analysis.", "Stiffen the structure, or analyse it with second-order effects elsewhere and say so."},
 	{"second-order-factor", "The stability coefficient exceeds 0.10: drifts are multiplied by 1/(1 - theta).", "Multiply member forces by the value second_order of the block too, or stiffen the structure."},
 	{"shape", "A vector stands where one number is needed, a list where one value is needed, or the other way round.", "Take an item by [1], reduce the vector by sum or max, or write the field as the hint shows."},
+	{"sheet-spills", "The PDF has not as many pages as the package has sheets: what stands on a sheet is higher than paper, or a page is missing.", "Find the first page whose number runs ahead of its sheet, and shorten or split what stands there."},
 	{"short-below-long", "S_MS is less than S_M1, which the International Building Code does not let stand.", "Where that code governs, give S_MS as large as S_M1; the design category is found without that."},
 	{"signature", "An entry of prepared, checked or approved is not the initials of a person and a date.", "Write MK 2031-03-02; leave the line blank until it is done."},
 	{"site-class-f", "Site class F has no tabulated spectrum.", "Obtain site-specific ground motion and give it as a table."},

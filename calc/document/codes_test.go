@@ -20,6 +20,7 @@ var elsewhere = map[string]string{
 	"cross-check":    "block/run_test.go",                 // no sound input makes an engine differ from itself
 	"internal":       "fuzz_test.go",                      // a fault of the program: the fuzz targets look for it
 	"markdown-fault": "markdown/sound_test.go",            // as above
+	"sheet-spills":   "../../testdata/script/print.txtar", // of paper
 	"override":       "../../testdata/script/codes.txtar", // of the option --set
 }
 

@@ -35,19 +35,15 @@ func (a *app) build(file string) int {
 	}
 	if res.Package == nil {
 		bar.done()
-		return a.report(src, res, "", false)
+		return a.report(src, res, written{})
 	}
-	o := render.Options{Progress: bar.stage(progressDraw)}
-	if a.cache != nil {
-		o.Cache = a.cache
-	}
-	files, err := render.Package(res.Package, res.Files, o)
+	files, err := a.draw(res, bar)
 	unchanged := err == nil && ledger.Holds(dir, files)
 	if err == nil && !unchanged {
 		err = ledger.Write(dir, files)
 	}
 	bar.done()
-	return a.outcome(src, res, err, dir, unchanged)
+	return a.outcome(src, res, err, written{dir: dir, unchanged: unchanged})
 }
 
 // folder is where the package of src goes.
@@ -81,20 +77,29 @@ func (a *app) check(file string) int {
 		err = render.Formulas(res.Package, res.Files)
 	}
 	bar.done()
-	return a.outcome(src, res, err, "", false)
+	return a.outcome(src, res, err, written{})
+}
+
+// draw makes the files of the package of a run.
+func (a *app) draw(res document.Result, bar *progress) (map[string][]byte, error) {
+	o := render.Options{Progress: bar.stage(progressDraw)}
+	if a.cache != nil {
+		o.Cache = a.cache
+	}
+	return render.Package(res.Package, res.Files, o)
 }
 
 // outcome reports a run, what the typesetter refuses among its messages.
-func (a *app) outcome(src source, res document.Result, err error, dir string, unchanged bool) int {
+func (a *app) outcome(src source, res document.Result, err error, w written) int {
 	var faults *render.Faults
 	switch {
 	case errors.As(err, &faults):
 		res.Package, res.Diagnostics = nil, append(res.Diagnostics, faults.List...)
-		dir = ""
+		w = written{}
 	case err != nil:
 		return a.fail(src.given, err)
 	}
-	return a.report(src, res, dir, unchanged)
+	return a.report(src, res, w)
 }
 
 // compute runs the document with what is known of where it came from.

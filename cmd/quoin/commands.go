@@ -40,7 +40,10 @@ func (a *app) commands() *cobra.Command {
 	build.Flags().StringVarP(&a.flags.out, "out", "o", "", flagOut)
 	check := &cobra.Command{Use: checkUse, Short: checkShort, Long: checkLong, Example: checkExample, Args: a.arguments,
 		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, a.check) }}
-	for _, c := range []*cobra.Command{build, check} {
+	print := &cobra.Command{Use: printUse, Short: printShort, Long: printLong, Example: printExample, Args: a.arguments,
+		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, a.print) }}
+	print.Flags().StringVarP(&a.flags.out, "out", "o", "", flagPDF)
+	for _, c := range []*cobra.Command{build, check, print} {
 		c.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
 		c.Flags().StringArrayVar(&a.flags.set, "set", nil, flagSet)
 		c.Flags().BoolVar(&a.flags.strict, "strict", false, flagStrict)

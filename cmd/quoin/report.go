@@ -20,20 +20,27 @@ type outcome struct {
 	Diagnostics diag.List      `json:"diagnostics"`
 	Checks      []ledger.Check `json:"checks"`
 	Built       string         `json:"built"`               // the folder of the package, or ""
+	Printed     string         `json:"printed,omitempty"`   // the PDF
 	Unchanged   bool           `json:"unchanged,omitempty"` // it held the very same already; nothing was written
 }
 
+// written is what a run wrote: the folder of the package or the PDF, or neither;
+// unchanged says that the folder held the very same already.
+type written struct {
+	dir, pdf  string
+	unchanged bool
+}
+
 // report says what a run came to: diagnostics to stderr, the summary to stdout;
-// with --json all of it as data. dir is the folder written, or ""; unchanged says
-// that it held the very same already.
-func (a *app) report(src source, res document.Result, dir string, unchanged bool) int {
+// with --json all of it as data.
+func (a *app) report(src source, res document.Result, w written) int {
 	list, checks := seenFromHere(src, res)
 	if a.flags.json {
 		rows, err := ledger.Checks(checks, "")
 		if err != nil {
 			return a.fail(src.given, err)
 		}
-		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(dir), Unchanged: unchanged})
+		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(w.dir), Printed: filepath.ToSlash(w.pdf), Unchanged: w.unchanged})
 	} else {
 		a.writeDiagnostics(src, list, res.Files)
 	}
@@ -41,11 +48,11 @@ func (a *app) report(src source, res document.Result, dir string, unchanged bool
 		return exitErrors
 	}
 	if !a.flags.json {
-		page := ""
-		if dir != "" {
-			page = filepath.ToSlash(filepath.Join(dir, "index.html"))
+		page := filepath.ToSlash(w.pdf)
+		if w.dir != "" {
+			page = filepath.ToSlash(filepath.Join(w.dir, "index.html"))
 		}
-		fmt.Fprint(a.stdout, summary(src.given, page, unchanged, checks))
+		fmt.Fprint(a.stdout, summary(src.given, page, w.unchanged, checks))
 	}
 	if a.flags.strict && len(exhibit.Failed(checks)) > 0 {
 		return exitStrict

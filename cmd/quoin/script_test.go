@@ -41,6 +41,9 @@ func TestScripts(t *testing.T) {
 			e.Setenv("GIT_CONFIG_GLOBAL", os.DevNull)
 			e.Setenv("GIT_CONFIG_NOSYSTEM", "1")
 			e.Setenv("QUOIN_CACHE", cache)
+			e.Setenv("QUOIN_CHROMIUM", "")
+			// The folder of the program alone: a PATH on which nothing else is found.
+			e.Setenv("BARE", filepath.SplitList(e.Getenv("PATH"))[0])
 			for _, who := range []string{"AUTHOR", "COMMITTER"} {
 				e.Setenv("GIT_"+who+"_NAME", "AB")
 				e.Setenv("GIT_"+who+"_EMAIL", "ab@example.org")

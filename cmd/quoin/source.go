@@ -113,8 +113,11 @@ func (s source) seen(path string) string {
 }
 
 // folder is where the package goes by default: STEM.package beside FILE.
-func (s source) folder() string {
+func (s source) folder() string { return s.beside(".package") }
+
+// beside is STEM and an ending, beside FILE.
+func (s source) beside(ending string) string {
 	base := filepath.Base(s.given)
 	stem := strings.TrimSuffix(base, filepath.Ext(base))
-	return filepath.Join(filepath.Dir(s.given), stem+".package")
+	return filepath.Join(filepath.Dir(s.given), stem+ending)
 }

@@ -50,6 +50,20 @@ Exit codes: 0 no errors, 1 errors, 2 wrong usage, 3 no errors, but with --strict
 check is not met.`
 	checkExample = `  quoin check package.md`
 
+	printUse   = "print FILE..."
+	printShort = "run the document and print its page to a PDF"
+	printLong  = `Run the document FILE as build does and print the page to a PDF, by default
+STEM.pdf beside it, through a Chromium, Chrome or Edge found on this machine:
+tagged, with an outline of its headings, sheets numbered. The browser runs without
+a window, a network or your profile. QUOIN_CHROMIUM names one, by path or by name.
+A PDF that is there is replaced when the new one is whole; any other file is left
+alone. No folder of a package is written.
+
+Exit codes: 0 printed, 1 errors, 2 wrong usage, 3 printed, but with --strict a
+check is not met.`
+	printExample = `  quoin print package.md
+  quoin print package.md -o issue-b.pdf --strict`
+
 	blocksUse   = "blocks [KIND...]"
 	blocksShort = "show the block kinds, their fields and values, and the rest of the language"
 	blocksLong  = `Without an argument, list the block kinds and the other parts of the language. With
@@ -68,6 +82,7 @@ piece by piece. A folder that holds anything is left alone.`
   quoin new tower --units US`
 
 	flagOut    = "write the package to the folder `DIR`"
+	flagPDF    = "write the PDF to `FILE`"
 	flagRoot   = "read nothing outside `DIR`"
 	flagSet    = "replace a value of the document, as in `name=value`; may be repeated"
 	flagStrict = "exit with 3 when a check is not met"
@@ -76,8 +91,9 @@ piece by piece. A folder that holds anything is left alone.`
 	flagAsData = "write the reference as JSON"
 	flagJSON   = "write diagnostics and checks to stdout as JSON, one object for each FILE"
 
-	progressRun  = "computing"
-	progressDraw = "drawing"
+	progressRun   = "computing"
+	progressDraw  = "drawing"
+	progressPrint = "printing"
 )
 
 func versionLine() string { return "quoin " + version }
@@ -207,3 +223,38 @@ const (
 	issuedDirty     = "status is issued, but the sources differ from the commit"
 	issuedDirtyHint = "commit them first: what is issued must be found again"
 )
+
+// Of printing. The browser's own words come last.
+const (
+	pdfFolder     = "is a folder; name a file with -o"
+	pdfForeign    = "exists and is no PDF; it is left as it is"
+	pdfUnwritable = "cannot be written"
+
+	browserNamed       = "%s names %q, which is no program that can be run"
+	browserInterrupted = "interrupted; nothing was written"
+	browserSlow        = "the browser %s did not finish within %s and was ended"
+	browserFailed      = "the browser %s failed (%v); its last words: %s"
+	browserSilent      = "the browser %s wrote no PDF; its last words: %s; a browser in a box of its own, such as a snap, may not see the temporary folder %s: let TMPDIR name one in your home"
+	browserSpoilt      = "the browser %s wrote what is not a whole PDF; its last words: %s"
+	browserMute        = "none"
+
+	spillsHint    = "the foot of each page names its sheet and its page: look where the page runs ahead, and shorten or split what stands there"
+	uncountedHint = "open it and see that each sheet is there"
+)
+
+// noBrowser says what was looked for, and how to name another.
+func noBrowser(names, places []string, variable string) string {
+	text := "no browser to print with was found; looked for " + strings.Join(names, ", ") + " on PATH"
+	if len(places) > 0 {
+		text += " and for " + strings.Join(places, ", ")
+	}
+	return text + "; install Chromium, or let " + variable + " name a browser of its family"
+}
+
+func spills(sheets, pages int) string {
+	return fmt.Sprintf("%d sheets came out on %d pages: a sheet spills over onto a second one", sheets, pages)
+}
+
+func uncounted(sheets, pages int) string {
+	return fmt.Sprintf("of %d sheets only %d pages were found in the PDF", sheets, pages)
+}

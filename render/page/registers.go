@@ -108,27 +108,31 @@ func (b *book) registers() (out []item, toc []entry) {
 	return out, toc
 }
 
+// cautionRow is a caution and its number in its list.
+type cautionRow struct {
+	N int
+	exhibit.Caution
+}
+
+// cautions are two lists that go on from sheet to sheet: those of every package,
+// and those of what was used in this one.
 func (b *book) cautions() []item {
-	var standing, triggered []exhibit.Caution
-	high := [2]float64{12, 12}
+	var standing, triggered []cautionRow
 	for _, c := range b.p.Cautions {
 		if len(c.Blocks) == 0 {
-			standing = append(standing, c)
-			high[0] += paragraph(c.Text)
+			standing = append(standing, cautionRow{len(standing) + 1, c})
 		} else {
-			triggered = append(triggered, c)
-			high[1] += paragraph(c.Text + strings.Repeat("sheet 12, ", len(c.Blocks)))
+			triggered = append(triggered, cautionRow{len(triggered) + 1, c})
 		}
 	}
-	var out []item
-	if len(standing) > 0 {
-		out = append(out, item{name: "standing", data: standing, high: high[0]})
+	high := func(c cautionRow) float64 {
+		return 5*lines(c.Text+strings.Repeat("sheet 12, ", len(c.Blocks)), 95) - 0.5
 	}
-	if len(triggered) > 0 {
-		out = append(out, item{name: "triggered", data: triggered, high: high[1]})
-	}
-	return out
+	return append(chunked("standing", cautionHead, standing, high, nil), chunked("triggered", cautionHead, triggered, high, nil)...)
 }
+
+// cautionHead is the head of a list of cautions, and what stands around it, mm.
+const cautionHead = 18
 
 type footnoteView struct {
 	ID, Back string

@@ -1,6 +1,7 @@
 package page
 
 import (
+	"bytes"
 	"fmt"
 	"slices"
 	"strings"
@@ -23,6 +24,9 @@ type item struct {
 	// (nothing, if little would), and the rest. Nil where it is not cut.
 	cut func(room float64) (first, rest []item)
 }
+
+// Sheets is how many sheets a written page has.
+func Sheets(html []byte) int { return bytes.Count(html, []byte(`<section class="sheet`)) }
 
 // least is the room, mm, below which nothing is cut to begin in it.
 const least = 45

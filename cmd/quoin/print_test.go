@@ -1,0 +1,213 @@
+package main
+
+import (
+	"bytes"
+	"fmt"
+	"os"
+	"os/exec"
+	"path/filepath"
+	"regexp"
+	"slices"
+	"strings"
+	"testing"
+	"time"
+)
+
+// TestPrint prints packages with a real browser and reads the PDF back: all that
+// the page shows is on paper, on the sheet that says so.
+func TestPrint(t *testing.T) {
+	t.Setenv(browserVariable, tool(t, "chromium", "chromium", "chromium-browser"))
+	for _, name := range []string{"pdftotext", "pdfinfo", "pdffonts"} {
+		tool(t, "pdftoppm", name) // of the same package
+	}
+	t.Setenv("TMPDIR", t.TempDir())
+	t.Run("example", func(t *testing.T) {
+		dir := t.TempDir()
+		page := pageOf(t, module+"/examples/four-storey/package.md", dir)
+		pdf := printed(t, module+"/examples/four-storey/package.md", dir)
+		isPaper(t, pdf, "594.96 x 841.92 pts (A4)")
+		holdsPage(t, pdf, page)
+	})
+	t.Run("letter", func(t *testing.T) {
+		dir := t.TempDir()
+		file := filepath.Join(dir, "p.md")
+		if err := os.WriteFile(file, []byte("---\nquoin: 1\ntitle: On Letter\npaper: Letter\n---\n\n# One\n\n```calc formula\nV = 3 kN\ncheck V <= 4 kN\n```\n"), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		page := pageOf(t, file, dir)
+		pdf := printed(t, file, dir)
+		isPaper(t, pdf, "612 x 792 pts (letter)")
+		holdsPage(t, pdf, page)
+	})
+	if left, err := os.ReadDir(os.TempDir()); err != nil || slices.ContainsFunc(left, func(e os.DirEntry) bool { return strings.HasPrefix(e.Name(), "quoin-print-") }) {
+		t.Errorf("this is left behind: %v (%v)", left, err)
+	}
+}
+
+// pageOf is the page of FILE, printed its PDF; neither may warn.
+func pageOf(t *testing.T, file, dir string) string {
+	t.Helper()
+	quiet(t, "build", file, "-o", filepath.Join(dir, "p.package"))
+	text, err := os.ReadFile(filepath.Join(dir, "p.package", "index.html"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	return string(text)
+}
+
+func printed(t *testing.T, file, dir string) string {
+	t.Helper()
+	pdf := filepath.Join(dir, "p.pdf")
+	quiet(t, "print", file, "-o", pdf)
+	return pdf
+}
+
+func quiet(t *testing.T, args ...string) {
+	t.Helper()
+	var out, said strings.Builder
+	if code := run(args, strings.NewReader(""), &out, &said); code != exitBuilt || said.Len() > 0 {
+		t.Fatalf("quoin %s ends with %d:\n%s", args[0], code, &said)
+	}
+}
+
+func output(t *testing.T, name string, args ...string) string {
+	t.Helper()
+	out, err := exec.Command(name, args...).Output()
+	if err != nil {
+		t.Fatalf("%s: %v", name, err)
+	}
+	return string(out)
+}
+
+// isPaper sees to what the PDF is as a whole: its paper, tags, outline and faces,
+// and that it leads to no file of this machine.
+func isPaper(t *testing.T, pdf, size string) {
+	t.Helper()
+	info := output(t, "pdfinfo", pdf)
+	for _, want := range []string{`(?m)^Creator: +` + regexp.QuoteMeta(versionLine()) + "$", `(?m)^Tagged: +yes$`, `(?m)^JavaScript: +no$`, `(?m)^Encrypted: +no$`, `(?m)^Page size: +` + regexp.QuoteMeta(size) + "$"} {
+		if !regexp.MustCompile(want).MatchString(info) {
+			t.Errorf("not %s:\n%s", want, info)
+		}
+	}
+	data, err := os.ReadFile(pdf)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, m := range regexp.MustCompile(`Date \(D:(\d+)`).FindAllSubmatch(data, -1) {
+		if day := "20310302000000"; string(m[1]) != day {
+			t.Errorf("it has the date %s, the package %s", m[1], day)
+		}
+	}
+	if !bytes.Contains(data, []byte("/Outlines ")) {
+		t.Error("there is no outline")
+	}
+	if i := bytes.Index(data, []byte("(file:")); i >= 0 {
+		t.Errorf("it leads to %.80q", data[i:])
+	}
+	fonts := output(t, "pdffonts", pdf)
+	for _, want := range []string{"STIXTwoText-Regular", "STIXTwoMath-Regular", "IBMPlexSansCond-Regular"} {
+		if !strings.Contains(fonts, want) {
+			t.Errorf("the face %s is not in it", want)
+		}
+	}
+	for line := range strings.Lines(fonts) {
+		if f := strings.Fields(line); strings.Contains(line, "Identity-H") && !strings.Contains(line, "Identity-H       yes") {
+			t.Errorf("the face %s is not embedded", f[0])
+		}
+	}
+}
+
+var (
+	sheetStart = regexp.MustCompile(`<section class="sheet[^"]*" id="sheet-\d+"`)
+	captionOf  = regexp.MustCompile(`<b>((?:Figure|Table) \d+)</b>`)
+	numberOf   = regexp.MustCompile(`<span class="eqno"[^>]*>\s*(\([^<]+\))`)
+	markup     = regexp.MustCompile(`<[^>]*>`)
+)
+
+// holdsPage sees that page n of the PDF is sheet n of the page, and has all its
+// figures, tables and numbers of equations.
+func holdsPage(t *testing.T, pdf, page string) {
+	t.Helper()
+	starts := sheetStart.FindAllStringIndex(page, -1)
+	pages := strings.Split(strings.TrimSuffix(output(t, "pdftotext", "-layout", pdf, "-"), "\f"), "\f")
+	if len(pages) != len(starts) || len(pages) < 2 {
+		t.Fatalf("%d pages of %d sheets", len(pages), len(starts))
+	}
+	found := map[string]int{}
+	for i, text := range pages {
+		end := len(page)
+		if i+1 < len(starts) {
+			end = starts[i+1][0]
+		}
+		words := strings.Join(strings.Fields(text), " ")
+		// In the head and at the foot.
+		if want := fmt.Sprintf("Sheet %d of %d", i+1, len(starts)); strings.Count(words, want) != 2 || !strings.HasSuffix(words, fmt.Sprintf("%s · printed page %d", want, i+1)) {
+			t.Errorf("page %d does not say %q twice:\n%.300s", i+1, want, text)
+		}
+		for what, re := range map[string]*regexp.Regexp{"caption": captionOf, "equation": numberOf} {
+			for _, m := range re.FindAllStringSubmatch(page[starts[i][0]:end], -1) {
+				found[what]++
+				if !strings.Contains(words, strings.TrimSpace(markup.ReplaceAllString(m[1], ""))) {
+					t.Errorf("page %d lacks %s", i+1, m[1])
+				}
+			}
+		}
+	}
+	if found["equation"] == 0 || len(pages) > 20 && (found["caption"] < 15 || found["equation"] < 30) {
+		t.Errorf("too little to test on: %v", found)
+	}
+}
+
+// A browser that does not end is ended, with all that it started.
+func TestPrintTimeLimit(t *testing.T) {
+	sh := tool(t, "sh", "sh")
+	dir := t.TempDir()
+	slow := filepath.Join(dir, "slow")
+	if err := os.WriteFile(slow, []byte("#!"+sh+"\nsleep 60 &\necho $! > "+dir+"/pid\nwait\n"), 0o755); err != nil {
+		t.Fatal(err)
+	}
+	before := browserTime
+	t.Cleanup(func() { browserTime = before })
+	browserTime = time.Second
+	start := time.Now()
+	_, err := paper(slow, []byte("<p>"))
+	if err == nil || !strings.Contains(err.Error(), "did not finish within 1s") || time.Since(start) > 30*time.Second {
+		t.Errorf("after %s: %v", time.Since(start), err)
+	}
+	pid, err := os.ReadFile(dir + "/pid")
+	if err != nil {
+		t.Fatal(err)
+	}
+	for range 100 {
+		if exec.Command(sh, "-c", "kill -0 "+strings.TrimSpace(string(pid))).Run() != nil {
+			return
+		}
+		time.Sleep(20 * time.Millisecond)
+	}
+	t.Error("what it started goes on")
+}
+
+func TestBrowserPlaces(t *testing.T) {
+	env := func(name string) string {
+		return map[string]string{"HOME": "/Users/mk", "ProgramFiles": `C:\Program Files`, "LocalAppData": `C:\Users\mk\AppData\Local`}[name]
+	}
+	for system, want := range map[string]string{
+		"darwin":  "/Users/mk/Applications/Google Chrome.app/Contents/MacOS/Google Chrome",
+		"windows": `C:\Program Files\Microsoft\Edge\Application\msedge.exe`,
+	} {
+		if got := browserPlaces(system, env); !slices.Contains(got, want) || len(got) != 6 {
+			t.Errorf("%s: %q", system, got)
+		}
+	}
+	if got := browserPlaces("linux", env); len(got) > 0 {
+		t.Errorf("linux: %q", got)
+	}
+}
+
+func TestFileURL(t *testing.T) {
+	for path, want := range map[string]string{"/tmp/a b/100%/ü#?.html": "file:///tmp/a%20b/100%25/%C3%BC%23%3F.html", "C:/a/b.html": "file:///C:/a/b.html"} {
+		if got := fileURL(path); got != want {
+			t.Errorf("%s: %s, want %s", path, got, want)
+		}
+	}
+}
