@@ -53,6 +53,7 @@ var Codes = []Code{
 	{"figure-range", "The ends of an axis lie the wrong way round, or no curve lies between them.", "Let the axis end beyond where it begins, and let it hold a part of a curve."},
 	{"figure-ratio", "A ratio does not name two single series.", "Name two series, the second below the first, each with its damping where a block has several."},
 	{"figure-series", "A curve of a figure is given both as a series and by x and y, or as neither.", "Name a series, or give x and y."},
+	{"figure-tripartite", "A curve or an axis does not fit tripartite axes, which show pseudo-velocity over period on log scales.", "Give the series PSA, PSV or SD of spectra and targets, and leave x_axis and y_axis out."},
 	{"form", "A closed form of ground motion lacks a parameter or has one of senseless size.", "Give the parameters of the form: amplitude, duration or period, and step."},
 	{"form-field", "A field of record files stands with a closed form, or the other way round.", "Leave the field out."},
 	{"front-matter-in-part", "A further file of the document begins with front matter.", "Move its lines to the front matter of the main file."},

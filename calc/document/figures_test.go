@@ -132,3 +132,27 @@ func TestNoSeries(t *testing.T) {
 		}
 	}
 }
+
+// TestTripartite: curves become pseudo-velocities, and the diagonals say what they
+// are called: 1 g at 1 s is 1.5608 m/s, 100 mm at 1 s 0.62832 m/s; the same in US units.
+func TestTripartite(t *testing.T) {
+	text := calc("target a", "table: a.csv", "damping: 5 %") + calc("figure f", "series: [a.PSA]", "axes: tripartite", "from: 0.1 s", "to: 10 s")
+	files := map[string]string{"a.csv": "T [s],PSA [g]\n0,1\n0.5,1\n1,2\n10,0.1\n"}
+	p := figureOf(t, ran(t, text, files), "f").Panels[0]
+	s := p.Series[0]
+	if i := slices.Index(s.X, 1); i < 0 || math.Abs(s.Y[i]/(2*9.80665/(2*math.Pi))-1) > 1e-12 || !p.X.Log || !p.Y.Log || s.X[0] <= 0 {
+		t.Errorf("the curve is %v over %v", s.Y, s.X)
+	}
+	at1 := map[string]float64{"1 g": 9.80665 / (2 * math.Pi), "0.1 g": 0.980665 / (2 * math.Pi), "100 mm": 0.2 * math.Pi, "1000 mm": 2 * math.Pi}
+	for _, d := range p.Diagonals {
+		if want, ok := at1[d.Label]; ok {
+			if got := d.Y * math.Pow(1/d.X, float64(d.Rise)); math.Abs(got/want-1) > 1e-12 || (d.Rise == 1) != strings.HasSuffix(d.Label, "g") {
+				t.Errorf("%s is %v m/s at 1 s, rising %d; want %v", d.Label, got, d.Rise, want)
+			}
+			delete(at1, d.Label)
+		}
+	}
+	if len(at1) > 0 {
+		t.Errorf("no diagonals %v among %v", at1, p.Diagonals)
+	}
+}

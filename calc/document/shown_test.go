@@ -140,6 +140,10 @@ func TestSeries(t *testing.T) {
 	want := map[string]quantity.Dim{"design.PSA": quantity.Acceleration, "read.PSA": quantity.Acceleration}
 	for _, r := range []string{"east", "push", "filtered"} {
 		want[r+".a"], want[r+".v"], want[r+".d"] = quantity.Acceleration, quantity.Velocity, quantity.Length
+		want[r+".husid"] = quantity.None
+		if r != "east" { // three samples have no band of their own
+			want[r+".fourier"] = quantity.Velocity
+		}
 	}
 	for _, q := range []string{"@2%", "@5%"} {
 		for what, d := range map[string]quantity.Dim{"PSA": quantity.Acceleration, "PSV": quantity.Velocity, "SD": quantity.Length, "SV": quantity.Velocity, "SA": quantity.Acceleration} {
@@ -147,7 +151,11 @@ func TestSeries(t *testing.T) {
 		}
 	}
 	for _, c := range res.Package.Series {
-		if d, ok := want[c.ID]; !ok || !c.Y.Dim.Is(d) || !c.X.Dim.Is(quantity.Time) || len(c.X.SI) != len(c.Y.SI) {
+		over := quantity.Time
+		if strings.HasSuffix(c.ID, ".fourier") {
+			over = quantity.MustUnit("Hz").Dim
+		}
+		if d, ok := want[c.ID]; !ok || !c.Y.Dim.Is(d) || !c.X.Dim.Is(over) || len(c.X.SI) != len(c.Y.SI) {
 			t.Errorf("series %s: %d over %d values, %s over %s", c.ID, len(c.Y.SI), len(c.X.SI), c.Y.Dim.Name(), c.X.Dim.Name())
 		}
 		delete(want, c.ID)

@@ -24,6 +24,17 @@ type Panel struct {
 	Series []FigSerie `json:"series"`
 	Lines  []RefLine  `json:"lines"`
 	Points []RefPoint `json:"points"`
+	// Diagonals are grid lines across a panel with two log axes.
+	Diagonals []Diagonal `json:"diagonals,omitempty"`
+}
+
+// Diagonal is the line through (X, Y), SI, along which y goes with x to the power
+// Rise, 1 or -1.
+type Diagonal struct {
+	X     float64 `json:"x"`
+	Y     float64 `json:"y"`
+	Rise  int     `json:"rise"`
+	Label string  `json:"label"` // with its unit
 }
 
 // Axis is one axis. Limits are SI; nil leaves them to the chart.

@@ -61,6 +61,23 @@ func Measure(r *Record) Measures {
 	return m
 }
 
+// Husid is how much of the Arias intensity has come in at each sample, from 0 to 1,
+// exact for an acceleration linear between samples; all zero for a record without
+// acceleration. [Arias 1970; Trifunac & Brady 1975]
+func Husid(r *Record) []float64 {
+	out := make([]float64, len(r.A))
+	for i := range len(out) - 1 {
+		s := step{a0: r.A[i], slope: (r.A[i+1] - r.A[i]) / r.Step}
+		out[i+1] = out[i] + s.energy(r.Step)
+	}
+	if total := out[len(out)-1]; total > 0 {
+		for i := range out {
+			out[i] /= total
+		}
+	}
+	return out
+}
+
 func largest(best, at *float64, x, t float64) {
 	if x := math.Abs(x); x > *best {
 		*best, *at = x, t

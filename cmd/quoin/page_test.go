@@ -69,6 +69,17 @@ type figureSight struct {
 		Curves      int
 		Rows, Wrong []string
 	}
+	Cursor struct {
+		Wrong                  []string
+		Rows, Steps            int
+		Back, Said, Gone, Hint bool
+		Others, Led            int // charts of the block along the same axis
+	}
+	Saved *struct {
+		Names               []string
+		Whole, Alone        bool
+		Faces, Rows, Points int
+	}
 	Keys  struct{ Reached, Want []string }
 	Scale *struct {
 		Changed, Back bool
@@ -81,8 +92,8 @@ type figureSight struct {
 		Closed     bool
 	}
 	Zoom *struct {
-		Pressed                                           string
-		Higher, Nearer, Reset, Farther, Keys, Whole, Back bool
+		Pressed                                                  string
+		Higher, Nearer, Reset, Moved, Farther, Keys, Whole, Back bool
 	}
 }
 
@@ -320,6 +331,12 @@ func (f *figureSight) holds(t *testing.T) {
 	if len(f.Tip.Rows) != min(f.Tip.Curves, 8) || len(f.Tip.Rows) == 0 || len(f.Tip.Wrong) > 0 {
 		t.Errorf("%s: at the pointer, %q, %d of %d curves: %q %s", f.ID, f.Tip.Words, len(f.Tip.Rows), f.Tip.Curves, f.Tip.Rows, strings.Join(f.Tip.Wrong, "; "))
 	}
+	if c := f.Cursor; len(c.Wrong) > 0 || c.Rows == 0 || c.Steps < 2 || !c.Back || !c.Said || !c.Gone || !c.Hint || c.Led != c.Others {
+		t.Errorf("%s: values by key: %+v", f.ID, c)
+	}
+	if s := f.Saved; s == nil || !s.Whole || !s.Alone || s.Faces == 0 || s.Rows != s.Points || len(s.Names) != 2 || !strings.HasSuffix(s.Names[0], ".svg") || !strings.HasSuffix(s.Names[1], ".csv") {
+		t.Errorf("%s: kept as files: %+v", f.ID, s)
+	}
 	if !slices.Equal(f.Keys.Reached, f.Keys.Want) || len(f.Keys.Want) == 0 {
 		t.Errorf("%s: Tab reaches %q, there are %q", f.ID, f.Keys.Reached, f.Keys.Want)
 	}
@@ -329,7 +346,7 @@ func (f *figureSight) holds(t *testing.T) {
 	if c := f.Curves; c != nil && (c.Expanded != "true" || !c.Closed || len(c.Names) < 2 || c.Gone != len(c.Names) || c.Back != len(c.Names)) {
 		t.Errorf("%s: curves: %+v", f.ID, *c)
 	}
-	if z := f.Zoom; z != nil && (z.Pressed != "true" || !z.Higher || !z.Nearer || !z.Reset || !z.Farther || !z.Keys || !z.Whole || !z.Back) {
+	if z := f.Zoom; z != nil && (z.Pressed != "true" || !z.Higher || !z.Nearer || !z.Reset || !z.Moved || !z.Farther || !z.Keys || !z.Whole || !z.Back) {
 		t.Errorf("%s: zoom: %+v", f.ID, *z)
 	}
 	has := func(button string) bool { return slices.Contains(f.Keys.Want, button) }

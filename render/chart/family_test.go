@@ -9,7 +9,7 @@ import (
 
 // family is one figure of every kind that packages show, with invented numbers.
 func family() []exhibit.Figure {
-	return []exhibit.Figure{history(), stacked(), spectrum(), dampings(), shapes(), shears(), drifts(), suite(), plain()}
+	return []exhibit.Figure{history(), stacked(), spectrum(), dampings(), shapes(), shears(), drifts(), suite(), plain(), tripartite()}
 }
 
 func unit(s string) quantity.Unit { return quantity.MustUnit(s) }
@@ -181,4 +181,20 @@ func plain() exhibit.Figure {
 		X: exhibit.Axis{Label: "weight W", Unit: unit("kN")}, Y: exhibit.Axis{Label: "base shear V", Unit: unit("kN")},
 		Series: []exhibit.FigSerie{{Label: "V", X: []float64{8e6, 12e6, 16e6, 20e6}, Y: []float64{0.86e6, 12.8e6, 17.1e6, 21.4e6}, Role: exhibit.Data, Dots: true}},
 	}}}
+}
+
+// tripartite is a spectrum on log axes with slanting grid lines; the numbers are those
+// of one unit of acceleration and of length.
+func tripartite() exhibit.Figure {
+	T := periods(0.05, 5, 60)
+	v := make([]float64, len(T))
+	for i := range T {
+		v[i] = 0.8 * T[i] / (0.4 + T[i])
+	}
+	p := exhibit.Panel{Title: "rising lines: PSA; falling lines: SD", X: exhibit.Axis{Label: "period T", Unit: unit("s"), Log: true, Min: ptr(0.05), Max: ptr(5)},
+		Y: exhibit.Axis{Label: "PSV", Unit: unit("m/s"), Log: true, Min: ptr(0.01), Max: ptr(2)}, Series: []exhibit.FigSerie{{Label: "rs", X: T, Y: v, Role: exhibit.Data}}}
+	for _, k := range []float64{0.1, 1, 10} {
+		p.Diagonals = append(p.Diagonals, exhibit.Diagonal{X: 1, Y: 1.5608 * k, Rise: 1, Label: quantity.Plain(k) + " g"}, exhibit.Diagonal{X: 1, Y: 0.62832 * k, Rise: -1, Label: quantity.Plain(100*k) + " mm"})
+	}
+	return exhibit.Figure{ID: "tripartite", Caption: "Tripartite spectrum", Alt: "Pseudo-velocity against period.", Panels: []exhibit.Panel{p}}
 }

@@ -33,7 +33,7 @@ func Option(f exhibit.Figure) (option []byte, height int, err error) {
 	}
 	f = drawable(f)
 	panels := measure(f)
-	v := &visitor{pointer: "x", beside: f.Beside, curves: []curve{}, headings: []heading{}}
+	v := &visitor{pointer: "x", beside: f.Beside, fixed: slices.ContainsFunc(panels, func(p *panel) bool { return len(p.Diagonals) > 0 }), curves: []curve{}, headings: []heading{}}
 	if panels[0].profile {
 		v.pointer = "y"
 	}
@@ -81,6 +81,9 @@ func measure(f exhibit.Figure) []*panel {
 			ys = append(ys, q.Y.Unit.From(r.Y))
 		}
 		p.x, p.y = spanOf(q.X, xs, xFit, p.width), spanOf(q.Y, ys, yFit, p.height)
+		if len(q.Diagonals) > 0 && p.x.log && p.y.log { // decades of one length: diagonals at 45°
+			p.height = min(max(p.width*math.Log(p.y.hi/p.y.lo)/math.Log(p.x.hi/p.x.lo), 260), 440)
+		}
 		p.headroom()
 		out[i] = p
 	}

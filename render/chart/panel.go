@@ -84,6 +84,7 @@ func (p *panel) curves() []curve {
 	if p.X.Symmetric || p.Y.Symmetric {
 		out = append(out, p.zero())
 	}
+	out = append(out, p.diagonals()...)
 	for i, s := range p.Series {
 		out = append(out, p.curve(i, s))
 	}

@@ -86,6 +86,7 @@ type curve struct {
 	LegendIcon string     `json:"legendIcon,omitempty"`
 	Units      []string   `json:"units,omitempty"` // of x and y, for the values at the pointer
 	Axis       string     `json:"axis,omitempty"`  // the label of the value axis
+	Rise       int        `json:"rise,omitempty"`  // names along a diagonal that rises (1) or falls (-1)
 }
 
 type lineStyle struct {
@@ -178,6 +179,7 @@ type visitor struct {
 	curves   []curve
 	legend   any
 	beside   bool
+	fixed    bool   // log axes that stay so
 	pointer  string // the axis that the pointer runs along
 }
 
@@ -216,6 +218,9 @@ func (v *visitor) Visit(option map[string]any) {
 		link = []any{map[string]any{"yAxisIndex": "all"}}
 	}
 	option["axisPointer"] = map[string]any{"link": link}
+	if v.fixed {
+		option["fixed"] = true
+	}
 	if v.beside {
 		option["beside"] = true
 	} else if v.pointer == "x" {

@@ -11,6 +11,7 @@ import (
 	"unicode"
 
 	"quoin/calc/exhibit"
+	"quoin/render/chart"
 	"quoin/render/equation"
 )
 
@@ -26,7 +27,8 @@ func (b *book) figure(f *exhibit.Figure, label string) item {
 		Number, Height               int
 		Twin                         template.HTML
 		Option                       template.JS
-	}{Label: label, ID: b.exhibits[f], Caption: f.Caption, CSV: "tables/" + f.ID + ".csv", Alt: f.Alt, Number: f.Number, Height: 380}
+		Values                       chart.Values
+	}{Label: label, ID: b.exhibits[f], Caption: f.Caption, CSV: "tables/" + f.ID + ".csv", Alt: f.Alt, Number: f.Number, Height: 380, Values: chart.ValuesOf(*f)}
 	twin, err := b.o.Picture(*f, "q-"+slug(f.ID)+"-")
 	b.fail(err, "figure %q", f.ID)
 	v.Twin = template.HTML(twin)
@@ -39,7 +41,7 @@ func (b *book) figure(f *exhibit.Figure, label string) item {
 		}
 		v.Option, v.Height = template.JS(option), height
 	}
-	high := textWidth*aspect(twin, float64(v.Height)/700) + 8 + 4.6*lines(f.Caption, 90)
+	high := textWidth*aspect(twin, float64(v.Height)/700) + 8 + 4.6*lines(f.Caption+" values: "+v.CSV, 90)
 	return item{name: "figure", data: v, high: high, anchors: []string{v.ID}}
 }
 

@@ -1,16 +1,22 @@
 // One figure as a chart to work with: values at the pointer, zoom, curves on and
 // off, logarithmic or linear axes; all of it also from the keyboard.
 import { echarts } from './charts.js'
+import { Cursor } from './cursor.js'
 import { mark, prepare, setTooltip } from './prepare.js'
+import { data, picture, save } from './save.js'
 import { tooltip } from './tip.js'
 
 setTooltip(tooltip)
 
 const list = (v) => (v === undefined ? [] : Array.isArray(v) ? v : [v])
 
+let hints = 0
+
 export class Live {
   constructor(figure) {
     this.figure = figure
+    const [, name] = /([^/]+)\.csv$/.exec(figure.querySelector('figcaption a')?.getAttribute('href') || '') || []
+    this.name = name ? decodeURIComponent(name) : 'figure'
     this.twin = figure.querySelector('.twin')
     this.live = figure.querySelector('.live')
     this.text = figure.querySelector('script[type="application/json"]').textContent
@@ -24,13 +30,17 @@ export class Live {
     this.live.hidden = false
     this.live.style.height = this.height + 'px'
     const words = this.twin.querySelector('desc')
-    this.live.setAttribute('role', 'group')
+    this.live.setAttribute('role', 'application') // arrow keys are the chart's
+    this.live.setAttribute('aria-roledescription', 'chart')
     this.live.setAttribute('aria-label', words ? words.textContent : '')
+    this.live.tabIndex = 0
     this.width = this.live.clientWidth
     this.chart = echarts.init(this.live, null, { renderer: 'svg', width: this.width, height: this.height })
     this.draw()
     this.twin.hidden = true
+    this.cursor = new Cursor(this)
     this.controls(option)
+    this.keys(list(option.dataZoom).length > 0)
 
     this.chart.on('datazoom', () => this.zoomed())
     new ResizeObserver(() => {
@@ -109,6 +119,7 @@ export class Live {
 
   // switched is the axes that the switch is about.
   switched(option) {
+    if (option.fixed) return []
     const named = this.figure.dataset.switch
     const axes = [...list(option.xAxis).map((a) => ['x', a]), ...list(option.yAxis).map((a) => ['y', a])]
     return axes.filter(([which, a]) => a.type === 'log' && (!named || named.includes(which))).map(([, a]) => a)
@@ -138,37 +149,72 @@ export class Live {
       const b = button('zoom', 'Show the zoom slider; ctrl and wheel zoom too', () => {
         this.slider = !this.slider
         b.setAttribute('aria-pressed', String(this.slider))
-        closer.hidden = farther.hidden = !this.slider
+        for (const b of steps) b.hidden = !this.slider
         this.draw()
       })
       b.setAttribute('aria-pressed', 'false')
-      const closer = button('+', 'Show less, larger', () => this.magnify(0.5))
-      const farther = button('\u2212', 'Show more, smaller', () => this.magnify(2))
+      const steps = [
+        button('+', 'Show less, larger', () => this.magnify(0.5)),
+        button('\u2212', 'Show more, smaller', () => this.magnify(2)),
+        button('\u2190', 'Move the window to the left', () => this.magnify(1, -0.2)),
+        button('\u2192', 'Move the window to the right', () => this.magnify(1, 0.2)),
+      ]
       this.reset = button('reset', 'Show all again', () => this.chart.dispatchAction({ type: 'dataZoom', dataZoomIndex: 0, start: 0, end: 100 }))
-      closer.hidden = farther.hidden = this.reset.hidden = true
-      this.live.tabIndex = 0
-      this.live.addEventListener('keydown', (e) => {
-        const act = { '+': () => this.magnify(0.5), '-': () => this.magnify(2), ArrowLeft: () => this.magnify(1, -0.2), ArrowRight: () => this.magnify(1, 0.2), 0: () => this.magnify(1e3) }[e.key]
-        if (!act || e.ctrlKey || e.metaKey || e.altKey) return
-        e.preventDefault()
-        act()
-      })
+      for (const b of [...steps, this.reset]) b.hidden = true
     }
     this.curves(option, button)
+    const row = this.fold(button, 'save', 'Keep this figure as a file')
+    const name = this.name
+    button('picture, svg', 'The figure as it is printed, with its fonts', () => save(name + '.svg', 'image/svg+xml', picture(this.twin)), row)
+    button('values, csv', 'The values as they are drawn here, to 5 digits', () => save(name + '-drawn.csv', 'text/csv', data(JSON.parse(this.text))), row)
+  }
+
+  // keys makes the chart answer to keys: they read values, and zoom where the chart does.
+  keys(zooms) {
+    const move = (by) => () => this.cursor.step(by)
+    const acts = { ArrowLeft: move(-1), ArrowRight: move(1), ArrowDown: move(-1), ArrowUp: move(1), Home: move(-Infinity), End: move(Infinity), Escape: () => this.cursor.leave() }
+    if (this.drawn.tooltip.axisPointer.axis === 'y') delete acts.ArrowLeft, delete acts.ArrowRight
+    else delete acts.ArrowDown, delete acts.ArrowUp
+    const shifted = {}
+    if (zooms) {
+      Object.assign(acts, { '+': () => this.magnify(0.5), '-': () => this.magnify(2), 0: () => this.magnify(1e3) })
+      Object.assign(shifted, { ArrowLeft: () => this.magnify(1, -0.2), ArrowRight: () => this.magnify(1, 0.2) })
+    }
+    const hint = document.createElement('p')
+    hint.className = 'hint'
+    hint.id = 'keys-' + ++hints
+    const arrows = acts.ArrowUp ? '\u2191 \u2193' : '\u2190 \u2192'
+    hint.textContent = `${arrows} read the values` + (zooms ? ' \u00b7 shift and \u2190 \u2192 move \u00b7 + \u2212 zoom \u00b7 0 shows all' : '') + ' \u00b7 Esc ends'
+    this.live.after(hint)
+    this.live.setAttribute('aria-describedby', hint.id)
+    this.live.addEventListener('keydown', (e) => {
+      const act = (e.shiftKey && shifted[e.key]) || acts[e.key]
+      if (!act || e.ctrlKey || e.metaKey || e.altKey) return
+      e.preventDefault()
+      act()
+    })
+  }
+
+  // fold is a row of buttons behind one button.
+  fold(button, name, title) {
+    const row = document.createElement('span')
+    row.className = 'curves'
+    row.dataset.of = name
+    row.hidden = true
+    const open = button(name, title, () => {
+      row.hidden = !row.hidden
+      open.setAttribute('aria-expanded', String(!row.hidden))
+    })
+    open.setAttribute('aria-expanded', 'false')
+    open.after(row)
+    return row
   }
 
   // curves offers a button for each named curve, behind one button.
   curves(option, button) {
     const names = [...new Set(list(option.series).filter((s) => s.id[0] === 's' && s.name).map((s) => s.name))]
     if (names.length < 2) return
-    const row = document.createElement('span')
-    row.className = 'curves'
-    row.hidden = true
-    const open = button('curves', 'Choose the curves to show', () => {
-      row.hidden = !row.hidden
-      open.setAttribute('aria-expanded', String(!row.hidden))
-    })
-    open.setAttribute('aria-expanded', 'false')
+    const row = this.fold(button, 'curves', 'Choose the curves to show')
     for (const name of names) {
       const b = button(name, 'Show or hide this curve', () => {
         const shown = this.off.has(name)
@@ -180,6 +226,5 @@ export class Live {
       }, row)
       b.setAttribute('aria-pressed', 'true')
     }
-    open.after(row)
   }
 }

@@ -29,7 +29,14 @@ const near = new IntersectionObserver(
   },
   { rootMargin: '400px 0px' },
 )
-for (const figure of document.querySelectorAll('figure[data-chart]')) near.observe(figure)
+let block = 0
+for (const e of document.querySelectorAll('.bh:not(.again), figure[data-chart]')) {
+  if (e.matches('.bh')) block++
+  else {
+    e.dataset.block = block // whose charts point together
+    near.observe(e)
+  }
+}
 
 const paper = (on) => {
   for (const live of figures.values()) if (live) live.paper(on)

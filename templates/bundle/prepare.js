@@ -50,6 +50,7 @@ export function prepare(option, total) {
     if (x.name) Object.assign(x.nameTextStyle, { width: grids[x.gridIndex || 0].width + 16, overflow: 'break' })
   })
   if (option.beside) meet(xs, grids)
+  for (const s of list(option.series)) if (s.rise) turn(s, xs[s.xAxisIndex || 0], ys[s.yAxisIndex || 0], grids)
   for (const s of list(option.series)) straighten(s, xs[s.xAxisIndex || 0], ys[s.yAxisIndex || 0])
   for (const axis of [...xs, ...ys]) {
     if (axis.type !== 'log') continue
@@ -60,6 +61,13 @@ export function prepare(option, total) {
   if (legend && legend.show !== false) legend.left = grids[0].left - 5
   resolve(option, option)
   return option
+}
+
+// turn lays names along a diagonal of two logarithmic axes.
+function turn(series, x, y, grids) {
+  const g = grids[x.gridIndex || 0]
+  const angle = (Math.atan2(px(g.height) / Math.log(y.max / y.min), g.width / Math.log(x.max / x.min)) * 180) / Math.PI
+  for (const d of series.data) d.label.rotate = series.rise * angle
 }
 
 // straighten takes logarithms for logarithmic axes: such an axis is drawn as a plain

@@ -81,7 +81,9 @@ export function tooltip(params, option) {
   const axis = axisOf(first, along)
   const v = read(first, points.get(first.id)[0], along)
   const word = (axis.names || []).find(([at]) => Math.abs(at - v) < 1e-6 * (axis.max - axis.min))
-  box.append(element('div', `${axis.label || ''} ${word ? word[1] : quantity(v, axis.unit)}`.trim(), { fontWeight: 600, marginBottom: '2px' }))
+  const head = `${axis.label || ''} ${word ? word[1] : quantity(v, axis.unit)}`.trim()
+  const said = []
+  box.append(element('div', head, { fontWeight: 600, marginBottom: '2px' }))
   const table = element('table', '', { borderCollapse: 'collapse', font: 'inherit', width: 'auto', margin: 0 })
   for (const { s, text } of rows) {
     const tr = element('tr')
@@ -91,7 +93,9 @@ export function tooltip(params, option) {
     const unit = s.units[1 - along]
     tr.append(name, element('td', text + (unit ? '\u00a0' + unit : ''), { ...cell, paddingLeft: '14px', textAlign: 'right', fontVariantNumeric: 'tabular-nums' }))
     table.append(tr)
+    said.push(called(s) + ' ' + text + (unit ? '\u00a0' + unit : ''))
   }
   box.append(table)
+  option.said = head + ': ' + said.join(', ') // for those who do not see it
   return box
 }

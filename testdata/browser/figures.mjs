@@ -1,4 +1,5 @@
 // Every figure of a page, used by pointer and by key.
+import { readFileSync } from 'node:fs'
 import { settle } from './watch.mjs'
 
 export async function figures(page) {
@@ -15,10 +16,12 @@ async function use(page, figure) {
   report.twin = await figure.evaluate((f) => f.querySelector('.twin').getClientRects().length)
   report.tip = await tip(page, figure)
   await page.mouse.move(0, 0)
+  report.cursor = await cursor(page, figure)
   report.keys = await keys(page, figure)
   report.scale = await scale(page, figure)
   report.curves = await curves(page, figure)
   report.zoom = await zoom(page, figure)
+  report.saved = await saved(page, figure)
   return report
 }
 
@@ -57,7 +60,7 @@ async function tip(page, figure) {
 function read(f) {
   const option = JSON.parse(f.querySelector('script').textContent)
   const named = option.series.filter((s) => s.id[0] === 's')
-  const shown = [...f.querySelectorAll('.live > div')].find((d) => d.querySelector('table') && getComputedStyle(d).visibility === 'visible' && Number(getComputedStyle(d).opacity) > 0.5)
+  const shown = [...f.querySelectorAll('.live > div')].find((d) => d.querySelector('table') && d.getClientRects().length > 0 && getComputedStyle(d).visibility === 'visible' && Number(getComputedStyle(d).opacity) > 0.5)
   if (!shown) return { rows: [] }
   const number = (text) => {
     const raised = '⁰¹²³⁴⁵⁶⁷⁸⁹'
@@ -96,13 +99,67 @@ function read(f) {
       }
       const i = s[0].data.findIndex((p) => p[along] >= here)
       const [a, b] = s[0].data.slice(Math.max(i - 1, 0), i + 1).map((p) => p[1 - along])
-      if (!(v >= Math.min(a, b) * (1 - 5e-3) && v <= Math.max(a, b) * (1 + 5e-3))) wrong.push(`${name}: ${value} (${v}) is not between ${a} and ${b} at ${here}`)
+      const slack = 5e-3 * Math.max(Math.abs(a), Math.abs(b))
+      if (!(v >= Math.min(a, b) - slack && v <= Math.max(a, b) + slack)) wrong.push(`${name}: ${value} (${v}) is not between ${a} and ${b} at ${here}`)
     }
   }
   const box = shown.getBoundingClientRect(), live = f.querySelector('.live').getBoundingClientRect()
   if (box.left < live.left - 1 || box.right > live.right + 1) wrong.push('the values stand outside the chart')
   const one = named.filter((s, i) => !across(s) || named.findIndex((t) => across(t) && t.axis === s.axis && t.xAxisIndex === s.xAxisIndex) === i)
   return { words, curves: one.filter((s) => s.name).length || one.length, rows, wrong }
+}
+
+// cursor reads values by key: from place to place, to both ends, and away again; what is spoken is what is shown, and
+// the other charts of the block that run along the same axis show the same place.
+async function cursor(page, figure) {
+  const live = await figure.$('.live')
+  const up = await figure.evaluate((f) => JSON.parse(f.querySelector('script').textContent).tooltip.axisPointer.axis === 'y')
+  const on = up ? 'ArrowUp' : 'ArrowRight', back = up ? 'ArrowDown' : 'ArrowLeft'
+  const press = async (key) => {
+    await live.press(key)
+    await settle(page)
+    return { ...(await figure.evaluate(read)), said: await figure.$eval('[aria-live]', (e) => e.textContent) }
+  }
+  const first = await press(on), second = await press(on), before = await press(back), end = await press('End'), start = await press('Home')
+  const together = await figure.evaluate((f) => {
+    const axis = (g) => { const o = JSON.parse(g.querySelector('script').textContent); const w = o.tooltip.axisPointer.axis; const a = o[w + 'Axis'][0]; return w + a.label + a.unit }
+    const words = (g) => [...g.querySelectorAll('.live > div')].find((d) => d.querySelector('table') && d.getClientRects().length > 0 && getComputedStyle(d).visibility === 'visible')?.querySelector('div > div').textContent
+    const others = [...document.querySelectorAll('figure[data-chart]')].filter((g) => g !== f && g.dataset.block === f.dataset.block && axis(g) === axis(f) && g.querySelector('.live svg'))
+    return { others: others.length, led: others.filter((g) => words(g) !== undefined).length }
+  })
+  await live.press('Escape')
+  await page.waitForTimeout(150) // the values go after a moment
+  const gone = { ...(await figure.evaluate(read)), said: await figure.$eval('[aria-live]', (e) => e.textContent) }
+  return {
+    wrong: [first, second, before, end, start].flatMap((r) => r.wrong ?? ['no values']), rows: first.rows.length, steps: new Set([first, second, end].map((r) => r.words)).size,
+    back: before.words === first.words && start.words !== end.words, said: [first, end].every((r) => r.said.startsWith(r.words + ': ') && r.rows.every((row) => r.said.includes(row))),
+    gone: gone.rows.length === 0 && gone.said === '', hint: await figure.$eval('.hint', (e) => getComputedStyle(e).display !== 'none'), ...together,
+  }
+}
+
+// saved keeps the picture and the values as files.
+async function saved(page, figure) {
+  const open = await button(figure, 'save')
+  if (!open) return null
+  await press(open)
+  const files = []
+  for (const name of ['picture, svg', 'values, csv']) {
+    const [download] = await Promise.all([page.waitForEvent('download'), press(await button(figure, name))])
+    files.push({ name: download.suggestedFilename(), text: readFileSync(await download.path(), 'utf8') })
+  }
+  await press(open)
+  const [picture, values] = files
+  const seen = await figure.evaluate((f, text) => {
+    const d = new DOMParser().parseFromString(text.replace(/<style>.*?<\/style>/s, ''), 'image/svg+xml')
+    const texts = (e) => [...e.querySelectorAll('text')].map((t) => t.textContent).join('|')
+    const away = [...d.querySelectorAll('*')].flatMap((e) => [...e.attributes]).filter((a) => (/(^|:)(href|src)$/.test(a.name) && a.value[0] !== '#') || /url\((?!["']?#)/.test(a.value))
+    return { alone: away.length === 0 && !/url\((?!["']?data:)/.test(/<style>(.*?)<\/style>/s.exec(text)[1]), whole: !d.querySelector('parsererror') && texts(d) === texts(f.querySelector('.twin .wide')), points: Math.max(...JSON.parse(f.querySelector('script').textContent).series.filter((s) => s.id[0] === 's').map((s) => s.data.length)) }
+  }, picture.text)
+  return {
+    names: files.map((f) => f.name), whole: seen.whole, faces: picture.text.split('@font-face').length - 1,
+    // Nothing from elsewhere: the only address is the name of the language.
+alone: seen.alone, rows: values.text.trimEnd().split('\r\n').length - 1, points: seen.points,
+  }
 }
 
 // keys goes from the figure by Tab and tells which of its controls were reached, and which not.
@@ -149,7 +206,7 @@ async function curves(page, figure) {
   await click(page, open)
   const report = { expanded: await open.getAttribute('aria-expanded'), names: [], gone: 0, back: 0 }
   let before = await state(figure)
-  for (const b of await figure.$$('.tools .curves button')) {
+  for (const b of await figure.$$('.tools [data-of=curves] button')) {
     report.names.push(await b.textContent())
     await press(b)
     const off = await state(figure)
@@ -160,7 +217,7 @@ async function curves(page, figure) {
     before = again
   }
   await press(open)
-  report.closed = !(await figure.$eval('.tools .curves', (e) => e.getClientRects().length))
+  report.closed = !(await figure.$eval('.tools [data-of=curves]', (e) => e.getClientRects().length))
   return report
 }
 
@@ -177,11 +234,18 @@ async function zoom(page, figure) {
   const reset = await button(figure, 'reset')
   report.reset = reset !== undefined
   await press(await button(figure, '\u2212'))
+  await press(await button(figure, '+'))
+  const first = await state(figure)
+  await press(await button(figure, '\u2192'))
+  const moved = await state(figure)
+  await press(await button(figure, '\u2190'))
+  report.moved = moved.words !== first.words && (await state(figure)).words === first.words
+  await press(await button(figure, '\u2212'))
   report.farther = (await state(figure)).words === whole.words && !(await button(figure, 'reset'))
   const live = await figure.$('.live')
   await live.press('+')
   const near = await state(figure)
-  await live.press('ArrowRight')
+  await live.press('Shift+ArrowRight')
   report.keys = near.words !== whole.words && (await state(figure)).words !== near.words
   await press(await button(figure, 'reset'))
   report.whole = (await state(figure)).words === whole.words

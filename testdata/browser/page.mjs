@@ -23,7 +23,9 @@ const does = {
     Object.assign(report, await page.evaluate(seen.outline), { fonts: await fonts(page), texts: await page.evaluate(seen.texts) })
 
     await page.evaluate(readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8'))
+    await page.evaluate(() => document.querySelectorAll('details').forEach((d) => { d.open = true }))
     report.rules = await page.evaluate(seen.rules, ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+    await page.evaluate(() => document.querySelectorAll('details').forEach((d) => { d.open = false }))
 
     report.figures = await figures(page)
     for (const [media, name] of [['print', 'paper'], [null, 'back']]) {
@@ -37,7 +39,8 @@ const does = {
   },
 
   async plain(page) {
-    return { ...(await page.evaluate(seen.parts)), texts: await page.evaluate(seen.texts), widths: await narrow(page, false) }
+    const texts = await page.evaluate(seen.texts)
+    return { texts, ...(await page.evaluate(seen.parts)), widths: await narrow(page, false) }
   },
 }
 

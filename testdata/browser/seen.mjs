@@ -45,6 +45,7 @@ export function texts() {
 
 // parts counts figures, equations and tables, and names those without a size.
 export function parts() {
+  for (const d of document.querySelectorAll('details')) d.open = true
   const sized = (e) => { const b = e?.getBoundingClientRect(); return Boolean(b) && b.width > 1 && b.height > 1 }
   const name = (e) => `${e.closest('[id]')?.id}: ${e.textContent.trim().slice(0, 60)}`
   const all = (selector) => [...document.querySelectorAll('main ' + selector)]

@@ -22,6 +22,7 @@ type figure struct {
 	common
 	Series []seriesFields `name:"series" doc:"the curves: names of series (east_rs.PSA, or east_rs.PSA@5% for one damping); x and y; a profile; or a ratio"`
 	Over   field.Field    `name:"over" is:"block" of:"structure" doc:"of profiles: the structure whose elevations they stand over"`
+	Axes   field.Field    `name:"axes" is:"choice" of:"plain|tripartite" default:"plain" doc:"tripartite: PSV over T, both log, with diagonals of PSA and SD, of the series PSA, PSV and SD of spectra and targets"`
 	XAxis  field.Field    `name:"x_axis" is:"choice" of:"linear|log" default:"linear" doc:"linear or log"`
 	YAxis  field.Field    `name:"y_axis" is:"choice" of:"linear|log" default:"linear" doc:"linear or log"`
 	XLabel field.Field    `name:"x_label" is:"text" doc:"name of the x axis, without unit"`
@@ -65,6 +66,19 @@ func (s *seriesFields) ways() []field.Field {
 func (b *figure) Check(c *Checks) {
 	if len(b.Series) == 0 {
 		c.Diags.Errorf("missing-field", c.Place, "the figure block needs the field series").WithHint("series: [east_rs.PSA, design.PSA]")
+	}
+	if b.tripartite() {
+		for _, f := range []field.Field{b.XAxis, b.YAxis} {
+			if f.Given && f.Text() != "log" {
+				c.Fail(f, "figure-tripartite", "tripartite axes are log")
+			}
+		}
+		for i := range b.Series {
+			if ways := b.Series[i].ways(); len(ways) > 0 && !b.Series[i].Of.Given {
+				c.Fail(ways[0], "figure-tripartite", "tripartite axes take the PSA, PSV or SD of spectra and targets").WithHint("- east_rs.PSV")
+				return
+			}
+		}
 	}
 	profiles := 0
 	for i := range b.Series {
@@ -143,6 +157,9 @@ func (b *figure) Run(r *Run) {
 	if r.Diags.HasErrors() || len(all) == 0 {
 		return
 	}
+	if b.tripartite() && !b.pseudoVelocity(r, all) {
+		return
+	}
 	first := all[0]
 	for _, d := range all {
 		if !d.X.Dim.Is(first.X.Dim) || !d.Y.Dim.Is(first.Y.Dim) {
@@ -169,6 +186,9 @@ func (b *figure) Run(r *Run) {
 	alt := p.Y.Label + " against " + p.X.Label
 	if b.Over.Given {
 		alt = p.X.Label + " over the height of " + b.Over.Text()
+	}
+	if b.tripartite() {
+		alt = "PSV against period, both logarithmic, with diagonals of PSA and SD,"
 	}
 	r.Echo.Rows = nil // the figure shows its inputs
 	r.Figure(exhibit.Figure{ID: id, Caption: caption, Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})

@@ -27,8 +27,8 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 		}
 		p.Series = append(p.Series, f)
 	}
-	p.X = exhibit.Axis{Label: or(b.XLabel.Text(), axisName(xs.Dim)), Unit: xu, Log: b.XAxis.Text() == "log"}
-	p.Y = exhibit.Axis{Label: or(b.YLabel.Text(), or(agreed(all), axisName(ys.Dim))), Unit: yu, Log: b.YAxis.Text() == "log"}
+	p.X = exhibit.Axis{Label: or(b.XLabel.Text(), axisName(xs.Dim)), Unit: xu, Log: b.XAxis.Text() == "log" || b.tripartite()}
+	p.Y = exhibit.Axis{Label: or(b.YLabel.Text(), or(agreed(all), axisName(ys.Dim))), Unit: yu, Log: b.YAxis.Text() == "log" || b.tripartite()}
 	if xs.Dim.Is(quantity.Time) && !b.XLabel.Given && r.histories(all) {
 		p.X.Label = "time t"
 	}
@@ -41,6 +41,9 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p, all)
 	if !ok {
 		return p, false
+	}
+	if b.tripartite() {
+		b.diagonals(r, &p)
 	}
 	value := &p.Y
 	if b.Over.Given {
@@ -212,6 +215,8 @@ func axisName(d quantity.Dim) string {
 	switch {
 	case d.Is(quantity.Time):
 		return "period T"
+	case d.Is(quantity.MustUnit("Hz").Dim):
+		return "frequency f"
 	case d.Is(quantity.Length):
 		return "length"
 	case d.Is(quantity.Force):

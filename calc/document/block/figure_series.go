@@ -38,7 +38,8 @@ func (b *figure) series(r *Run, s *seriesFields) []drawn {
 }
 
 // histories are the series of a record, in words.
-var histories = map[string]string{"a": "acceleration a", "v": "velocity v", "d": "displacement d"}
+var histories = map[string]string{"a": "acceleration a", "v": "velocity v", "d": "displacement d",
+	"husid": "share of the Arias intensity", "fourier": "Fourier amplitude of a"}
 
 // noSeries reports a series that a block does not have.
 func noSeries(r *Run, f field.Field, it field.Item) {
@@ -98,7 +99,7 @@ func (b *figure) extend(t *standard.Target, c *exhibit.Curve) {
 	if b.To.Given && b.To.Value.Dim.Is(quantity.Time) && b.To.SI() > to && b.To.SI() <= high {
 		to = b.To.SI()
 	}
-	log := b.XAxis.Text() == "log"
+	log := b.XAxis.Text() == "log" || b.tripartite()
 	if to == c.X.SI[len(c.X.SI)-1] && !log {
 		return
 	}
@@ -118,7 +119,12 @@ func (b *figure) extend(t *standard.Target, c *exhibit.Curve) {
 	for _, corner := range t.Corners {
 		grid = append(grid, corner.T)
 	}
-	grid = slices.DeleteFunc(grid, func(T float64) bool { return T < from || T > to })
+	least := from
+	// Shorter periods are not drawn by custom: the spectrum is flat there.
+	if b.tripartite() && !b.From.Given {
+		least = math.Max(from, 0.01)
+	}
+	grid = slices.DeleteFunc(grid, func(T float64) bool { return T < least || T > to })
 	slices.Sort(grid)
 	grid = slices.Compact(grid)
 	if y, err := t.Series(grid); err == nil {

@@ -297,6 +297,12 @@ func (b *record) results(r *Run, rec *motion.Record) {
 	aID := r.Curve("a", t, seconds, rec.A, accel)
 	vID := r.Curve("v", t, seconds, v, u.velocity)
 	dID := r.Curve("d", t, seconds, d, u.small)
+	if m.Arias > 0 {
+		r.Curve("husid", t, seconds, motion.Husid(rec), percent)
+	}
+	if f, amplitude := motion.Amplitude(rec); len(f) > 1 {
+		r.Curve("fourier", f, quantity.MustUnit("Hz"), amplitude, u.velocity)
+	}
 	panel := func(id, label, symbol string, y []float64, unit quantity.Unit, at, peak float64) exhibit.Panel {
 		p := exhibit.Panel{X: exhibit.Axis{Label: "time t", Unit: seconds}, Y: exhibit.Axis{Label: label, Unit: unit, Symmetric: true},
 			Series: []exhibit.FigSerie{{ID: id, Label: symbol, X: t, Y: y, Role: exhibit.Data}}}
