@@ -181,6 +181,7 @@ var Codes = []Code{
 	{"unknown-basis", "No standard of that name is built in.", "Choose one of the bases that the hint lists, or give a table."},
 	{"unknown-choice", "A field is given a word that it does not know.", "Choose one of the words that the hint lists."},
 	{"unknown-column", "A CSV file has a column that its use does not know.", "Rename or remove the column."},
+	{"unknown-exhibit", "The text refers to an equation, a figure or a table that is not there, or to a block that has several.", "Correct the name; quoin prints a reference that leads nowhere as it is written."},
 	{"unknown-field", "A block has no field of that name.", "Correct the name; quoin blocks KIND shows all fields."},
 	{"unknown-footnote", "The text refers to a footnote that is not there.", "Write the footnote, [^x]: its text, or correct the mark."},
 	{"unknown-function", "A formula calls a function that the language does not have.", "Correct the name; quoin blocks formula lists the functions."},

@@ -22,6 +22,7 @@ func (d *run) assemble() *exhibit.Package {
 	for _, pt := range d.parts {
 		a.part(pt)
 	}
+	a.refers()
 	a.registry()
 	a.notation()
 	a.p.Inputs = d.files.inputs(d.src.Main)
@@ -41,6 +42,7 @@ type assembly struct {
 	methods                    map[string]*node // the first block with each method
 	stems                      map[string]bool  // file names of tables, in lower case
 	symbols                    map[string]*exhibit.Symbol
+	referring                  []referring // of the prose, to be numbered once all is counted
 }
 
 // unique makes an anchor that no other heading has.
@@ -92,6 +94,8 @@ func (a *assembly) prose(pt *part, in []exhibit.Prose) []exhibit.Prose {
 				p.Target, ref.Memory = ref.Key, false
 				a.refs = append(a.refs, ref)
 			}
+		case exhibit.Refer:
+			a.referring = append(a.referring, referring{p, pt.md.Refers[p.Level]})
 		case exhibit.Link:
 			p.Target = a.linkTarget(pt, p.Target)
 		case exhibit.Image:

@@ -197,6 +197,18 @@ type Equation struct {
 	TeX string `json:"tex,omitempty"`
 }
 
+// Of is the registry id of the value that the equation gives, in the block of that
+// name; "" for an equation of a method.
+func (e *Equation) Of(block string) string {
+	switch {
+	case e.ID != "":
+		return e.ID
+	case e.Result != nil && e.Symbol != nil && block != "" && strings.HasPrefix(e.Symbol.ID, block+"."):
+		return e.Symbol.ID
+	}
+	return ""
+}
+
 // Table is a table; ID is the stem of its CSV file.
 type Table struct {
 	ID      string   `json:"id"`

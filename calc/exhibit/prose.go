@@ -56,4 +56,7 @@ const (
 	FootnoteRef    ProseKind = "footnote_ref"
 	Cite           ProseKind = "cite"  // [key]; Text as shown
 	Value          ProseKind = "value" // {{ .V }}
+	// Refer is a reference to an equation, a figure or a table: Text as shown, Target
+	// "eq V", "fig elf", "table elf-forces", or "" where it leads nowhere.
+	Refer ProseKind = "refer"
 )

@@ -30,15 +30,9 @@ type sight struct {
 			Loaded     bool
 			Own, Other int // letters drawn in the page's face, and in others
 		}
-		Texts []string
-		Rules struct {
-			Passed int
-			Broken []struct {
-				Rule, Help string
-				Count      int
-				At         []string
-			}
-		}
+		Texts       []string
+		Rules       ruleSight
+		Homes       homeSight
 		Figures     []figureSight
 		Paper, Back struct{ Figures, Twins, Lives, Tools int }
 		Widths      []widthSight
@@ -49,6 +43,16 @@ type sight struct {
 		Unseen, Texts                      []string
 		Widths                             []widthSight
 		Heard                              heard
+	}
+}
+
+// ruleSight is what the rules of accessibility find.
+type ruleSight struct {
+	Passed int
+	Broken []struct {
+		Rule, Help string
+		Count      int
+		At         []string
 	}
 }
 
@@ -275,11 +279,12 @@ func (s *sight) holds(t *testing.T) {
 			t.Errorf("the face %s is not used: %+v", name, f)
 		}
 	}
-	for _, v := range o.Rules.Broken {
+	for _, v := range slices.Concat(o.Rules.Broken, o.Homes.Rules.Broken) {
 		if falseAlarms[v.Rule] == "" {
 			none(fmt.Sprintf("%s (%s), %d times", v.Rule, v.Help, v.Count), v.At)
 		}
 	}
+	o.Homes.holds(t)
 	if o.Rules.Passed < 20 {
 		t.Errorf("only %d accessibility rules had something to look at", o.Rules.Passed)
 	}

@@ -188,7 +188,7 @@ func proseTopic() topic {
 	for _, f := range live.Functions() {
 		rows = append(rows, row{Name: f.Usage, Doc: f.Text})
 	}
-	return topic{Name: "prose", Doc: refProse, Form: "{{ .NAME }}", Sections: []section{{Title: refFunctions, Heads: headsForms, Rows: rows}}}
+	return topic{Name: "prose", Doc: refProse, Form: "{{ .NAME }}", Sections: []section{{Title: refFunctions, Heads: headsForms, Rows: rows}, {Title: refRefers, Heads: headsForms, Rows: refers}}}
 }
 
 // unitsTopic lists the units by what they measure, the small before the large.

@@ -22,10 +22,16 @@ const (
 	refFront   = "the head of the document, between two lines ---"
 	refFormula = "formula lines and checks, each typeset with its numbers"
 	refProse   = "values in the text, each a pipeline between double braces"
+	refRefers  = "references"
 	refUnits   = "the units of the language and what one of each is; a weight is a force, a mass is a mass"
 )
 
 var (
+	refers = []row{
+		{Name: "[Eq. V]", Doc: "the number of the equation of a value, linked: Eq. (12); [Eq. elf.C_s] of a block's"},
+		{Name: "[Fig. elf]", Doc: "of a figure, by the name of its file in tables/, or of its block where that has but one"},
+		{Name: "[Table elf-forces]", Doc: "of a table, likewise"},
+	}
 	headsFields = []string{"field", "takes", "meaning"}
 	headsValues = []string{"value", "is", "meaning"}
 	headsForms  = []string{"form", "meaning"}

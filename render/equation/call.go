@@ -87,16 +87,15 @@ func (w writer) pure(n *expr.Node) piece {
 func (w writer) cases(n *expr.Node) piece {
 	out := piece{bind: loose, talk: atom}
 	inner := w.within(5)
-	when := inner.set(n.Args[0])
 	xml, text := "", ""
-	for i, arg := range n.Args[1:] {
-		p := inner.set(arg)
+	for i, c := range chainOf(n) {
+		p := inner.set(c.of.Args[c.branch])
 		label := words("otherwise")
-		if i == 0 {
-			label = join(words("if\u00a0"), when)
+		if c.branch == 1 {
+			label = join(words("if\u00a0"), inner.set(c.of.Args[0]))
 		}
 		mark, spoken := "", ""
-		if all, items := taken(n, i+1); all {
+		if all, items := taken(c.of, c.branch); all {
 			mark, spoken = "✓", " [taken]"
 		} else if items != "" {
 			mark, spoken = "✓ "+items, " [taken: "+items+"]"
@@ -112,6 +111,22 @@ func (w writer) cases(n *expr.Node) piece {
 	out.xml = `<mrow><mo stretchy="true" symmetric="true">{</mo><mtable class="cases" displaystyle="true">` + xml + "</mtable></mrow>"
 	out.text = "{" + text + "}"
 	return out
+}
+
+// branch is one line of an if: the branch of the call that it is.
+type branch struct {
+	of     *expr.Node
+	branch int
+}
+
+// chainOf is the lines of an if. One that stands in the last branch of another goes on
+// with it, unless items of a vector take different branches.
+func chainOf(n *expr.Node) []branch {
+	out := []branch{{n, 1}}
+	if last := n.Args[2]; last.Op == expr.Call && last.Text == "if" && len(n.Taken) <= 1 && len(last.Taken) <= 1 {
+		return append(out, chainOf(last)...)
+	}
+	return append(out, branch{n, 2})
 }
 
 // function is name(arguments); the arguments of min and max are marked.

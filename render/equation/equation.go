@@ -11,6 +11,8 @@
 //     unit (ISO 80000-1), so the substituted number stands there without a unit.
 //   - Factors stand side by side where both are single letters or a number is
 //     followed by one; else × stands between.
+//   - Equations of a block have their equals signs below each other (Setter.Lead).
+//   - An if in the last branch of another goes on with its list of cases.
 //   - The argument of a min or max that governs is underlined; the branch taken of
 //     an if is ticked.
 //   - Parentheses stand only where binding needs them.
@@ -19,6 +21,8 @@
 package equation
 
 import (
+	"fmt"
+
 	"quoin/calc/expr"
 	"quoin/calc/quantity"
 )
@@ -33,13 +37,16 @@ type Math struct {
 
 // Setter sets formulas in a column. Width is the column in em; an expression
 // estimated wider is broken at its loosest operators, or after the arguments of a
-// call. Width 0 never breaks. System gives the units of numbers that name none.
+// call. Width 0 never breaks. Lead is how far the equals sign of an equation stands
+// from its left end, em, if its symbol is not wider: so that those of several stand
+// below each other. System gives the units of numbers that name none.
 //
 // TopDown sets substituted vectors by level with the highest level on top; see
 // [Levels].
 type Setter struct {
 	System  quantity.System
 	Width   float64
+	Lead    float64
 	TopDown bool
 }
 
@@ -57,6 +64,10 @@ func (s Setter) Equation(symbol, tree *expr.Node) Math {
 		return finish(w.set(tree))
 	}
 	left := w.set(symbol)
+	if left.wide <= s.Lead {
+		left.xml = fmt.Sprintf(`<mpadded width="%.2fem"><mrow>%s</mrow></mpadded>`, s.Lead, left.xml)
+		left.wide = s.Lead
+	}
 	left.wide += 1.6
 	right := w.within(left.wide).set(tree)
 	left.wide -= 1.6

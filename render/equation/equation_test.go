@@ -54,6 +54,19 @@ func num(x *expr.Node, unit string) *expr.Node {
 	return n
 }
 
+// TestLead: a symbol that is not wider than the lead takes all of it.
+func TestLead(t *testing.T) {
+	tree := op(expr.Add, nm("a"), nm("b"))
+	for _, symbol := range []string{"V", "C_s"} {
+		if set := (equation.Setter{Lead: 3}).Equation(nm(symbol), tree); !strings.Contains(set.XML, `<mpadded width="3.00em">`) || set.Text != symbol+" = a + b" {
+			t.Errorf("%s: %s", symbol, set.XML)
+		}
+	}
+	if set := (equation.Setter{Lead: 3}).Equation(nm("mass_of_the_roof"), tree); strings.Contains(set.XML, "mpadded") {
+		t.Errorf("a wide symbol is squeezed: %s", set.XML)
+	}
+}
+
 func TestPlainText(t *testing.T) {
 	h := nm("h_n", quantity.Scalar(15.24, m))
 	h.Digits = 3
@@ -85,6 +98,7 @@ func TestPlainText(t *testing.T) {
 		{taken(call("max", w), 3), "max(w)", "max([1.000; 2.000; 3.000 [governs]] kN)"},
 		{taken(call("min", a, b), 1, 2, 1), "min(a [items 1, 3], b [items 2])", "min(a [items 1, 3], b [items 2])"},
 		{taken(call("if", op(expr.AtMost, T1, lit("0.5", "s")), a, b), 2), "{a if\u00a0m.T[1] ≤ 0.5 s; b otherwise [taken]}", "{a if\u00a00.6420 s ≤ 0.5 s; b otherwise [taken]}"},
+		{taken(call("if", op(expr.Less, a, b), a, taken(call("if", op(expr.Less, b, c), b, c), 1)), 2), "{a if\u00a0a < b; b if\u00a0b < c [taken]; c otherwise}", "{a if\u00a0a < b; b if\u00a0b < c [taken]; c otherwise}"},
 		{op(expr.Within, op(expr.Equal, a, b), lit("2", "%")), "a = b within 2 %", "a = b within 2 %"},
 		{call("log", a), "ln(a)", "ln(a)"},
 		{call("abs", op(expr.Neg, a)), "|−a|", "|−a|"},

@@ -27,6 +27,9 @@ type book struct {
 	notes    map[int]bool      // footnotes there are
 	marked   map[int]bool      // footnotes already referred to
 	symbols  map[string]bool   // names that words show as symbols
+	trail    trail             // what leads values home
+	within   string            // the block being made
+	lead     float64           // em, of the symbols before the equals signs of that block
 	err      error             // the first, of making the page
 }
 
@@ -35,7 +38,7 @@ var parsed = template.Must(template.New("").Funcs((&book{}).funcs()).ParseFS(tem
 
 func newBook(p *exhibit.Package, o Options) *book {
 	b := &book{p: p, o: o, open: append(OpenState(p), o.State...), ids: map[string]bool{}, sheets: map[string]int{},
-		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p)}
+		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p), trail: newTrail(p)}
 	for _, e := range p.Values {
 		b.entries[e.ID] = e
 	}

@@ -126,6 +126,7 @@ func (b *book) place(p exhibit.Place) string {
 }
 
 func (b *book) block(k *exhibit.Block) ([]item, entry) {
+	b.within, b.lead = k.Name, leadOf(k)
 	v := blockView{ID: b.claim(k.Anchor), Place: b.place(k.Place), Kind: k.Kind, Name: k.Name, Caption: k.Caption, Cites: k.Cites}
 	head := item{name: "block", data: v, high: 12 + 5*(lines(k.Kind+k.Name+k.Caption, 80)-1), keep: true, anchors: []string{v.ID}}
 	again := &item{name: "continued", data: v, high: 10}

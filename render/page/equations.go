@@ -3,6 +3,7 @@ package page
 import (
 	"html/template"
 	"strconv"
+	"strings"
 
 	"quoin/calc/exhibit"
 	"quoin/calc/expr"
@@ -25,11 +26,13 @@ const (
 type equationView struct {
 	ID, Label, Description, Value, Unit, Over string
 	Governs                                   string // how what governs is marked
+	Lead                                      string // where the equals signs of the block stand, em
 	Shrink                                    string // on paper, where a sheet would not hold it
 	Symbols, Numbers, Matrix                  template.HTML
+	From                                      []string // what its numbers come from
 	Columns                                   [][]labelled
 	Source                                    any
-	Number                                    int
+	Number, Use                               int
 	Wide, Method, Overridden, TopDown         bool
 }
 
@@ -41,6 +44,12 @@ func (b *book) equation(e *exhibit.Equation, label string) []item {
 	v := equationView{Label: label, Description: e.Description, Number: e.Number, Overridden: e.Overridden, Method: e.Result == nil}
 	v.Source = sourceOf(e.Ref, e.RefText)
 	v.ID = b.exhibits[e]
+	if e.Tree != nil {
+		v.From = b.leavesOf(e.Tree)
+	}
+	if v.ID != "" {
+		v.Use = b.use(e.Of(b.within))
+	}
 	rows := 1.6
 	if e.TeX != "" {
 		v.Symbols, v.Wide = b.mustTeX(e.TeX, e.Place), true
@@ -56,7 +65,7 @@ func (b *book) equation(e *exhibit.Equation, label string) []item {
 			rows = max(rows, tall)
 		}
 	}
-	high := rows*em + 4.5*lines(e.Description, 90) + 4
+	high := rows*em + 4.5*lines(e.Description+strings.Repeat("(00), ", min(len(v.From), mostFrom)), 90) + 4
 	if e.Ref != nil { // in the margin, in narrow lines
 		margin := lines(e.Ref.Key, 14) + lines(e.Ref.Clause, 14)
 		if e.Ref.Memory {
@@ -85,10 +94,10 @@ func (b *book) equation(e *exhibit.Equation, label string) []item {
 // formula sets the symbols and the numbers of a line and says how high it is, em.
 func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
 	down := equation.Levels(e.Tree)
-	free := equation.Setter{System: b.p.System, TopDown: down}
+	free := equation.Setter{System: b.p.System, TopDown: down, Lead: b.lead}
 	tree := e.Tree
-	given, constant := constantTree(tree)
-	if given && e.Symbol != nil && sameUnit(tree, e.Result) { // "h = 15 m": the result says it all
+	_, constant := constantTree(tree)
+	if echoed(e) { // "h = 15 m": the result says it all
 		set := free.Symbols(e.Symbol)
 		v.Symbols = template.HTML(set.XML)
 		return set.Height
@@ -106,7 +115,10 @@ func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
 	}
 	v.Wide = symbols.Width > symbolRoom && !(plain && symbols.Width <= symbolRoom+numberRoom) || !plain && numbers.Width > numberRoom
 	if v.Wide {
-		narrow := equation.Setter{System: b.p.System, Width: wholeRoom}
+		narrow := equation.Setter{System: b.p.System, Width: wholeRoom, Lead: b.lead}
+		if e.Symbol != nil && b.lead > 0 {
+			v.Lead = strconv.FormatFloat(b.lead, 'f', 2, 64)
+		}
 		symbols, numbers = narrow.Equation(e.Symbol, tree), equation.Setter{System: b.p.System, Width: besideRoom, TopDown: down}.Numbers(tree)
 	}
 	v.Symbols = template.HTML(symbols.XML)
@@ -118,6 +130,31 @@ func (b *book) formula(v *equationView, e *exhibit.Equation) float64 {
 		return symbols.Height + numbers.Height + 0.8
 	}
 	return max(symbols.Height, numbers.Height)
+}
+
+// widestLead is the widest symbol, em, that the equals signs of a block go by.
+const widestLead = 7
+
+// leadOf is where the equals signs of a block's equations stand, em: behind the widest symbol.
+func leadOf(k *exhibit.Block) float64 {
+	lead := 0.0
+	for _, part := range k.Parts {
+		for _, it := range part.Items {
+			if e := it.Equation; e != nil && e.Symbol != nil && e.Tree != nil && !echoed(e) {
+				if w := (equation.Setter{}).Symbols(e.Symbol).Width; w <= widestLead {
+					lead = max(lead, w)
+				}
+			}
+		}
+	}
+	return lead
+}
+
+// echoed tells an equation that gives a number as it is: "h = 15 m", of which the
+// result says all.
+func echoed(e *exhibit.Equation) bool {
+	given, _ := constantTree(e.Tree)
+	return given && e.Symbol != nil && sameUnit(e.Tree, e.Result)
 }
 
 // constantTree tells a single number or list as given from what is computed, and

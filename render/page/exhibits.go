@@ -137,23 +137,27 @@ func (b *book) claimExhibits() {
 			}
 			for _, part := range piece.Block.Parts {
 				for _, it := range part.Items {
-					b.claimExhibit(it)
+					b.claimExhibit(it, piece.Block.Name)
 				}
 			}
 		}
 	}
 }
 
-func (b *book) claimExhibit(it exhibit.Item) {
+func (b *book) claimExhibit(it exhibit.Item, block string) {
 	switch {
-	case it.Equation != nil && it.Equation.ID != "":
-		if id := b.claim("eq-" + slug(it.Equation.ID)); id != "" {
-			b.exhibits[it.Equation], b.origins[it.Equation.ID] = id, id
+	case it.Equation != nil && it.Equation.Of(block) != "":
+		of := it.Equation.Of(block)
+		if id := b.claim("eq-" + slug(of)); id != "" {
+			b.exhibits[it.Equation], b.origins[of] = id, id
+			b.trail.numbers[id], b.trail.trees[of], b.trail.named["eq "+of] = it.Equation.Number, it.Equation.Tree, id
 		}
 	case it.Table != nil:
 		b.exhibits[it.Table] = b.claim("tab-" + slug(it.Table.ID))
+		b.trail.named["table "+it.Table.ID] = b.exhibits[it.Table]
 	case it.Figure != nil:
 		b.exhibits[it.Figure] = b.claim("fig-" + slug(it.Figure.ID))
+		b.trail.named["fig "+it.Figure.ID] = b.exhibits[it.Figure]
 	}
 }
 

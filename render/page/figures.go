@@ -74,6 +74,7 @@ type checkView struct {
 	ID                                                 string        // of the row in its block
 	Over                                               bool          // the bar would be longer than there is room
 	Formula                                            template.HTML // instead of a name in words
+	Sides                                              [2]numbersView
 	Tree                                               template.HTML // below the name
 	Plain                                              string        // or its text
 	Source                                             any
@@ -159,6 +160,7 @@ func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
 	} else {
 		r.ID = b.claimRow(c)
 	}
+	r.Sides = [2]numbersView{{r.Demand, b.side(c, 0)}, {r.Limit, b.side(c, 1)}}
 	high := func(tall float64) float64 { return 2.4 + 4.6*tall }
 	out := checkRow{short: r, shortHigh: high(tall)}
 	out.short.Source = ""

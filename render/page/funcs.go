@@ -24,6 +24,9 @@ func (b *book) funcs() template.FuncMap {
 		"known":     b.known,
 		"origin":    b.origin,
 		"href":      b.href,
+		"home":      b.home,
+		"from":      b.from,
+		"refer":     b.refer,
 		"reference": func(key string) string { return b.known(b.refs[key]) },
 		"source":    b.source,
 		"math":      func(n *expr.Node) template.HTML { return template.HTML(equation.Symbols(n)) },
@@ -152,13 +155,16 @@ func imageOf(n exhibit.Prose) *imageView {
 	return v
 }
 
-type liveView struct{ Text, Title, Href string }
+type liveView struct {
+	Text, Title string
+	Home        *homeView
+}
 
 func (b *book) live(l *exhibit.Live) *liveView {
 	if l == nil {
 		return nil
 	}
-	v := &liveView{Text: l.Text, Title: b.story(l.ID), Href: b.origin(l.ID)}
+	v := &liveView{Text: l.Text, Title: b.story(l.ID), Home: b.home(l.ID)}
 	if len(l.Numbers) > 0 {
 		v.Text = numbersText(l.Numbers)
 	}

@@ -56,10 +56,12 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 		Style               template.CSS
 		Script              template.JS
 		Sheets              []sheetView
+		Trail               []stepView
 	}{Title: documentTitle(p), Policy: policy(style, o.Assets.PageScript), Tool: p.Provenance.Tool, Licences: o.Assets.Licences,
 		Style: template.CSS(style), Script: template.JS(o.Assets.PageScript)}
 	for i, s := range sheets {
 		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Head: head}
+		b.trail.here = i + 1
 		for _, it := range s {
 			text, err := b.execute(it)
 			if err != nil {
@@ -69,6 +71,7 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 		}
 		view.Sheets = append(view.Sheets, v)
 	}
+	view.Trail = b.steps()
 	var out bytes.Buffer
 	if err := b.tmpl.ExecuteTemplate(&out, "page", view); err != nil {
 		return nil, fmt.Errorf("page: %w", err)

@@ -119,7 +119,7 @@ func TestSample(t *testing.T) {
 	}
 	for _, want := range []string{
 		`<html lang="en">`, "DEMONSTRATION · INVENTED DATA", "1 check NOT OK", "1 NOT OK: storey drift, x, at the centre of mass, level 2, ratio 1.04",
-		`href="#eq-V" title="V = C_s × W, in kN · design base shear · line 118">1586` + "\u202fkN</a>",
+		`href="#eq-V" data-v="`, ` title="V = C_s × W, in kN · design base shear · line 118">1586` + "\u202fkN</a>",
 		`<a class="v" href="#east"`, `href="inputs/records/east.txt"`, `href="https://example.org/a?b=c"`, "from memory, confirm", "(default)",
 		`<figure id="fig-east-rs" data-chart data-height="380"><div class="twin"><svg`, `<script type="application/json">{"title":"\u003cscript>","n":1}</script>`,
 		`href="tables/forces.csv"`, `<th scope="col"`, `<b class="open">value overridden</b>`, `<td class="r"><b>157.1</b></td>`, ">11.4<", `<td class="r p3">11.4</td>`, `width="83.3"`, "1710\u202fkN ± 20.0\u202fkN", "<dd><div>5 OK", ">0.0762<",

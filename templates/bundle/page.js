@@ -2,6 +2,7 @@
 // option; a figure that comes near the window becomes a chart to work with. On paper
 // the static pictures stand. Without this script nothing is missing but the working.
 import { Live } from './live.js'
+import './trail.js'
 
 const figures = new Map()
 

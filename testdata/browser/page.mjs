@@ -2,13 +2,14 @@
 // what was seen in each mode. It judges nothing. FOLDER takes page.pdf; CHROMIUM names the browser.
 //
 //   live      as it opens, then leafed through to its end: what it asks for, says and refuses; links, headings,
-//             faces; the accessibility rules of WCAG 2.0 to 2.2, A and AA; every chart by pointer and by key, and
+//             faces; the accessibility rules of WCAG 2.0 to 2.2, A and AA; every chart and the numbers that lead home by pointer and by key, and
 //             what stands in its place on paper; page.pdf; at 390 and 320 px
 //   plain     without scripts, also at 390 and 320 px
 import { readFileSync } from 'node:fs'
 import { createRequire } from 'node:module'
 import { chromium } from 'playwright-core'
 import { figures } from './figures.mjs'
+import { homes } from './homes.mjs'
 import * as seen from './seen.mjs'
 import { fonts, leaf, open, settle } from './watch.mjs'
 
@@ -27,6 +28,7 @@ const does = {
     report.rules = await page.evaluate(seen.rules, ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
     await page.evaluate(() => document.querySelectorAll('details').forEach((d) => { d.open = false }))
 
+    report.homes = await homes(page, seen.rules)
     report.figures = await figures(page)
     for (const [media, name] of [['print', 'paper'], [null, 'back']]) {
       await page.emulateMedia({ media })

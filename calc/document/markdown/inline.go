@@ -195,6 +195,12 @@ func (citations) Parse(_ ast.Node, block text.Reader, pc parser.Context) ast.Nod
 		return nil
 	}
 	key := citeKey(inside, notesOf(pc).cite)
+	if m := referring.FindStringSubmatch(inside); m != nil && key == "" && len(parts) == 1 && parts[0].Len() == len(inside) {
+		if _, defined := pc.Reference(util.ToLinkReference([]byte(inside))); !defined {
+			_, end := block.Position()
+			return &referNode{what: referWords[m[1]], name: m[2], start: open.Start, stop: end.Start}
+		}
+	}
 	if key == "" {
 		if _, defined := pc.Reference(util.ToLinkReference([]byte(inside))); !defined {
 			_, end := block.Position()

@@ -8,6 +8,7 @@
 //   - a fence whose info string begins with the word calc is a block;
 //   - {{ ... }} is a live value, and \{{ is two braces as text;
 //   - [key] is a citation where the key is known;
+//   - [Eq. NAME], [Fig. NAME] and [Table NAME] are references;
 //   - HTML comments vanish, all other raw HTML is an error;
 //   - characters that reorder or hide text are an error anywhere in the file;
 //   - a fence that comes near to being a block, and is none, is an error;
@@ -98,6 +99,7 @@ type ImageRef struct {
 // File is one markdown file.
 //
 // In prose, a listing has its info string in Title; a live value is Prose{Kind: exhibit.Value, Level: index into Lives};
+// a reference is Prose{Kind: exhibit.Refer, Level: index into Refers};
 // an image has its path in Target and what it shows in Children; a tight list
 // item (or description) holds its text directly, a loose one in paragraphs. A
 // list or quote with a calc fence inside is split around it; what follows the
@@ -111,6 +113,7 @@ type File struct {
 	Sections   []Section
 	Fences     []Fence
 	Lives      []Live
+	Refers     []Refer
 	Footnotes  []exhibit.Footnote
 	Images     []ImageRef
 	// Brackets are the texts in brackets that are neither links nor citations.

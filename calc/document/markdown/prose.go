@@ -104,6 +104,8 @@ func (w inlineWriter) inline(n ast.Node, depth int, inLink bool) (exhibit.Prose,
 			return exhibit.Prose{Kind: exhibit.Text, Text: "[" + n.text + "]"}, true
 		}
 		return exhibit.Prose{Kind: exhibit.Cite, Target: n.key, Text: n.text}, true
+	case *referNode:
+		return w.refer(n, inLink)
 	case *mathNode:
 		tex := joined(n.parts, w.text)
 		if w.cell {
