@@ -86,6 +86,7 @@ func (d *run) runNode(n *node) {
 		rows, relation, findings := formula.EvaluateCheck(n.line.Tree, sc)
 		n.take(findings)
 		n.rows, n.relation = rows, relation
+		n.percentLimit()
 	case liveNode:
 		shown, err := n.pipeline.Run(sc.shown)
 		if err != nil {

@@ -63,6 +63,7 @@ func (in ASCE) Static() (*Static, error) {
 		return nil, err
 	}
 	s.Basis, s.R, s.Ie = in.Target.Basis, in.R, in.Ie
+	s.Importance = in.Target.Importance()
 	s.SDS, s.SD1, s.S1, s.TL, s.S1Known, s.Exception = g.sds, g.sd1, g.s1, g.tl, g.s1Known, g.exception
 	if err := in.period(s); err != nil {
 		return nil, err

@@ -44,7 +44,15 @@ func systemOf(list []System, name string) (System, error) {
 		names = append(names, s.Name)
 	}
 	hint := "one of: " + strings.Join(names, ", ")
-	if near := diag.Nearest(asked, names); near != "" {
+	var ends []string // rows that the words asked for end: "moment frame" is no guess of one
+	for _, name := range names {
+		if strings.HasSuffix(name, " "+asked) {
+			ends = append(ends, name)
+		}
+	}
+	if len(ends) > 1 {
+		hint = strings.Join(ends, " or ") + "? It is " + hint
+	} else if near := diag.Nearest(asked, names); near != "" {
 		hint = "did you mean " + near + "? It is " + hint
 	}
 	return System{}, problem("system", hint, "there is no row %q in the table of C_t", name)

@@ -146,11 +146,19 @@ func (d *Drift) warn(in DriftInput, rule driftRule) {
 	if len(d.Theta) == 0 {
 		return
 	}
-	var light []string
+	var light, heavy []string
 	for i, w := range in.Weight {
 		if w > in.P[i]*(1+1e-6) {
 			light = append(light, d.Levels[i])
 		}
+		if in.P[i] > heaviest*w {
+			heavy = append(heavy, d.Levels[i])
+		}
 	}
 	add("gravity-load", "P is less than the seismic weight at and above %s: it is the whole vertical load, summed from the top", light, rule.clauses.Theta)
+	add("heavy-load", "P is more than ten times the seismic weight at and above %s: is its unit right?", heavy, rule.clauses.Theta)
 }
+
+// heaviest is how many times the seismic weight a vertical load is when it looks
+// like a wrong unit.
+const heaviest = 10

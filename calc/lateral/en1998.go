@@ -69,6 +69,7 @@ func (in EN1998) Static() (*Static, error) {
 	if err != nil {
 		return nil, err
 	}
+	s.Importance = in.Target.Importance()
 	s.Basis, s.Q, s.TC = in.Target.Basis, in.Target.Q, tc
 	if err := in.period(s); err != nil {
 		return nil, err

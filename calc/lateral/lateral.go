@@ -24,6 +24,7 @@ type Static struct {
 	Q, Lambda        float64 // EN 1998-1; 0 elsewhere
 	TC               float64 // end of the plateau, s, EN 1998-1
 	LambdaWhy        string  // why this lambda
+	Importance       string  // risk category or importance class that the target states; "": none
 	S1Known          bool    // whether the target states S_1
 	Exception        int     // to ASCE/SEI 7-16 11.4.8, claimed by the target; 0: none
 

@@ -46,6 +46,10 @@ type Combined struct {
 	Basis    string
 	R, Ie, Q float64
 
+	// Importance is the risk category or importance class that the target states; ""
+	// where it states none. Set by the caller.
+	Importance string
+
 	// Limb is the symbol of the limb of C_s that governs the static base shear that
 	// forces are scaled to, "C_s_min_1" for 0.5 S_1/(R/I_e); "" where it is not
 	// known. Set by the caller.

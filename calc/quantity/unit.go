@@ -53,6 +53,7 @@ var refused = map[string]string{
 	"sec": "write s", "mi": "write km or ft", "kgf": "write the force in N or kN", "tf": "write the force in kN",
 	"G": "write g for the acceleration of free fall", "feet": "write ft", "inch": "write in", "foot": "write ft", "inches": "write in", "kgs": "write kg", "seconds": "write s", "second": "write s", "meter": "write m", "metre": "write m", "meters": "write m", "metres": "write m",
 	"pcf": "write lbf/ft^3", "plf": "write lbf/ft", "klf": "write kip/ft", "kcf": "write kip/ft^3", "bar": "write kPa or MPa", "°": "write deg", "degrees": "write deg", "percent": "write %", "rpm": "write Hz",
+	"tonnes": "write t", "k": "write kip", "k/in": "write kip/in", "k/ft": "write kip/ft", "sq": "write ft^2 or m^2 for an area", "sqft": "write ft^2", "'": "write ft", "″": "write in", "′": "write ft",
 	"KN": "write kN", "kn": "write kN", "Kip": "write kip", "hz": "write Hz", "K": "write kip",
 }
 

@@ -15,6 +15,17 @@ func Importance(category string) (ie float64, ok bool) {
 	return ie, ok
 }
 
+// Importance is the risk category (ASCE/SEI 7) or the importance class (EN 1998-1)
+// that a target states, "I" to "IV"; "" where it states none.
+func (t *Target) Importance() string {
+	for _, symbol := range []string{"risk", "importance"} {
+		if p, ok := t.Parameter(symbol); ok {
+			return p.Text
+		}
+	}
+	return ""
+}
+
 // importance is I_e of ASCE/SEI 7 Table 1.5-2, by risk category.
 var importance = map[string]float64{"I": 1, "II": 1, "III": 1.25, "IV": 1.5}
 

@@ -44,7 +44,7 @@ type combine struct {
 	Damping   field.Field `name:"damping" is:"number" must:"fraction" show:"%" doc:"damping ratio of the modes; that of the structure, if it states one, else that of the spectrum"`
 	Rule      field.Field `name:"rule" is:"choice" of:"CQC|SRSS|absolute" default:"CQC" doc:"rule of combination"`
 	R         field.Field `name:"R" is:"number" must:"positive" default:"1" doc:"response modification coefficient; forces and displacements are divided by R/I_e"`
-	Ie        field.Field `name:"I_e" is:"number" must:"positive" default:"1" doc:"importance factor"`
+	Ie        field.Field `name:"I_e" is:"number" must:"positive" doc:"importance factor; by the risk category of the target, where R is given and it is not; else 1"`
 	Residual  field.Field `name:"residual" is:"choice" of:"none|missing mass" default:"none" doc:"missing mass: the mass that the modes do not move is added as rigid, at the zero-period acceleration"`
 	ZPA       field.Field `name:"zpa" is:"acceleration" must:"positive" label:"zero-period acceleration" doc:"acceleration of the residual, as the ground has it: stated undivided, divided by R/I_e here; that of the target at T = 0, or the peak acceleration of the record, if not given"`
 	ScaleTo   field.Field `name:"scale_to" is:"force" must:"positive" doc:"a base shear: forces, shears and moments are multiplied by max(1, scale_to/base_shear), displacements are not"`
@@ -67,7 +67,8 @@ func (b *combine) Run(r *Run) {
 		r.Fail(b.Direction, "direction", "the model is planar and has direction x only")
 		return
 	}
-	in, ok := b.read(r, modes)
+	ie := b.importance(r)
+	in, ok := b.read(r, modes, ie)
 	if !ok {
 		return
 	}
@@ -76,12 +77,15 @@ func (b *combine) Run(r *Run) {
 		r.Fail(b.Damping, "damping", "the complete quadratic combination needs damping greater than zero").WithHint("use the rule SRSS, or state the damping")
 		return
 	}
-	c, err := modal.Combine(modes, in.psa, []float64{in.z}, rule, b.R.SI()/b.Ie.SI())
+	c, err := modal.Combine(modes, in.psa, []float64{in.z}, rule, b.R.SI()/ie)
 	if err != nil {
 		r.Fail(b.Modes, "combine", "%s", err)
 		return
 	}
-	c.Reduced(in.basis, b.R.SI(), b.Ie.SI(), in.q)
+	c.Reduced(in.basis, b.R.SI(), ie, in.q)
+	if in.target != nil {
+		c.Importance = in.target.Importance()
+	}
 	c.Unraised = in.target != nil && in.target.RaisesCs(slices.Max(c.T))
 	if b.Residual.Text() != "none" {
 		if c = b.withResidual(r, c, modes, in); c == nil {
@@ -101,6 +105,7 @@ func (b *combine) Run(r *Run) {
 	r.Made = c
 	b.results(r, c, in)
 	b.unraised(r, c)
+	b.unscaled(r, c)
 }
 
 // unlikelyScale is a factor on forces that points to a wrong unit.
@@ -113,6 +118,7 @@ type demand struct {
 	left  []float64 // at the modes left out, where a residual asks for them
 	zpa   float64   // 0 where the spectrum does not tell
 	basis string    // of a target
+	ie    float64   // importance factor that forces are multiplied by
 	q     float64   // that a target is divided by already; 0: none
 	tells string    // where zpa comes from
 
@@ -120,7 +126,8 @@ type demand struct {
 }
 
 // read reads the spectrum at every mode.
-func (b *combine) read(r *Run, modes *modal.Modes) (in demand, ok bool) {
+func (b *combine) read(r *Run, modes *modal.Modes, ie float64) (in demand, ok bool) {
+	in.ie = ie
 	in.z = modes.Model.Damping
 	source := "of the structure"
 	if b.Damping.Given {
@@ -165,12 +172,12 @@ func (b *combine) read(r *Run, modes *modal.Modes) (in demand, ok bool) {
 		return in, false
 	}
 	in.target = t
-	if in.basis, in.q = t.Basis, t.Q; t.Q > 0 && b.R.SI()/b.Ie.SI() != 1 {
+	if in.basis, in.q = t.Basis, t.Q; t.Q > 0 && b.R.SI()/ie != 1 {
 		at := b.R
 		if !at.Given {
 			at = b.Ie
 		}
-		r.Fail(at, "reduced-twice", "the target %s is divided by q = %s already; dividing by R/I_e = %s again would reduce the response twice", name, short(t.Q), short(b.R.SI()/b.Ie.SI())).
+		r.Fail(at, "reduced-twice", "the target %s is divided by q = %s already; dividing by R/I_e = %s again would reduce the response twice", name, short(t.Q), short(b.R.SI()/ie)).
 			WithHint("leave R and I_e out; importance belongs in gamma_I of the target")
 		return in, false
 	}

@@ -4,9 +4,11 @@ import (
 	"slices"
 	"strings"
 
+	"quoin/calc/cite"
 	"quoin/calc/expr"
 	"quoin/calc/lateral"
 	"quoin/calc/modal"
+	"quoin/calc/standard"
 )
 
 // statics are the static forces that a tree is made of, formula names followed to
@@ -51,7 +53,7 @@ func (b *combine) limb(r *Run, modes *modal.Modes, in demand) string {
 			return symbol
 		}
 	}
-	if symbol == "" && in.target != nil && lateral.IsLeast(in.target, b.ScaleTo.SI(), modes.Model.Weight, b.R.SI(), b.Ie.SI()) {
+	if symbol == "" && in.target != nil && lateral.IsLeast(in.target, b.ScaleTo.SI(), modes.Model.Weight, b.R.SI(), in.ie) {
 		return lateral.LeastSymbol
 	}
 	return symbol
@@ -72,5 +74,35 @@ func (b *combine) unraised(r *Run, c *modal.Combined) {
 		r.WarnAt(b.Target, "exception-raise", "exception 2 to 11.4.8 raises C_s by half and not the spectrum of %s: forces are scaled to the raised base shear, %s", b.Target.Text(), left)
 	default:
 		r.WarnAt(b.ScaleTo, "exception-raise", "exception 2 to 11.4.8 raises C_s by half and not the spectrum of %s: see that scale_to is the base shear of the static procedure with the raised C_s; %s", b.Target.Text(), left)
+	}
+}
+
+// importance is I_e: as given, or by the risk category of the target where the
+// response is reduced; never below that category in silence.
+func (b *combine) importance(r *Run) float64 {
+	least, risk, known := 1.0, "", false
+	if b.Target.Given {
+		least, risk, known = lateral.Importance(r.Product(b.Target.Text()).(*standard.Target))
+	}
+	switch {
+	case b.Ie.Given && known && b.R.Given && b.Ie.SI() < least:
+		r.WarnAt(b.Ie, "importance", "I_e = %s is below the %s of risk category %s of %s", short(b.Ie.SI()), short(least), risk, b.Target.Text())
+	case !b.Ie.Given && known && b.R.Given:
+		r.Used("I_e", "I_e", inUnits(least, pure), "by the risk category of the target, "+risk)
+		return least
+	case !b.Ie.Given:
+		r.assumed("I_e", 1)
+		return 1
+	}
+	return b.Ie.SI()
+}
+
+// unscaled warns of forces of a reduced modal analysis that no static base shear
+// holds up.
+func (b *combine) unscaled(r *Run, c *modal.Combined) {
+	if b.R.Given && !b.ScaleTo.Given && !c.Unraised && strings.HasPrefix(c.Basis, "ASCE/SEI 7") {
+		ref := cite.To(c.Basis, "12.9.1.4")
+		r.WarnAt(b.R, "unscaled", "forces are not scaled: %s asks that the modal base shear be no less than 100 %% of the static one (scale_to: NAME.V of a static block)", ref.String())
+		r.Refs = append(r.Refs, ref)
 	}
 }

@@ -41,11 +41,11 @@ type drift struct {
 	Ie     field.Field `name:"I_e" is:"number" must:"positive" doc:"ASCE/SEI 7: importance factor; that of the analysis, where it states one"`
 	Rho    field.Field `name:"rho" is:"number" must:"positive" doc:"ASCE/SEI 7: redundancy factor; it divides the limit, for moment frames in design categories D to F; 1, if not given"`
 	System field.Field `name:"system" is:"choice" of:"tolerant finishes|masonry cantilever|masonry|other" doc:"ASCE/SEI 7: row of the table of allowed drifts; tolerant finishes: four storeys or fewer, no masonry, finishes designed for the drifts"`
-	Risk   field.Field `name:"risk" is:"choice" of:"I|II|III|IV" doc:"ASCE/SEI 7: risk category"`
+	Risk   field.Field `name:"risk" is:"choice" of:"I|II|III|IV" doc:"ASCE/SEI 7: risk category; that of the target of the analysis, if not given"`
 	Scale  field.Field `name:"scale_drifts" is:"choice" of:"yes|no" doc:"ASCE/SEI 7, from a combine block with scale_to: yes where C_s is governed by 0.5 S_1/(R/I_e), so that drifts are scaled like forces; found, if not given, where scale_to is made of a static block"`
 
 	Qd       field.Field `name:"q_d" label:"q_d" is:"number" must:"positive" doc:"EN 1998-1: displacement behaviour factor; q of the analysis, if not given"`
-	Class    field.Field `name:"importance_class" is:"choice" of:"I|II|III|IV" doc:"EN 1998-1: importance class, for nu"`
+	Class    field.Field `name:"importance_class" is:"choice" of:"I|II|III|IV" doc:"EN 1998-1: importance class, for nu; that of the target of the analysis, if not given"`
 	Nu       field.Field `name:"nu" is:"number" must:"positive" doc:"EN 1998-1: reduction for damage limitation; 0.5 for importance classes I and II, 0.4 for III and IV, if not given"`
 	Finishes field.Field `name:"finishes" is:"choice" of:"brittle|ductile|none" doc:"EN 1998-1: non-structural elements: brittle and attached, ductile, or none that interfere"`
 
@@ -81,15 +81,16 @@ func (b *drift) Check(c *Checks) {
 // analysis is what the block reads of a static or a combine block.
 type analysis struct {
 	lateral.DriftInput
-	name     string
-	ie, q    float64 // 0: not stated
-	cd       float64 // the same
-	divisor  float64 // of the elastic response
-	scaled   float64 // factor that forces were multiplied by and drifts were not
-	combined bool
-	scale    bool   // drifts are multiplied by scaled too
-	unraised bool   // the spectrum was not raised, as C_s is by an exception
-	limb     string // of C_s, that governs what forces were scaled to; empty: not known
+	name       string
+	ie, q      float64 // 0: not stated
+	cd         float64 // the same
+	divisor    float64 // of the elastic response
+	scaled     float64 // factor that forces were multiplied by and drifts were not
+	combined   bool
+	scale      bool   // drifts are multiplied by scaled too
+	unraised   bool   // the spectrum was not raised, as C_s is by an exception
+	importance string // risk category or importance class of its target; empty: none stated
+	limb       string // of C_s, that governs what forces were scaled to; empty: not known
 }
 
 func (b *drift) analysis(r *Run) analysis {
@@ -97,7 +98,7 @@ func (b *drift) analysis(r *Run) analysis {
 	switch s := r.Product(b.From.Text()).(type) {
 	case *lateral.Static:
 		a.DriftInput = lateral.DriftOf(s)
-		a.ie, a.q, a.cd = s.Ie, s.Q, s.Cd
+		a.ie, a.q, a.cd, a.importance = s.Ie, s.Q, s.Cd, s.Importance
 		if a.divisor = s.Q; s.Ie > 0 {
 			a.divisor = s.R / s.Ie
 		}
@@ -109,7 +110,7 @@ func (b *drift) analysis(r *Run) analysis {
 		for _, m := range s.MassAbove() {
 			a.Weight = append(a.Weight, m*quantity.Gravity)
 		}
-		a.limb, a.unraised = s.Limb, s.Unraised
+		a.limb, a.unraised, a.importance = s.Limb, s.Unraised, s.Importance
 		a.ie, a.q, a.divisor, a.scaled, a.combined = s.Ie, s.Q, s.Divisor, s.ScaleFactor, true
 	}
 	return a
@@ -118,7 +119,7 @@ func (b *drift) analysis(r *Run) analysis {
 // Run amplifies the drifts and holds them to their limits.
 func (b *drift) Run(r *Run) {
 	a := b.analysis(r)
-	if !b.basis(r, &a) || !b.factors(r, &a) || !b.limits(r, &a) {
+	if !b.basis(r, &a) || !b.importance(r, &a) || !b.factors(r, &a) || !b.limits(r, &a) {
 		return
 	}
 	a.P = b.P.Value.SI
@@ -185,6 +186,25 @@ func (b *drift) basis(r *Run, a *analysis) bool {
 	return ok
 }
 
+// importance settles the risk category or the importance class: that of the target,
+// which the field may repeat but not contradict.
+func (b *drift) importance(r *Run, a *analysis) bool {
+	f, name, label := b.Risk, "risk", "risk category"
+	if a.european() {
+		f, name, label = b.Class, "importance_class", "importance class"
+	}
+	switch {
+	case f.Given && a.importance != "" && f.Text() != a.importance:
+		r.Fail(f, "drift-input", "the target of %s has %s %s, and %s is given here", a.name, label, a.importance, f.Text()).WithHint("leave it out here: it is taken from there")
+		return false
+	case f.Given:
+		a.importance = f.Text()
+	case a.importance != "" && !b.Limit.Given && !b.Nu.Given:
+		r.Used(name, label, plain(a.importance), "of the target of "+a.name)
+	}
+	return true
+}
+
 func (a *analysis) european() bool { return strings.HasPrefix(a.Basis, "EN ") }
 
 // factors settles what drifts are multiplied by.
@@ -203,11 +223,11 @@ func (b *drift) factors(r *Run, a *analysis) bool {
 			r.Used("q_d", "q_d", inUnits(a.q, pure), "q of "+a.name)
 		}
 		if !b.Nu.Given {
-			if !b.Class.Given {
+			if a.importance == "" {
 				return missing(b.Nu, "importance_class or nu", "nu is 0.5 for importance classes I and II, 0.4 for III and IV")
 			}
-			a.Nu = lateral.DamageReduction(b.Class.Text())
-			r.Used("nu", "nu", inUnits(a.Nu, pure), "by importance class "+b.Class.Text())
+			a.Nu = lateral.DamageReduction(a.importance)
+			r.Used("nu", "nu", inUnits(a.Nu, pure), "by importance class "+a.importance)
 		}
 		return true
 	}
@@ -288,11 +308,18 @@ func (b *drift) limits(r *Run, a *analysis) bool {
 	case a.european():
 		r.Fail(b.Finishes, "missing-field", "the drift block needs the field finishes, or limit, by %s", a.Basis).WithHint("finishes: brittle, ductile or none")
 		return false
-	case !b.System.Given || !b.Risk.Given:
-		r.Fail(b.System, "missing-field", "the drift block needs the fields system and risk, or limit, by %s", a.Basis).WithHint("system: tolerant finishes, masonry cantilever, masonry or other; risk: I to IV")
+	case !b.System.Given:
+		needs := "fields system and risk"
+		if a.importance != "" {
+			needs = "field system"
+		}
+		r.Fail(b.System, "missing-field", "the drift block needs the %s, or limit, by %s", needs, a.Basis).WithHint("system: tolerant finishes, masonry cantilever, masonry or other; risk: I to IV, unless the target states it")
+		return false
+	case a.importance == "":
+		r.Fail(b.Risk, "missing-field", "the drift block needs the field risk, or limit, by %s: the target of %s states none", a.Basis, a.name).WithHint("risk: I to IV, best in the target")
 		return false
 	}
-	x, err := lateral.AllowedDrift(b.System.Text(), b.Risk.Text(), len(a.Levels))
+	x, err := lateral.AllowedDrift(b.System.Text(), a.importance, len(a.Levels))
 	if err != nil {
 		b.fail(r, err)
 		return false

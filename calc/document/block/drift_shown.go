@@ -57,7 +57,7 @@ func (b *drift) doubts(r *Run, a analysis, d *lateral.Drift, clauses lateral.Dri
 	r.Caution("drift")
 	for _, w := range d.Warnings {
 		at := field.Field{At: r.Place}
-		if w.Code == "gravity-load" {
+		if w.Code == "gravity-load" || w.Code == "heavy-load" {
 			at = b.P
 		}
 		r.WarnAt(at, w.Code, "%s (%s)", w.Text, w.Ref)

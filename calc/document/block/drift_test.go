@@ -253,7 +253,7 @@ func TestDriftRefuses(t *testing.T) {
 		{"I_e differs", asce, []string{"C_d: 5", "limit: 0.02", "I_e: 1.5"}, "drift-input", 3},
 		{"q_d of another standard", asce, []string{"C_d: 5", "limit: 0.02", "q_d: 3"}, "drift-field", 3},
 		{"C_d of another standard", en, []string{"C_d: 5", "nu: 0.5", "finishes: none"}, "drift-field", 1},
-		{"no limit", asce, []string{"C_d: 5", "system: other"}, "missing-field", 2},
+		{"no limit", asce, []string{"C_d: 5", "system: other"}, "missing-field", 0},
 		{"no finishes", en, []string{"nu: 0.5"}, "missing-field", 0},
 		{"no nu", en, []string{"finishes: none"}, "missing-field", 0},
 		{"limit twice", asce, []string{"C_d: 5", "limit: 0.02", "system: other", "risk: I"}, "drift-field", 3},

@@ -71,7 +71,11 @@ func (b *periods) Run(r *Run) {
 		var err error
 		grid, err = spectrum.Grid(b.From.SI(), b.To.SI(), int(b.Count.SI()), b.Spacing.Text() == "linear", b.Include.Value.SI)
 		if err != nil {
-			r.Fail(b.To, "periods", "%s", err)
+			at := b.To
+			if b.From.SI() <= 0 {
+				at = b.From
+			}
+			r.Fail(at, "periods", "%s", err)
 			return
 		}
 	}

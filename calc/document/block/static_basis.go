@@ -40,7 +40,20 @@ func (b *static) basis(r *Run, s *lateral.Static, t *standard.Target) {
 		row("behaviour factor q", Cell(s.Q, pure), "target "+b.Target.Text())
 		of("T_C")
 	} else {
-		of("risk", "S_S", "S_1", "site", "F_a", "F_v", "S_DS", "S_D1", "T_L", "category")
+		of("risk")
+		if t.MultiPeriod { // whose ordinates hold the site
+			for _, symbol := range []string{"S_S", "F_a", "F_v"} {
+				if _, stated := t.Parameter(symbol); stated {
+					of(symbol)
+				} else {
+					row(symbol, exhibit.Cell{Text: "does not apply"}, "multi-period spectrum")
+				}
+			}
+			of("S_1", "site")
+		} else {
+			of("S_S", "S_1", "site", "F_a", "F_v")
+		}
+		of("S_DS", "S_D1", "T_L", "category")
 		row("I_e", Cell(s.Ie, pure), "Table 1.5-2")
 		stated("R", s.R, "this block")
 		stated("Omega_0", s.Omega0, "this block; forces are not multiplied by it")

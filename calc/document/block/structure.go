@@ -92,6 +92,33 @@ func (b *building) Run(r *Run) {
 		r.Caution(k)
 	}
 	b.results(r, model, given)
+	b.doubts(r, model)
+}
+
+// doubts warns of an order of levels and of masses that are likely slips.
+func (b *building) doubts(r *Run, m *structure.Model) {
+	at := func(i int, of func(s *storeyFields) field.Field) field.Field {
+		switch {
+		case b.byMatrices() && b.Levels.Given && len(b.Levels.List) == len(m.Levels):
+			return field.Field{At: b.Levels.List[i].At}
+		case !b.byMatrices() && b.Storeys[0].File.Given:
+			return b.Storeys[0].File
+		case !b.byMatrices():
+			return of(&b.Storeys[i])
+		}
+		return field.Field{At: r.Place}
+	}
+	if structure.Falling(m.Levels) {
+		r.WarnAt(at(0, func(s *storeyFields) field.Field { return s.Level }), "storey-order", "the levels run from %s to %s, and the lowest comes first: they look listed from the roof down", m.Levels[0], m.Levels[len(m.Levels)-1])
+	}
+	for _, i := range structure.Light(m.Mass) {
+		r.WarnAt(at(i, func(s *storeyFields) field.Field {
+			if s.Mass.Given {
+				return s.Mass
+			}
+			return s.Weight
+		}), "light-level", "the mass at level %s is below 2 %% of the usual one of the other levels: is its unit right?", m.Levels[i])
+	}
 }
 
 // fromStoreys is the shear building of the storeys; nil where they are at fault.

@@ -123,10 +123,15 @@ func (d *decoder) group(n Node, v reflect.Value) {
 	d.missing(n, all)
 }
 
+// meant is what other words for a field stand for, where a block has that field.
+var meant = map[string]string{"soil": "ground", "soil class": "ground", "ground type": "ground", "site class": "site", "risk category": "risk", "filter": "treat: bandpass"}
+
 // unknown reports a name that is none of the fields.
 func (d *decoder) unknown(name string, at diag.Range, fields []string) {
 	hint := "its fields are " + strings.Join(fields, ", ")
-	if near := diag.Nearest(name, fields); near != "" {
+	if other := meant[strings.ToLower(strings.ReplaceAll(name, "_", " "))]; slices.Contains(fields, strings.SplitN(other, ":", 2)[0]) {
+		hint = "write " + other
+	} else if near := diag.Nearest(name, fields); near != "" {
 		hint = "did you mean " + near + "?"
 	} else if name != "" && name[0] >= '0' && name[0] <= '9' {
 		hint = "a comma parts the fields; decimals have a point"

@@ -1,0 +1,28 @@
+package document
+
+import (
+	"quoin/calc/expr"
+	"quoin/calc/quantity"
+)
+
+// percentLimit warns of a ratio that is shown in per cent and held to a pure number
+// of 1 or more while it lies below a hundredth of it: drift_ratio <= 2, meant 2 %.
+func (n *node) percentLimit() {
+	if n.diags.HasErrors() || n.line.Tree.Op == expr.Within || len(n.line.Tree.Args) != 2 {
+		return
+	}
+	percent := quantity.MustUnit("%").Text
+	shown := false
+	for _, side := range n.line.Tree.Args {
+		shown = shown || side.Value != nil && side.Value.Unit.Text == percent
+	}
+	limits, demands := false, true
+	for _, r := range n.rows {
+		limits = limits || r.Limit >= 1
+		demands = demands && r.Dim.Is(quantity.None) && r.Demand < 0.01*r.Limit
+	}
+	if shown && limits && demands {
+		n.diags.Warnf("percent-limit", n.lineSpot(len("check "), len("check ")+len(n.line.Text)), "the ratio is shown in per cent and held to a limit without its sign, which it is far below").
+			WithHint("a limit of 2 %% is written  2 %%")
+	}
+}
