@@ -104,6 +104,7 @@ var Codes = []Code{
 	{"no-mass", "A freedom has no mass or a negative one, or the mass matrix is not positive definite.", "Give every level a mass; condense freedoms without one before the matrices are given."},
 	{"no-member", "A block has no value of that name with the fields it has.", "Choose one of the values that the hint lists."},
 	{"no-series", "A figure names a series that no block computes.", "Name it as BLOCK.WHAT, with @ and the damping where there are several: east_rs.PSA@5%."},
+	{"no-source", "Values that the package takes from outside do not say where they were taken from.", "Name the source: # [KEY] in the comment of a formula line, cite: [KEY] in a block, source in a record; KEY stands in a references block or is a published standard."},
 	{"no-theta", "A drift block has no vertical loads, so that stability is not evaluated and beta has no effect.", "Give the field P: the vertical load at and above each level, lowest first."},
 	{"no-value", "A block gives no such value with the fields it has, or its function has no value there.", "Read the reason in the message; give the field that the value comes from, or stay within the range."},
 	{"not-finite", "A number given is too large to compute with, or no number.", "Correct the number, or see whether its unit is right."},

@@ -20,6 +20,8 @@ type frontMatter struct {
 	Client    field.Field   `name:"client" is:"text" doc:"client or owner"`
 	Subject   field.Field   `name:"subject" is:"text" doc:"what is calculated, in a line"`
 	Location  field.Field   `name:"location" is:"text" doc:"place of the project"`
+	Authority field.Field   `name:"authority" is:"text" doc:"the authority having jurisdiction, for the cover"`
+	System    field.Field   `name:"system" is:"text" doc:"the system that resists lateral force, in words, for the criteria on the cover"`
 	Units     field.Field   `name:"units" is:"choice" of:"SI|US" default:"SI" doc:"the units results are shown in"`
 	Basis     field.Field   `name:"basis" is:"text" many:"yes" doc:"governing documents with edition"`
 	Prepared  signField     `name:"prepared" doc:"initials and date"`
@@ -105,7 +107,7 @@ func (s signField) sign(diags *diag.List) exhibit.Sign {
 func (f *frontMatter) meta(diags *diag.List) exhibit.Meta {
 	m := exhibit.Meta{
 		Title: f.Title.Text(), Number: f.Number.Text(), Project: f.Project.Text(), Client: f.Client.Text(),
-		Subject: f.Subject.Text(), Location: f.Location.Text(), Basis: f.Basis.Texts(),
+		Subject: f.Subject.Text(), Location: f.Location.Text(), Authority: f.Authority.Text(), System: f.System.Text(), Basis: f.Basis.Texts(),
 		Prepared: f.Prepared.sign(diags), Checked: f.Checked.sign(diags), Approved: f.Approved.sign(diags),
 		Status: f.Status.Text(), Paper: f.Paper.Text(),
 	}

@@ -5,6 +5,7 @@ import (
 
 	"quoin/calc/cite"
 	"quoin/calc/exhibit"
+	"quoin/calc/standard"
 )
 
 // references makes the register of references, in order of key: the published
@@ -40,6 +41,21 @@ func (a *assembly) references() {
 	}
 }
 
+// bases are the standards whose spectra the package uses, and the blocks of these.
+func (a *assembly) bases() (anchors, bases []string) {
+	for _, n := range a.nodes {
+		if t, ok := n.result.Made.(*standard.Target); ok && n.kind == blockNode {
+			if _, published := cite.Lookup(t.Basis); published {
+				anchors = append(anchors, n.anchor)
+				if !slices.Contains(bases, t.Basis) {
+					bases = append(bases, t.Basis)
+				}
+			}
+		}
+	}
+	return anchors, bases
+}
+
 // cautions makes the limitations section: the standing statements, then what
 // this calculation triggered, in the order of the list.
 func (a *assembly) cautions() {
@@ -59,9 +75,25 @@ func (a *assembly) cautions() {
 			by["open-assumption"] = append(by["open-assumption"], as.Anchor)
 		}
 	}
+	once := func(key, anchor string) {
+		if !slices.Contains(by[key], anchor) {
+			by[key] = append(by[key], anchor)
+		}
+	}
+	for _, c := range exhibit.Failed(a.p.Checks) {
+		once("not-met", c.Anchor)
+	}
+	for _, g := range a.p.Given {
+		if exhibit.Missing([]exhibit.Given{g}) > 0 {
+			once("sourceless", g.Anchor)
+		}
+	}
+	if anchors, bases := a.bases(); len(bases) > 1 {
+		by["mixed-editions"] = anchors
+	}
 	for _, c := range triggered {
 		if blocks, ok := by[c.key]; ok {
-			a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Text: c.text, Blocks: blocks})
+			a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Short: c.short, Text: c.text, Blocks: blocks})
 			delete(by, c.key)
 		}
 	}

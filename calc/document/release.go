@@ -34,12 +34,22 @@ var musts = []must{
 	{"purpose and scope, and conclusions, under headings of their own", headingsOpen},
 	{"a register of assumptions, none of them open", assumptionsOpen},
 	{"the inputs of every block are printed", echoOpen},
+	{"every input names its source", inputsOpen},
 	{"every check names the clause or reference of its criterion", checksOpen},
 	{"no value is overridden from outside", func(a *assembly, say sayer) {
 		for _, o := range a.options.Overrides {
 			say(a.front.Status.At, "the value of "+o.Name+" is overridden from outside the document", "write the value into the document")
 		}
 	}},
+}
+
+// Musts says in a few words what a package of status issued may not lack.
+func Musts() []string {
+	var out []string
+	for _, m := range musts {
+		out = append(out, m.What)
+	}
+	return out
 }
 
 // release reports all that is open in a package that says it is issued.

@@ -29,9 +29,9 @@ revisions:
 
 # Purpose and scope
 
-` + "```calc structure frame\nstoreys:\n  - {level: L1, height: 4 m, weight: 100 kN, stiffness: 10 MN/m}\n```\n\n" +
+` + "```calc structure frame\ncite: D\nstoreys:\n  - {level: L1, height: 4 m, weight: 100 kN, stiffness: 10 MN/m}\n```\n\n" +
 	"```calc assumptions\n- {id: A1, text: fixed base, status: verified, by: MK, when: 2031-03-02}\n```\n\n" +
-	"```calc formula\nV = 3 kN\ncheck V <= 4 kN  # [ASCE/SEI 7-22 12.8] limit\n```\n\n# **Conclusions**\n"
+	"```calc references\n- {key: D, text: drawings}\n```\n\n```calc formula\nV = 3 kN  # [D] load\ncheck V <= 4 kN  # [ASCE/SEI 7-22 12.8] limit\n```\n\n# **Conclusions**\n"
 
 // TestRelease: a package that lacks nothing is issued; with any one thing taken
 // away it is not, and says which; as a draft it may lack all of them.

@@ -216,7 +216,7 @@ func triggeredBy(p *exhibit.Package) map[string]string {
 func TestCautionsTriggered(t *testing.T) {
 	_, res := runKinds(t, Options{})
 	kinds := map[string]string{
-		"open-assumption": "b-reg", "linear": "b-frame b-same b-r b-rr b-ra b-elf", "reduced": "b-r b-elf", "static": "b-elf", "accidental-torsion": "b-elf", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
+		"open-assumption": "b-reg", "sourceless": "b-east b-filtered b-design b-read b-frame b-same b-r b-rr b-dr b-elf", "linear": "b-frame b-same b-r b-rr b-ra b-elf", "reduced": "b-r b-elf", "static": "b-elf", "accidental-torsion": "b-elf", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
 		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "processed": "b-filtered", "short-record": "b-rs",
 		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr",
 	}
@@ -239,7 +239,7 @@ func TestCautionsTriggered(t *testing.T) {
 		calc("modes few", "structure: s", "count: 1")+calc("modes most", "structure: s", "count: 2"),
 		map[string]string{"r.csv": sawtooth})
 	want := map[string]string{
-		"scaled": "b-up b-down", "demonstration": "b-made", "coarse-step": "b-coarse", "usable-period": "b-beyond", "unprocessed": "b-up b-down b-even b-made",
+		"sourceless": "b-s", "scaled": "b-up b-down", "demonstration": "b-made", "coarse-step": "b-coarse", "usable-period": "b-beyond", "unprocessed": "b-up b-down b-even b-made",
 		"few-motions": "b-coarse b-beyond b-inside", "damping": "b-coarse b-beyond b-inside", "linear": "b-s", "fixed-base": "b-s", "planar": "b-s", "second-order": "b-s", "mass-sum": "b-few",
 	}
 	if got := triggeredBy(p); !maps.Equal(got, want) {

@@ -29,26 +29,32 @@ type Package struct {
 	Notation    []Symbol     `json:"notation"`   // Latin letters, then Greek
 	References  []Reference  `json:"references"` // in order of key
 	Inputs      []Input      `json:"inputs"`     // files read, sorted by path, the main file first
-	Cautions    []Caution    `json:"cautions"`   // standing ones first, then the triggered
+	Criteria    []Criterion  `json:"criteria"`   // by group
+	Given       []Given      `json:"given"`      // what is taken from outside, in document order
+	Motions     []Motion     `json:"motions"`    // records, in document order
+	Software    Software     `json:"software"`
+	Cautions    []Caution    `json:"cautions"` // standing ones first, then the triggered
 	Footnotes   []Footnote   `json:"footnotes"`
 	Warnings    diag.List    `json:"warnings"`
 }
 
 // Meta is the front matter.
 type Meta struct {
-	Title    string     `json:"title"`
-	Number   string     `json:"number"`
-	Project  string     `json:"project"`
-	Client   string     `json:"client"`
-	Subject  string     `json:"subject"`
-	Location string     `json:"location"`
-	Basis    []string   `json:"basis"` // governing documents with edition
-	Prepared Sign       `json:"prepared"`
-	Checked  Sign       `json:"checked"`
-	Approved Sign       `json:"approved"`
-	Revision []Revision `json:"revisions"` // oldest first; the last is current
-	Status   string     `json:"status"`    // draft, for check, issued, superseded, void
-	Paper    string     `json:"paper"`     // A4 or Letter
+	Title     string     `json:"title"`
+	Number    string     `json:"number"`
+	Project   string     `json:"project"`
+	Client    string     `json:"client"`
+	Subject   string     `json:"subject"`
+	Location  string     `json:"location"`
+	Authority string     `json:"authority"` // having jurisdiction
+	System    string     `json:"system"`    // that resists lateral force, in words
+	Basis     []string   `json:"basis"`     // governing documents with edition
+	Prepared  Sign       `json:"prepared"`
+	Checked   Sign       `json:"checked"`
+	Approved  Sign       `json:"approved"`
+	Revision  []Revision `json:"revisions"` // oldest first; the last is current
+	Status    string     `json:"status"`    // draft, for check, issued, superseded, void
+	Paper     string     `json:"paper"`     // A4 or Letter
 }
 
 // Sign is a person's initials and a date as written in the front matter.
@@ -74,6 +80,14 @@ type Provenance struct {
 	CommitDate string     `json:"commit_date"` // ISO 8601 date, "" outside git
 	Dirty      bool       `json:"dirty"`       // the sources differ from the commit
 	Overrides  []Override `json:"overrides"`
+	Build      Build      `json:"build"`
+}
+
+// Build is how the program itself was made.
+type Build struct {
+	Language     string   `json:"language"`     // "go1.26.0"
+	Architecture string   `json:"architecture"` // "amd64"
+	Modules      []string `json:"modules"`      // "name version", sorted
 }
 
 // Override is a value set from outside the document.
@@ -340,6 +354,7 @@ type Input struct {
 // it; a standing one has none.
 type Caution struct {
 	Key    string   `json:"key"`
+	Short  string   `json:"short"` // in a few words, for the cover
 	Text   string   `json:"text"`
 	Blocks []string `json:"blocks"` // anchors
 }

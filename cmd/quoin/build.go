@@ -109,7 +109,7 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 		return document.Result{}, err
 	}
 	defer root.Close()
-	from := exhibit.Provenance{Tool: versionLine(), Source: src.main}
+	from := exhibit.Provenance{Tool: versionLine(), Source: src.main, Build: buildOf()}
 	from.Commit, from.CommitDate = commit(src.root)
 	o := document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun)}
 	if a.cache != nil {

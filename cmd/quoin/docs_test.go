@@ -21,7 +21,7 @@ import (
 // TestDocs holds the pages of the reference to the code; with -update they are
 // written anew.
 func TestDocs(t *testing.T) {
-	for name, want := range map[string]string{"blocks.md": referencePage(), "diagnostics.md": diagnosticsPage(t)} {
+	for name, want := range map[string]string{"blocks.md": referencePage(), "diagnostics.md": diagnosticsPage(t), "contents.md": contentsPage()} {
 		path := filepath.Join("docs", name)
 		if *update {
 			if err := os.WriteFile(path, []byte(want), 0o644); err != nil {

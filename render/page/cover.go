@@ -44,14 +44,15 @@ func (b *book) cover() []item {
 	status := strings.ToLower(strings.TrimSpace(m.Status))
 	v := coverView{Status: clip(strings.ToUpper(or(m.Status, "status not given")), 60), Title: clip(m.Title, titleChars), Subject: clip(m.Subject, titleChars),
 		Unsafe: status != "issued" && status != "for check", Rows: b.coverRows()}
-	high := 16.5 + 9.2*lines(v.Title, 38)
+	high := 14 + 9.2*lines(v.Title, 43)
 	if v.Subject != "" {
-		high += 6 * lines(v.Subject, 90)
+		high += 5.2 * lines(v.Subject, 96)
 	}
 	for _, r := range v.Rows {
 		high += r.high()
 	}
-	out := []item{{name: "cover", data: v, high: high, anchors: []string{"q-cover"}}, b.sign()}
+	out := []item{{name: "cover", data: v, high: high, anchors: []string{"q-cover"}}}
+	out = append(append(out, b.criteria()...), b.sign())
 	if it, ok := b.shortCaution(); ok {
 		out = append(out, it)
 	}
@@ -83,7 +84,7 @@ func (b *book) cover() []item {
 }
 
 func (r coverRow) high() float64 {
-	high := 1.9
+	high := 1.0
 	for _, l := range r.Lines {
 		chars := 78
 		if r.Digest {
@@ -93,10 +94,10 @@ func (r coverRow) high() float64 {
 		if r.Listed != "" {
 			text += strings.Repeat("sheet 12, ", 1+len(r.Anchors))
 		}
-		high += 5.05 * lines(text, chars)
+		high += 4.5 * lines(text, chars)
 	}
 	if r.Rest > 0 {
-		high += 5.05
+		high += 4.5
 	}
 	return high
 }
@@ -119,6 +120,7 @@ func (b *book) coverRows() []coverRow {
 	given("Project", or(m.Project, "not given"))
 	given("Client", m.Client)
 	given("Location", m.Location)
+	given("Authority", m.Authority)
 	basis := add("Governing basis")
 	for i, s := range m.Basis {
 		if i < listed {
@@ -139,6 +141,9 @@ func (b *book) coverRows() []coverRow {
 	}
 	given("Revision", revision)
 	given("Source", sourceText(b.p))
+	if values, open := b.inputTally(); values != "" {
+		add("Inputs", coverLine{Text: values, Open: open}).Listed = "q-inputs"
+	}
 	checks := checkTally(b.p)
 	row := add("Checks", coverLine{Text: strconv.Itoa(checks.OK) + " OK", Open: checks.Failed})
 	row.Rest, row.To = checks.Rest, "q-checks"
@@ -190,20 +195,34 @@ func (b *book) sign() item {
 	if v.SamePerson {
 		tall = max(tall, 2)
 	}
-	return item{name: "sign", data: v, high: 21.5 + 5*tall}
+	return item{name: "sign", data: v, high: 18.5 + 5*tall}
 }
 
-// shortCaution is what every reader must know; the rest stands at the end.
+// shortView is what every reader must know: a few statements, and what was
+// triggered in a few words, with the sheets. All stands in full at the end.
+type shortView struct {
+	Texts     []string
+	Triggered []exhibit.Caution
+}
+
+// shortCaution is the caution of the cover.
 func (b *book) shortCaution() (item, bool) {
-	var texts []string
-	high := 15.5
+	var v shortView
+	high, words := 13.5, ""
 	for _, c := range b.p.Cautions {
-		if c.Key == "demonstration" || len(c.Blocks) == 0 && len(texts) < 2 {
-			texts = append(texts, c.Text)
-			high += 0.7 + 5.05*lines(c.Text, 103)
+		switch {
+		case c.Key == "demonstration" || len(c.Blocks) == 0 && len(v.Texts) < 2:
+			v.Texts = append(v.Texts, c.Text)
+			high += 0.7 + 4.7*lines(c.Text, 103)
+		case len(c.Blocks) > 0 && c.Short != "":
+			v.Triggered = append(v.Triggered, c)
+			words += c.Short + " (" + strings.Repeat("12, ", len(c.Blocks)) + "); "
 		}
 	}
-	return item{name: "short-caution", data: texts, high: high}, len(texts) > 0
+	if words != "" {
+		high += 0.7 + 4.7*lines("From what was used, by sheet: "+words, 103)
+	}
+	return item{name: "short-caution", data: v, high: high}, len(v.Texts)+len(v.Triggered) > 0
 }
 
 // grouped sets a digest in groups of four.

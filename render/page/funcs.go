@@ -37,6 +37,7 @@ func (b *book) funcs() template.FuncMap {
 		"checked":   checkedText,
 		"words":     wordsOf,
 		"worded":    b.worded,
+		"evidenced": evidenced,
 		"person":    personText,
 		"align": func(a string) string {
 			return map[string]string{"right": "r", "center": "c"}[a]

@@ -95,15 +95,9 @@ func (b *book) registers() (out []item, toc []entry) {
 		refs = append(refs, item{name: "reference", data: v, high: 2 + 5*lines(r.Key+r.Text+strings.Join(r.Clauses, "; ")+"from memory, confirm", 85), anchors: []string{v.ID}})
 	}
 	add("q-references", "References", refs)
-	add("q-inputs", "Inputs", chunked("inputs", headRow, p.Inputs, func(i exhibit.Input) float64 { return 9.2 * lines(i.Path, 30) }, nil))
-	software := struct {
-		Tool, Units     string
-		Digits, Longest int
-	}{or(p.Provenance.Tool, "not named"), "Shown in SI units unless written otherwise", quantity.Digits, longest}
-	if p.System == quantity.US {
-		software.Units = "Shown in US customary units unless written otherwise"
-	}
-	add("q-software", "Software", []item{{name: "software", data: software, high: 102}})
+	add("q-inputs", "Inputs", b.inputs())
+	add("q-records", "Records used", b.motions())
+	add("q-software", "Software", b.software())
 	add("q-cautions", "Limitations and caution", b.cautions())
 	return out, toc
 }

@@ -103,6 +103,7 @@ func (b *combine) Run(r *Run) {
 		}
 	}
 	r.Made = c
+	b.criteria(r, c)
 	b.results(r, c, in)
 	b.unraised(r, c)
 	b.unscaled(r, c)

@@ -132,6 +132,7 @@ func (b *drift) Run(r *Run) {
 		r.WarnAt(b.Beta, "no-theta", "beta belongs to the limit of the stability coefficient, which is not evaluated without P: it has no effect")
 	}
 	r.Made = d
+	b.criteria(r, a, d)
 	b.results(r, a, d)
 }
 

@@ -28,7 +28,7 @@ func (r *Run) EchoFields(body Body) {
 			if unit.Text == "" {
 				unit = s.Unit(sys)
 			}
-			given := literal(f)
+			given := Literal(f)
 			for _, x := range f.Value.SI {
 				n := exhibit.Number{Value: x, Unit: unit, Digits: min(quantity.Digits, quantity.Exact(unit.From(x)))}
 				if given {
@@ -47,8 +47,8 @@ func (r *Run) EchoFields(body Body) {
 // symbolic tells whether a field is named by a symbol of its standard: S_DS, R, I_e.
 func symbolic(name string) bool { return name[0] >= 'A' && name[0] <= 'Z' }
 
-// literal tells whether a field is a plain number with a unit, or a list of such.
-func literal(f *field.Field) bool {
+// Literal tells whether a field is a plain number with a unit, or a list of such.
+func Literal(f *field.Field) bool {
 	if f.Tree != nil {
 		return f.Tree.Op == expr.Literal
 	}

@@ -58,15 +58,19 @@ type record struct {
 	Length    field.Field `name:"duration" is:"time" must:"positive" doc:"duration of the form"`
 	Rise      field.Field `name:"rise" is:"time" must:"positive" doc:"time in which a ramp rises"`
 
-	Event     field.Field `name:"event" is:"text" doc:"event that was recorded"`
-	Station   field.Field `name:"station" is:"text" doc:"station"`
-	Magnitude field.Field `name:"magnitude" is:"text" doc:"magnitude and its type"`
-	Distance  field.Field `name:"distance" is:"length" show:"km|km" must:"not-negative" doc:"distance to the source"`
-	Vs30      field.Field `name:"vs30" is:"velocity" show:"m/s|ft/s" label:"Vs30" must:"positive" doc:"mean shear-wave velocity of the upper 30 m at the station"`
-	Component field.Field `name:"component" is:"text" doc:"component of the motion"`
-	Azimuth   field.Field `name:"azimuth" is:"number" show:"deg" doc:"azimuth of the component, clockwise from north"`
-	Source    field.Field `name:"source" is:"text" doc:"where the record was obtained, when, and under which terms"`
-	Usable    field.Field `name:"usable_period" is:"time" must:"positive" label:"longest usable period" doc:"longest period at which the record is reliable"`
+	Event      field.Field `name:"event" is:"text" doc:"event that was recorded"`
+	Station    field.Field `name:"station" is:"text" doc:"station"`
+	Date       field.Field `name:"date" is:"text" doc:"date of the event"`
+	Mechanism  field.Field `name:"mechanism" is:"text" doc:"mechanism of the event: strike-slip, reverse, normal, ..."`
+	Magnitude  field.Field `name:"magnitude" is:"text" doc:"magnitude and its type"`
+	Distance   field.Field `name:"distance" is:"length" show:"km|km" must:"not-negative" doc:"distance to the source"`
+	DistanceIs field.Field `name:"distance_is" is:"choice" of:"Rrup|Rjb|Repi|Rhyp" label:"distance is" doc:"what the distance is measured to: the rupture, its surface projection, the epicentre or the hypocentre"`
+	Vs30       field.Field `name:"vs30" is:"velocity" show:"m/s|ft/s" label:"Vs30" must:"positive" doc:"mean shear-wave velocity of the upper 30 m at the station"`
+	Vs30Is     field.Field `name:"vs30_is" is:"choice" of:"measured|inferred" label:"Vs30 is" doc:"whether vs30 was measured at the station or inferred"`
+	Component  field.Field `name:"component" is:"text" doc:"component of the motion"`
+	Azimuth    field.Field `name:"azimuth" is:"number" show:"deg" doc:"azimuth of the component, clockwise from north"`
+	Source     field.Field `name:"source" is:"text" doc:"where the record was obtained, when, and under which terms"`
+	Usable     field.Field `name:"usable_period" is:"time" must:"positive" label:"longest usable period" doc:"longest period at which the record is reliable"`
 }
 
 // Check sees that a file's and a form's fields are not mixed.
@@ -101,6 +105,7 @@ func (b *record) Run(r *Run) {
 	if rec == nil {
 		return
 	}
+	asRead := rec
 	if rec = b.cut(r, rec); rec == nil {
 		return
 	}
@@ -134,7 +139,7 @@ func (b *record) Run(r *Run) {
 		return
 	}
 	r.Made = rec
-	b.results(r, rec)
+	b.results(r, asRead, rec)
 }
 
 // read takes the record from its file.
@@ -255,9 +260,10 @@ func (b *record) cut(r *Run, rec *motion.Record) *motion.Record {
 	return out
 }
 
-func (b *record) results(r *Run, rec *motion.Record) {
+func (b *record) results(r *Run, asRead, rec *motion.Record) {
 	u := unitsOf(r.System())
 	m := motion.Measure(rec)
+	b.motion(r, asRead, rec, m)
 	housner, err := spectrum.Housner(rec, 0.05)
 	if err != nil {
 		r.Fail(b.File, "record", "%s", err)

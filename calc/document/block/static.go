@@ -108,6 +108,7 @@ func (b *static) Run(r *Run) {
 	}
 	r.Made = s
 	b.export(r, s)
+	b.criteria(r, s)
 	for _, key := range []string{"static", "accidental-torsion", "linear", "reduced"} {
 		r.Caution(key)
 	}

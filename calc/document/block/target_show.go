@@ -14,6 +14,10 @@ import (
 
 func (b *target) results(r *Run, t *standard.Target, at places) {
 	r.Made = t
+	b.criteria(r, t)
+	if t.Basis == "ASCE/SEI 7-16" || t.Basis == "EN 1998-1:2004" {
+		r.Caution("earlier-edition")
+	}
 	std, _ := standard.Lookup(t.Basis)
 	for _, p := range t.Parameters {
 		if p.Text == "" && p.Symbol != "damping" {
