@@ -31,7 +31,7 @@ func TestPrint(t *testing.T) {
 	t.Run("letter", func(t *testing.T) {
 		dir := t.TempDir()
 		file := filepath.Join(dir, "p.md")
-		if err := os.WriteFile(file, []byte("---\nquoin: 1\ntitle: On Letter\npaper: Letter\n---\n\n# One\n\n```calc formula\nV = 3 kN\ncheck V <= 4 kN\n```\n"), 0o644); err != nil {
+		if err := os.WriteFile(file, []byte("---\nquoin: 1\ntitle: On Letter\npaper: Letter\n---\n\n# One\n\n```calc formula\nV = 3 kN  # [ASCE/SEI 7-22 12.8] force\ncheck V <= 4 kN\n```\n"), 0o644); err != nil {
 			t.Fatal(err)
 		}
 		page := pageOf(t, file, dir)
@@ -120,7 +120,7 @@ func isPaper(t *testing.T, pdf, size string) {
 var (
 	sheetStart = regexp.MustCompile(`<section class="sheet[^"]*" id="sheet-\d+"`)
 	captionOf  = regexp.MustCompile(`<b>((?:Figure|Table) \d+)</b>`)
-	numberOf   = regexp.MustCompile(`<span class="eqno"[^>]*>\s*(\([^<]+\))`)
+	numberOf   = regexp.MustCompile(`<(?:span|a) class="eqno"[^>]*>\s*(\([^<]+\))`)
 	markup     = regexp.MustCompile(`<[^>]*>`)
 )
 
