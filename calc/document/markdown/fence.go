@@ -58,6 +58,10 @@ func (c *converter) fence(n *ast.FencedCodeBlock) []Piece {
 		seg := n.Lines().At(i)
 		line, column := c.place(seg.Start)
 		text := strings.TrimSuffix(string(seg.Value(c.text)), "\n")
+		if open := split(strings.TrimSpace(text)); strings.HasPrefix(strings.TrimSpace(text), "```") && len(open) > 1 && open[0].text == "```calc" {
+			c.list.Errorf("open-fence", place, "this block is not closed: the next one begins in line %d", line).WithHint("end it with three back quotes on a line of their own")
+			return nil
+		}
 		f.Body = append(f.Body, Line{Text: text, Line: line, Column: max(1, column-seg.Padding)})
 	}
 	c.file.Fences = append(c.file.Fences, f)
