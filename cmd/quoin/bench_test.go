@@ -5,6 +5,7 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"regexp"
 	"strings"
 	"testing"
 )
@@ -60,4 +61,61 @@ func BenchmarkBuildUnchanged(b *testing.B) {
 	for b.Loop() {
 		built(b, example, "-o", out)
 	}
+}
+
+// BenchmarkHeavyCold builds the large package with an empty cache.
+func BenchmarkHeavyCold(b *testing.B) {
+	file := heavy(b, b.TempDir())
+	out := filepath.Join(b.TempDir(), "out")
+	for b.Loop() {
+		b.Setenv("QUOIN_CACHE", b.TempDir())
+		built(b, file, "-o", out)
+	}
+	weigh(b, out)
+}
+
+// BenchmarkHeavyChanged builds it with one chart changed each time.
+func BenchmarkHeavyChanged(b *testing.B) {
+	b.Setenv("QUOIN_CACHE", b.TempDir())
+	file := heavy(b, b.TempDir())
+	out := filepath.Join(filepath.Dir(file), "out")
+	text, err := os.ReadFile(file)
+	if err != nil {
+		b.Fatal(err)
+	}
+	end := regexp.MustCompile(`(?m)^to: 4 s$`).FindIndex(text)
+	if end == nil {
+		b.Fatal("no chart to change")
+	}
+	built(b, file, "-o", out)
+	for i := 0; b.Loop(); i++ {
+		changed := fmt.Sprintf("%sto: 3.%03d s%s", text[:end[0]], 1+i%999, text[end[1]:])
+		if err := os.WriteFile(file, []byte(changed), 0o644); err != nil {
+			b.Fatal(err)
+		}
+		built(b, file, "-o", out)
+	}
+	weigh(b, out)
+}
+
+// BenchmarkHeavyUnchanged builds it again, nothing changed.
+func BenchmarkHeavyUnchanged(b *testing.B) {
+	b.Setenv("QUOIN_CACHE", b.TempDir())
+	file := heavy(b, b.TempDir())
+	out := filepath.Join(b.TempDir(), "out")
+	built(b, file, "-o", out)
+	for b.Loop() {
+		built(b, file, "-o", out)
+	}
+	weigh(b, out)
+}
+
+// weigh reports the bytes of the page.
+func weigh(b *testing.B, out string) {
+	b.Helper()
+	info, err := os.Stat(filepath.Join(out, "index.html"))
+	if err != nil {
+		b.Fatal(err)
+	}
+	b.ReportMetric(float64(info.Size()), "page-bytes")
 }

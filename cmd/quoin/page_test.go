@@ -267,7 +267,7 @@ func (s *sight) holds(t *testing.T) {
 		}
 	}
 	for i, f := range o.Early {
-		if f.Started && f.Below > 600 {
+		if f.Started && f.Below > 0 {
 			t.Errorf("%s starts %g px below the window", f.ID, f.Below)
 		}
 		if !o.Late[i].Started {

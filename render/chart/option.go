@@ -31,12 +31,14 @@ func Option(f exhibit.Figure) (option []byte, height int, err error) {
 	if err := check(f); err != nil {
 		return nil, 0, err
 	}
+	whole := f
 	f = drawable(f)
 	panels := measure(f)
 	v := &visitor{pointer: "x", beside: f.Beside, fixed: slices.ContainsFunc(panels, func(p *panel) bool { return len(p.Diagonals) > 0 }), curves: []curve{}, headings: []heading{}}
 	if panels[0].profile {
 		v.pointer = "y"
 	}
+	v.thinned = thinned(whole, f)
 	height = layout(f, panels, v)
 	for _, p := range panels {
 		v.curves = append(v.curves, p.curves()...)

@@ -121,7 +121,7 @@ func (p *panel) curve(i int, s exhibit.FigSerie) curve {
 	pen := penOf(s)
 	c := p.base(types.ChartLine, p.id("s", i), pen.z)
 	c.Name = clean(s.Label)
-	c.Data = p.data(s)
+	c.Data = pack(p.data(s), p.x.log, p.y.log)
 	c.Symbol, c.ShowSymbol = "none", off()
 	if s.Dots {
 		c.Symbol, c.SymbolSize, c.ShowSymbol = "circle", 6, on()

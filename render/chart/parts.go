@@ -180,6 +180,7 @@ type visitor struct {
 	legend   any
 	beside   bool
 	fixed    bool   // log axes that stay so
+	thinned  bool   // of a curve not all points stand in the option
 	pointer  string // the axis that the pointer runs along
 }
 
@@ -220,6 +221,9 @@ func (v *visitor) Visit(option map[string]any) {
 	option["axisPointer"] = map[string]any{"link": link}
 	if v.fixed {
 		option["fixed"] = true
+	}
+	if v.thinned {
+		option["thinned"] = true
 	}
 	if v.beside {
 		option["beside"] = true

@@ -57,7 +57,7 @@ func picture(f exhibit.Figure, option []byte, height int, prefix string, width i
 	body = inTag.ReplaceAllStringFunc(body, func(t string) string {
 		return strings.ReplaceAll(fonts.ReplaceAllString(t, ""), ` style=""`, "")
 	})
-	body = unseen.ReplaceAllString(body, "")
+	body = lean(unseen.ReplaceAllString(body, ""))
 	title := clean(f.Caption)
 	if title == "" {
 		title = clean(f.Alt)

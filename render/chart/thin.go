@@ -46,6 +46,18 @@ func drawable(f exhibit.Figure) exhibit.Figure {
 	return f
 }
 
+// thinned tells whether a curve of a figure lost points on its way to what is drawn.
+func thinned(whole, drawn exhibit.Figure) bool {
+	for i, p := range whole.Panels {
+		for k, s := range p.Series {
+			if len(drawn.Panels[i].Series[k].X) < len(s.X) {
+				return true
+			}
+		}
+	}
+	return false
+}
+
 // clip shortens a name from its middle: names that belong together often differ at
 // their ends.
 func clip(s string) string {

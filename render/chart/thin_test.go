@@ -3,10 +3,13 @@ package chart
 import (
 	"encoding/json"
 	"math"
+	"math/rand/v2"
 	"slices"
 	"strings"
 	"testing"
 	"unicode/utf8"
+
+	"pgregory.net/rapid"
 
 	"quoin/calc/exhibit"
 	"quoin/calc/quantity"
@@ -129,15 +132,19 @@ func TestOptionOfALongRecord(t *testing.T) {
 		t.Fatalf("%d bytes, %v", len(data), err)
 	}
 	var o struct {
-		XAxis  []struct{ Min, Max float64 }
-		YAxis  []struct{ Min, Max float64 }
-		Series []struct {
+		Thinned bool
+		XAxis   []struct{ Min, Max float64 }
+		YAxis   []struct{ Min, Max float64 }
+		Series  []struct {
 			ID   string
-			Data []any
+			Data json.RawMessage
 		}
 	}
 	if err := json.Unmarshal(data, &o); err != nil {
 		t.Fatal(err)
+	}
+	if !o.Thinned {
+		t.Error("it is not said that points are left out")
 	}
 	if o.XAxis[0].Max != x[len(x)-1] || o.YAxis[0].Min > -9 {
 		t.Errorf("limits %+v %+v", o.XAxis, o.YAxis)
@@ -145,9 +152,13 @@ func TestOptionOfALongRecord(t *testing.T) {
 	found := false
 	for _, s := range o.Series {
 		if s.ID == "s0.0" {
-			for _, d := range s.Data {
-				q := d.([]any)
-				found = found || q[0].(float64) == 1500 && q[1].(float64) == -9
+			var p packedData
+			if err := json.Unmarshal(s.Data, &p); err != nil {
+				t.Fatal(err)
+			}
+			x, y := p.X.read(t, p.N), p.Y.read(t, p.N)
+			for i := range x {
+				found = found || x[i] == 1500.01 && y[i] == -9
 			}
 		}
 	}
@@ -206,4 +217,44 @@ func longestText(t *testing.T, v any) {
 			longestText(t, e)
 		}
 	}
+}
+
+// TestThinProperty: what is kept of any curve are points of it in its order, with both
+// ends; and beside every point that is left out, less than a column away, stand kept
+// ones that are no lower and no higher: drawn, the line covers the same.
+func TestThinProperty(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		n := rapid.IntRange(crowded+1, 3*crowded).Draw(t, "n")
+		random := rand.New(rand.NewPCG(rapid.Uint64().Draw(t, "seed"), 1))
+		walk, gap := rapid.Float64Range(0, 1).Draw(t, "walk"), rapid.Float64Range(0, 1).Draw(t, "gap")
+		log := rapid.Bool().Draw(t, "log x")
+		x, y := make([]float64, n), make([]float64, n)
+		for i := range x {
+			y[i] = random.NormFloat64()
+			x[i] = 0.01
+			if i > 0 {
+				y[i] += walk * y[i-1]
+				x[i] = x[i-1] + 0.01*(1-gap*random.Float64())
+			}
+		}
+		axis := exhibit.Axis{Log: log}
+		s := thin(exhibit.Panel{X: axis}, exhibit.FigSerie{X: x, Y: y})
+		column := columnOf(x, axis)
+		kept := make([][]float64, columns) // values by column
+		k := 0
+		for i := range x {
+			if k < len(s.X) && s.X[k] == x[i] && s.Y[k] == y[i] {
+				kept[column(i)] = append(kept[column(i)], y[i])
+				k++
+			}
+		}
+		if k != len(s.X) || s.X[0] != x[0] || s.X[k-1] != x[n-1] || k > 4*columns {
+			t.Fatalf("%d points of %d kept, %d of them in order", len(s.X), n, k)
+		}
+		for i := range x {
+			if c := kept[column(i)]; len(c) == 0 || y[i] < slices.Min(c) || y[i] > slices.Max(c) {
+				t.Fatalf("point %d, %v, is beyond what is kept of its column: %v", i, y[i], c)
+			}
+		}
+	})
 }

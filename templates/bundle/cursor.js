@@ -40,7 +40,7 @@ export class Cursor {
     const places = []
     for (const s of list(this.live.drawn.series)) {
       if (s.id[0] !== 's' || this.live.off.has(s.name)) continue
-      for (const p of s.data) if (p[k] >= lo && p[k] <= hi) places.push(p[k])
+      for (let i = k; i < s.data.length; i += 2) if (s.data[i] >= lo && s.data[i] <= hi) places.push(s.data[i])
     }
     if (!places.length) return
     places.sort((a, b) => a - b)

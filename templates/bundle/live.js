@@ -2,6 +2,7 @@
 // off, logarithmic or linear axes; all of it also from the keyboard.
 import { echarts } from './charts.js'
 import { Cursor } from './cursor.js'
+import { unpack } from './packed.js'
 import { mark, prepare, setTooltip } from './prepare.js'
 import { data, picture, save } from './save.js'
 import { tooltip } from './tip.js'
@@ -20,7 +21,7 @@ export class Live {
     this.twin = figure.querySelector('.twin')
     this.live = figure.querySelector('.live')
     this.text = figure.querySelector('script[type="application/json"]').textContent
-    const option = JSON.parse(this.text)
+    const option = this.option()
     this.linear = false
     this.off = new Set()
     this.zoom = [0, 100]
@@ -40,7 +41,7 @@ export class Live {
     this.twin.hidden = true
     this.cursor = new Cursor(this)
     this.controls(option)
-    this.keys(list(option.dataZoom).length > 0)
+    this.keys(list(option.dataZoom).length > 0, option.thinned)
 
     this.chart.on('datazoom', () => this.zoomed())
     new ResizeObserver(() => {
@@ -51,6 +52,11 @@ export class Live {
     }).observe(this.live)
   }
 
+  // option is the option as it is written, its points to work with.
+  option() {
+    return unpack(JSON.parse(this.text))
+  }
+
   // paper shows the static picture instead of the chart, for printing.
   paper(on) {
     this.twin.hidden = !on
@@ -59,7 +65,7 @@ export class Live {
 
   // draw makes the whole drawing from the option and the state.
   draw() {
-    const option = JSON.parse(this.text)
+    const option = this.option()
     if (this.linear) {
       for (const axis of this.switched(option)) {
         axis.type = 'value'
@@ -166,11 +172,12 @@ export class Live {
     const row = this.fold(button, 'save', 'Keep this figure as a file')
     const name = this.name
     button('picture, svg', 'The figure as it is printed, with its fonts', () => save(name + '.svg', 'image/svg+xml', picture(this.twin)), row)
-    button('values, csv', 'The values as they are drawn here, to 5 digits', () => save(name + '-drawn.csv', 'text/csv', data(JSON.parse(this.text))), row)
+    const kept = option.thinned ? 'The values that are kept here: of a long curve the extremes of each stretch; all are in the csv beside the figure' : 'The values as they are drawn here, to 6 digits of the largest'
+    button('values, csv', kept, () => save(name + '-drawn.csv', 'text/csv', data(this.option())), row)
   }
 
   // keys makes the chart answer to keys: they read values, and zoom where the chart does.
-  keys(zooms) {
+  keys(zooms, thinned) {
     const move = (by) => () => this.cursor.step(by)
     const acts = { ArrowLeft: move(-1), ArrowRight: move(1), ArrowDown: move(-1), ArrowUp: move(1), Home: move(-Infinity), End: move(Infinity), Escape: () => this.cursor.leave() }
     if (this.drawn.tooltip.axisPointer.axis === 'y') delete acts.ArrowLeft, delete acts.ArrowRight
@@ -184,7 +191,7 @@ export class Live {
     hint.className = 'hint'
     hint.id = 'keys-' + ++hints
     const arrows = acts.ArrowUp ? '\u2191 \u2193' : '\u2190 \u2192'
-    hint.textContent = `${arrows} read the values` + (zooms ? ' \u00b7 shift and \u2190 \u2192 move \u00b7 + \u2212 zoom \u00b7 0 shows all' : '') + ' \u00b7 Esc ends'
+    hint.textContent = `${arrows} read the values` + (zooms ? ' \u00b7 shift and \u2190 \u2192 move \u00b7 + \u2212 zoom \u00b7 0 shows all' : '') + ' \u00b7 Esc ends' + (thinned ? ' \u00b7 a long curve is kept here by the extremes of each stretch, all its values in the csv' : '')
     this.live.after(hint)
     this.live.setAttribute('aria-describedby', hint.id)
     this.live.addEventListener('keydown', (e) => {

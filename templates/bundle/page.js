@@ -1,5 +1,5 @@
 // The page's script. Each figure carries a static picture and, beside it, the chart
-// option; a figure that comes near the window becomes a chart to work with. On paper
+// option; a figure that is seen becomes a chart to work with. On paper
 // the static pictures stand. Without this script nothing is missing but the working.
 import { Live } from './live.js'
 import './trail.js'
@@ -20,22 +20,28 @@ function start(figure) {
   }
 }
 
-const near = new IntersectionObserver(
-  (entries) => {
-    for (const e of entries) {
-      if (!e.isIntersecting) continue
-      near.unobserve(e.target)
-      start(e.target)
-    }
-  },
-  { rootMargin: '400px 0px' },
-)
+// One chart a frame; a figure that is out of sight again before its turn waits until it is seen once more.
+const seen = new Set()
+let turn = 0
+const next = () => {
+  const [figure] = seen
+  if (figure) {
+    seen.delete(figure)
+    watch.unobserve(figure)
+    start(figure)
+  }
+  turn = seen.size && requestAnimationFrame(next)
+}
+const watch = new IntersectionObserver((entries) => {
+  for (const e of entries) e.isIntersecting ? seen.add(e.target) : seen.delete(e.target)
+  turn ||= seen.size && requestAnimationFrame(next)
+})
 let block = 0
 for (const e of document.querySelectorAll('.bh:not(.again), figure[data-chart]')) {
   if (e.matches('.bh')) block++
   else {
     e.dataset.block = block // whose charts point together
-    near.observe(e)
+    watch.observe(e)
   }
 }
 

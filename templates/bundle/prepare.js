@@ -75,8 +75,8 @@ function turn(series, x, y, grids) {
 function straighten(series, x, y) {
   const logs = [x.type === 'log', y.type === 'log']
   if (!logs[0] && !logs[1]) return
-  const turn = (p) => p.map((v, i) => (logs[i] ? Math.log10(v) : v))
-  series.data = series.data.map((d) => (Array.isArray(d) ? turn(d) : Object.assign(d, { value: turn(d.value) })))
+  const turn = (v, i) => (logs[i % 2] ? Math.log10(v) : v)
+  series.data = series.data.map(ArrayBuffer.isView(series.data) ? turn : (d) => Object.assign(d, { value: d.value.map(turn) }))
 }
 
 // mark puts ticks on an axis px long, of which the window [from, to] is seen.
@@ -157,7 +157,7 @@ function resolve(node, option) {
         const make = v.startsWith('fn:') && registry[v.slice(3)]
         if (make) node[key] = make(option)
         else delete node[key]
-      } else if (key !== 'data' || (v.length && !Array.isArray(v[0]))) resolve(v, option)
+      } else if (!ArrayBuffer.isView(v)) resolve(v, option)
     }
   }
 }

@@ -1,11 +1,12 @@
 // What runs without a browser: pictures from chart options, MathML from TeX.
 import temml from 'temml'
 import { echarts } from './charts.js'
+import { unpack } from './packed.js'
 import { prepare } from './prepare.js'
 
 // svg draws an option (JSON text) and gives the SVG text.
 globalThis.svg = function (json, width, height) {
-  const option = prepare(JSON.parse(json), width)
+  const option = prepare(unpack(JSON.parse(json)), width)
   delete option.tooltip
   delete option.dataZoom
   delete option.axisPointer

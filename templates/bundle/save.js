@@ -1,5 +1,6 @@
 // What a reader keeps of a figure: the static picture as a file of its own, and the
 // values that are drawn.
+import { pairs } from './packed.js'
 
 // picture is the static picture with the faces that it is written in.
 export function picture(twin) {
@@ -34,7 +35,7 @@ export function data(option) {
     if (s.id[0] !== 's') continue
     const axes = [list(option.xAxis)[s.xAxisIndex || 0], list(option.yAxis)[s.yAxisIndex || 0]]
     const panel = option.grid.length > 1 && option.title.find((t) => t.panel === (axes[0].gridIndex || 0) && t.textStyle.fontWeight > 400)
-    axes.forEach((axis, i) => columns.push([head(panel && panel.text, s.name, axis.label)(axis.unit), ...s.data.map((p) => String(p[i]))]))
+    axes.forEach((axis, i) => columns.push([head(panel && panel.text, s.name, axis.label)(axis.unit), ...pairs(s.data).map((p) => String(p[i]))]))
   }
   const rows = Math.max(...columns.map((c) => c.length))
   let text = ''

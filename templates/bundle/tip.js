@@ -1,5 +1,6 @@
 // The values at the pointer: the running value above, one row a curve below. Made of
 // elements, so that a name is never read as markup.
+import { count } from './packed.js'
 import { number } from './ticks.js'
 
 const element = (name, text, style) => {
@@ -29,9 +30,13 @@ function swatch(style) {
 // between is the value of a curve between two of its points, as drawn; undefined
 // where it has none, or runs back and forth.
 function between(data, along, v) {
-  const i = data.findIndex((p) => p[along] >= v)
-  if (i < 1 || data.some((p, k) => k > 0 && p[along] <= data[k - 1][along])) return undefined
-  const [a, b] = [data[i - 1], data[i]]
+  let i = -1
+  for (let k = 0; k < count(data); k++) {
+    if (k > 0 && data[2 * k + along] <= data[2 * k - 2 + along]) return undefined
+    if (i < 0 && data[2 * k + along] >= v) i = k
+  }
+  if (i < 1) return undefined
+  const [a, b] = [i - 1, i].map((k) => [data[2 * k], data[2 * k + 1]])
   const share = (v - a[along]) / (b[along] - a[along])
   const other = 1 - along
   const p = []
@@ -40,27 +45,39 @@ function between(data, along, v) {
   return p
 }
 
+// own is the points of a curve at a place; where it jumps there are two. A stroke
+// across, as a weight drawn from zero, says its end.
+function own(data, along, at) {
+  const out = []
+  const across = count(data) === 2 && data[along] === data[2 + along]
+  for (let i = across ? 2 : 0; i < data.length; i += 2) if (data[i + along] === at) out.push([data[i], data[i + 1]])
+  return out
+}
+
+// nearest is the place of a point of the curves that lies nearest.
+function nearest(curves, along, v) {
+  let at
+  for (const s of curves) {
+    for (let i = along; i < s.data.length; i += 2) if (at === undefined || Math.abs(s.data[i] - v) < Math.abs(at - v)) at = s.data[i]
+  }
+  return at
+}
+
 export function tooltip(params, option) {
   const along = option.tooltip.axisPointer.axis === 'y' ? 1 : 0 // which of x, y runs
-  const points = new Map() // at the pointer, by curve; a curve that jumps here has two
-  for (const p of Array.isArray(params) ? params : [params]) {
-    if (p.seriesId[0] === 's') points.set(p.seriesId, [...(points.get(p.seriesId) || []), p.value])
-  }
-  if (!points.size) return ''
-  // A stroke across, as a weight drawn from zero, says its end.
-  for (const s of option.series) {
-    if (points.has(s.id) && s.data.length === 2 && s.data[0][along] === s.data[1][along]) points.set(s.id, [s.data[1]])
-  }
+  const hit = Array.isArray(params) ? params : [params]
   const axisOf = (s, i) => (i ? option.yAxis[s.yAxisIndex || 0] : option.xAxis[s.xAxisIndex || 0])
   const read = (s, p, i) => (axisOf(s, i).log ? Math.pow(10, p[i]) : p[i])
   const curves = option.series.filter((s) => s.id[0] === 's' && option.legend?.selected?.[s.name] !== false)
-  const first = curves.find((s) => points.has(s.id))
+  if (!hit.length || !curves.length) return ''
+  // Of a long curve the chart draws, and finds, only some points: what it says is read from all of them.
+  const at = (hit.find((p) => p.seriesId[0] === 's') || { value: [] }).value[along] ?? nearest(curves, along, hit[0].value[along])
+  const first = curves.find((s) => own(s.data, along, at).length)
   if (!first) return ''
-  const at = points.get(first.id)[0][along]
   // A curve without a point just here is read off between its neighbours.
   const row = (s) => {
-    const own = points.get(s.id)
-    if (own) return { s, text: [...new Set(own.map((p) => number(read(s, p, 1 - along), 4)))].join(' / ') }
+    const points = own(s.data, along, at)
+    if (points.length) return { s, text: [...new Set(points.map((p) => number(read(s, p, 1 - along), 4)))].join(' / ') }
     const p = s.name && between(s.data, along, at)
     return p && { s, text: '\u2248\u2009' + number(read(s, p, 1 - along), 3) }
   }
@@ -79,7 +96,7 @@ export function tooltip(params, option) {
 
   const box = element('div')
   const axis = axisOf(first, along)
-  const v = read(first, points.get(first.id)[0], along)
+  const v = axisOf(first, along).log ? Math.pow(10, at) : at
   const word = (axis.names || []).find(([at]) => Math.abs(at - v) < 1e-6 * (axis.max - axis.min))
   const head = `${axis.label || ''} ${word ? word[1] : quantity(v, axis.unit)}`.trim()
   const said = []

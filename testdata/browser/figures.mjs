@@ -2,7 +2,16 @@
 import { readFileSync } from 'node:fs'
 import { settle } from './watch.mjs'
 
+// The reader of points of the page's own script: packed_test.go holds it to what was written.
+const reader = readFileSync(new URL('../../templates/bundle/packed.js', import.meta.url), 'utf8').replaceAll('export ', '')
+const optionOf = `window.optionOf = (f) => {
+  const option = unpack(JSON.parse(f.querySelector('script').textContent))
+  for (const s of option.series) if (ArrayBuffer.isView(s.data)) s.data = pairs(s.data)
+  return option
+}`
+
 export async function figures(page) {
+  await page.evaluate(`{ ${reader}\n${optionOf} }`)
   const out = []
   for (const figure of await page.$$('figure[data-chart]')) out.push(await use(page, figure))
   return out
@@ -58,7 +67,7 @@ async function tip(page, figure) {
 
 // read is the open tooltip, its rows, and those whose value or unit is not of the figure's data.
 function read(f) {
-  const option = JSON.parse(f.querySelector('script').textContent)
+  const option = window.optionOf(f)
   const named = option.series.filter((s) => s.id[0] === 's')
   const shown = [...f.querySelectorAll('.live > div')].find((d) => d.querySelector('table') && d.getClientRects().length > 0 && getComputedStyle(d).visibility === 'visible' && Number(getComputedStyle(d).opacity) > 0.5)
   if (!shown) return { rows: [] }
@@ -113,7 +122,7 @@ function read(f) {
 // the other charts of the block that run along the same axis show the same place.
 async function cursor(page, figure) {
   const live = await figure.$('.live')
-  const up = await figure.evaluate((f) => JSON.parse(f.querySelector('script').textContent).tooltip.axisPointer.axis === 'y')
+  const up = await figure.evaluate((f) => window.optionOf(f).tooltip.axisPointer.axis === 'y')
   const on = up ? 'ArrowUp' : 'ArrowRight', back = up ? 'ArrowDown' : 'ArrowLeft'
   const press = async (key) => {
     await live.press(key)
@@ -122,7 +131,7 @@ async function cursor(page, figure) {
   }
   const first = await press(on), second = await press(on), before = await press(back), end = await press('End'), start = await press('Home')
   const together = await figure.evaluate((f) => {
-    const axis = (g) => { const o = JSON.parse(g.querySelector('script').textContent); const w = o.tooltip.axisPointer.axis; const a = o[w + 'Axis'][0]; return w + a.label + a.unit }
+    const axis = (g) => { const o = window.optionOf(g); const w = o.tooltip.axisPointer.axis; const a = o[w + 'Axis'][0]; return w + a.label + a.unit }
     const words = (g) => [...g.querySelectorAll('.live > div')].find((d) => d.querySelector('table') && d.getClientRects().length > 0 && getComputedStyle(d).visibility === 'visible')?.querySelector('div > div').textContent
     const others = [...document.querySelectorAll('figure[data-chart]')].filter((g) => g !== f && g.dataset.block === f.dataset.block && axis(g) === axis(f) && g.querySelector('.live svg'))
     return { others: others.length, led: others.filter((g) => words(g) !== undefined).length }
@@ -153,7 +162,7 @@ async function saved(page, figure) {
     const d = new DOMParser().parseFromString(text.replace(/<style>.*?<\/style>/s, ''), 'image/svg+xml')
     const texts = (e) => [...e.querySelectorAll('text')].map((t) => t.textContent).join('|')
     const away = [...d.querySelectorAll('*')].flatMap((e) => [...e.attributes]).filter((a) => (/(^|:)(href|src)$/.test(a.name) && a.value[0] !== '#') || /url\((?!["']?#)/.test(a.value))
-    return { alone: away.length === 0 && !/url\((?!["']?data:)/.test(/<style>(.*?)<\/style>/s.exec(text)[1]), whole: !d.querySelector('parsererror') && texts(d) === texts(f.querySelector('.twin .wide')), points: Math.max(...JSON.parse(f.querySelector('script').textContent).series.filter((s) => s.id[0] === 's').map((s) => s.data.length)) }
+    return { alone: away.length === 0 && !/url\((?!["']?data:)/.test(/<style>(.*?)<\/style>/s.exec(text)[1]), whole: !d.querySelector('parsererror') && texts(d) === texts(f.querySelector('.twin .wide')), points: Math.max(...window.optionOf(f).series.filter((s) => s.id[0] === 's').map((s) => s.data.length)) }
   }, picture.text)
   return {
     names: files.map((f) => f.name), whole: seen.whole, faces: picture.text.split('@font-face').length - 1,

@@ -34,11 +34,11 @@ export const settle = (page) => page.evaluate(() => new Promise((done) => reques
 // leaf scrolls through the page to its end and back, and waits until every chart has started.
 export async function leaf(page) {
   const high = await page.evaluate(() => document.documentElement.scrollHeight)
-  for (let y = 0; y < high; y += 1500) {
+  for (let y = 0; y < high; y += 800) {
     await page.evaluate((to) => scrollTo({ top: to, behavior: 'instant' }), y)
     await settle(page)
+    await page.waitForFunction(() => [...document.querySelectorAll('figure[data-chart]')].every((f) => f.querySelector('.live svg') || f.getBoundingClientRect().top >= innerHeight || f.getBoundingClientRect().bottom <= 0))
   }
-  await page.waitForFunction(() => [...document.querySelectorAll('figure[data-chart]')].every((f) => f.querySelector('.live svg')))
   await page.evaluate(() => scrollTo({ top: 0, behavior: 'instant' }))
   await settle(page)
 }
