@@ -22,7 +22,7 @@ demo: build
 	@for f in examples/*/package.md; do echo "  $(CURDIR)/$${f%.md}.package/index.html"; done
 
 test: bundle
-	@bash .ci/need --if-possible chromium pdftoppm scipy
+	@bash .ci/need --if-possible chromium pdftoppm java scipy
 	@unformatted=$$($(go_files) -exec gofmt -l {} +); \
 		[ -z "$$unformatted" ] || { echo "gofmt would change:" $$unformatted >&2; exit 1; }
 	go vet ./...

@@ -23,11 +23,30 @@ func TestPrint(t *testing.T) {
 	t.Setenv("TMPDIR", t.TempDir())
 	t.Run("example", func(t *testing.T) {
 		dir := t.TempDir()
-		page := pageOf(t, module+"/examples/four-storey/package.md", dir)
+		page := readPage(t, exampleOf(t, "four-storey"))
 		pdf := printed(t, module+"/examples/four-storey/package.md", dir)
 		isPaper(t, pdf, "594.96 x 841.92 pts (A4)")
 		holdsPage(t, pdf, page)
+		drawn(t, pdf, page)
 	})
+	for name, size := range map[string]string{"equipment-frame": "612 x 792 pts (letter)", "three-records": "594.96 x 841.92 pts (A4)"} {
+		t.Run(name, func(t *testing.T) {
+			page := readPage(t, exampleOf(t, name))
+			data, err := paper(os.Getenv(browserVariable), []byte(page))
+			if err != nil {
+				t.Fatal(err)
+			}
+			pdf := filepath.Join(t.TempDir(), "p.pdf")
+			if err := os.WriteFile(pdf, data, 0o644); err != nil {
+				t.Fatal(err)
+			}
+			if info := output(t, "pdfinfo", pdf); !strings.Contains(info, size+"\n") {
+				t.Errorf("the paper is not %s:\n%s", size, info)
+			}
+			holdsPage(t, pdf, page)
+			drawn(t, pdf, page)
+		})
+	}
 	t.Run("letter", func(t *testing.T) {
 		dir := t.TempDir()
 		file := filepath.Join(dir, "p.md")
@@ -48,7 +67,13 @@ func TestPrint(t *testing.T) {
 func pageOf(t *testing.T, file, dir string) string {
 	t.Helper()
 	quiet(t, "build", file, "-o", filepath.Join(dir, "p.package"))
-	text, err := os.ReadFile(filepath.Join(dir, "p.package", "index.html"))
+	return readPage(t, filepath.Join(dir, "p.package"))
+}
+
+// readPage is the page of a written package.
+func readPage(t *testing.T, dir string) string {
+	t.Helper()
+	text, err := os.ReadFile(filepath.Join(dir, "index.html"))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -156,6 +181,103 @@ func holdsPage(t *testing.T, pdf, page string) {
 	if found["equation"] == 0 || len(pages) > 20 && (found["caption"] < 15 || found["equation"] < 30) {
 		t.Errorf("too little to test on: %v", found)
 	}
+}
+
+var (
+	figureCaption = regexp.MustCompile(`<figcaption><span><b>Figure (\d+)</b>`)
+	wordBox       = regexp.MustCompile(`<word xMin="([\d.]+)" yMin="([\d.]+)" xMax="([\d.]+)" yMax="([\d.]+)">([^<]*)</word>`)
+)
+
+// dots is the size of the raster on which ink is looked for: half a dot a point.
+const dots = 36
+
+// drawn sees that above every caption of a figure there is a picture on paper: along
+// the height of a band there is ink that is no letter, as there is beside an axis and
+// not between rows of a table or lines of text.
+func drawn(t *testing.T, pdf, page string) {
+	t.Helper()
+	aside := t.TempDir()
+	output(t, "pdftoppm", "-r", fmt.Sprint(dots), "-gray", pdf, filepath.Join(aside, "p"))
+	pictures, err := filepath.Glob(filepath.Join(aside, "*.pgm"))
+	texts := strings.Split(output(t, "pdftotext", "-bbox", pdf, "-"), "<page ")[1:]
+	if err != nil || len(pictures) != len(texts) {
+		t.Fatalf("%d pictures of %d pages: %v", len(pictures), len(texts), err)
+	}
+	seen := map[string]bool{}
+	for i, text := range texts {
+		picture := readGray(t, pictures[i])
+		words := wordBox.FindAllStringSubmatch(text, -1)
+		scale := dots / 72.0
+		box := func(m []string) (at [4]int) {
+			for k := range at {
+				var v float64
+				fmt.Sscan(m[1+k], &v)
+				at[k] = int(v * scale)
+			}
+			return at
+		}
+		letters := func(x, y int) bool {
+			return slices.ContainsFunc(words, func(m []string) bool {
+				b := box(m)
+				return x >= b[0]-1 && x <= b[2]+1 && y >= b[1]-1 && y <= b[3]+1
+			})
+		}
+		for k := range words[:max(len(words)-1, 0)] {
+			number := words[k+1][5]
+			if words[k][5] != "Figure" || seen[number] {
+				continue
+			}
+			caption := box(words[k])
+			rows, inked := 0, 0
+			for y := caption[1] - 55; y < caption[1]-15; y++ {
+				rows++
+				for x := caption[0]; y >= 0 && x < picture.wide-10; x++ {
+					if picture.at(x, y) < 225 && !letters(x, y) {
+						inked++
+						break
+					}
+				}
+			}
+			seen[number] = inked*10 >= rows*8
+		}
+	}
+	captions := figureCaption.FindAllStringSubmatch(page, -1)
+	if len(captions) < 5 {
+		t.Errorf("only %d figures to test on", len(captions))
+	}
+	for _, m := range captions {
+		if !seen[m[1]] {
+			t.Errorf("above the caption of figure %s there is nothing drawn", m[1])
+		}
+	}
+}
+
+// gray is a picture of grey dots, 0 black.
+type gray struct {
+	wide, high int
+	dots       []byte
+}
+
+func (g gray) at(x, y int) byte {
+	if y >= g.high || x >= g.wide {
+		return 255
+	}
+	return g.dots[y*g.wide+x]
+}
+
+func readGray(t *testing.T, file string) gray {
+	t.Helper()
+	data, err := os.ReadFile(file)
+	if err != nil {
+		t.Fatal(err)
+	}
+	var g gray
+	var most int
+	if _, err := fmt.Sscanf(string(data[:min(len(data), 40)]), "P5\n%d %d\n%d\n", &g.wide, &g.high, &most); err != nil || len(data) < g.wide*g.high || most != 255 {
+		t.Fatalf("%s is no picture: %v", file, err)
+	}
+	g.dots = data[len(data)-g.wide*g.high:]
+	return g
 }
 
 // A browser that does not end is ended, with all that it started.

@@ -20,7 +20,7 @@ func TestMain(m *testing.M) {
 	if os.Getenv("QUOIN_CACHE") == "" {
 		os.Setenv("QUOIN_CACHE", os.DevNull) // no test leaves anything in the user's cache
 	}
-	testscript.Main(m, map[string]func(){"quoin": main})
+	testscript.Main(tidy{m}, map[string]func(){"quoin": main})
 }
 
 // With -update the scripts take over what the program now says; read the difference.

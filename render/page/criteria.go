@@ -46,7 +46,7 @@ func (b *book) criteria() []item {
 			}
 			r := criterionView{Label: c.Label, Symbol: c.Symbol, Value: b.cell(c.Value, nil), Open: c.Open}
 			r.Value.Text = clip(r.Value.Text, titleChars)
-			if count[c.Label] > 1 && c.Value.Text == "" || count[c.Label] > 1 && c.Label != "procedure" {
+			if count[c.Label] > 1 {
 				var names []string
 				for _, o := range c.Blocks {
 					names = append(names, o.Name)

@@ -62,6 +62,7 @@ class Card {
       this.left = link
     })
     addEventListener('click', (e) => { if (e.target.closest?.('a')) this.hide() })
+    this.box.addEventListener('toggle', (e) => { if (e.target !== this.box && this.link) this.place() }, true) // it grows
     addEventListener('beforeprint', () => this.hide())
     addEventListener('resize', () => this.hide())
   }
@@ -82,7 +83,12 @@ class Card {
     link.after(this.box) // so that Tab goes from the number into its card
     link.setAttribute('aria-details', this.box.id)
     this.box.showPopover?.()
-    const at = link.getClientRects()[0], box = this.box.getBoundingClientRect()
+    this.place()
+  }
+
+  // place puts the card at its number: below, where there is room, and within the window.
+  place() {
+    const at = this.link.getClientRects()[0], box = this.box.getBoundingClientRect()
     const below = at.bottom + box.height < innerHeight || at.top < box.height
     this.box.style.left = `${Math.max(8, Math.min(at.left - 12, document.documentElement.clientWidth - box.width - 8)) + scrollX}px`
     this.box.style.top = `${(below ? at.bottom + 2 : at.top - box.height - 2) + scrollY}px`

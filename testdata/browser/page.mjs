@@ -4,6 +4,9 @@
 //   live      as it opens, then leafed through to its end: what it asks for, says and refuses; links, headings,
 //             faces; the accessibility rules of WCAG 2.0 to 2.2, A and AA; every chart and the numbers that lead home by pointer and by key, and
 //             what stands in its place on paper; page.pdf; at 390 and 320 px
+//   glance    the accessibility rules and the widths at the sizes of a screen, of a phone and at 200 %, and in the states
+//             that the page takes; what can have the focus; the elements and attributes of the page
+//   open      leafed through, then at 390 and 320 px
 //   plain     without scripts, also at 390 and 320 px
 import { readFileSync } from 'node:fs'
 import { createRequire } from 'node:module'
@@ -11,6 +14,7 @@ import { chromium } from 'playwright-core'
 import { figures } from './figures.mjs'
 import { homes } from './homes.mjs'
 import * as seen from './seen.mjs'
+import { glance, tags } from './states.mjs'
 import { fonts, leaf, open, settle } from './watch.mjs'
 
 const [index, folder, ...modes] = process.argv.slice(2)
@@ -23,9 +27,9 @@ const does = {
     report.late = await page.evaluate(seen.started)
     Object.assign(report, await page.evaluate(seen.outline), { fonts: await fonts(page), texts: await page.evaluate(seen.texts) })
 
-    await page.evaluate(readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8'))
+    await axe(page)
     await page.evaluate(() => document.querySelectorAll('details').forEach((d) => { d.open = true }))
-    report.rules = await page.evaluate(seen.rules, ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa'])
+    report.rules = await page.evaluate(seen.rules, { tags })
     await page.evaluate(() => document.querySelectorAll('details').forEach((d) => { d.open = false }))
 
     report.homes = await homes(page, seen.rules)
@@ -40,11 +44,24 @@ const does = {
     return report
   },
 
+  async glance(page) {
+    await axe(page)
+    return { ...(await page.evaluate(seen.outline)), texts: await page.evaluate(seen.texts), ...(await glance(page, seen)) }
+  },
+
+  async open(page) {
+    await leaf(page)
+    return { ...(await page.evaluate(seen.outline)), texts: await page.evaluate(seen.texts), widths: await narrow(page, true) }
+  },
+
   async plain(page) {
     const texts = await page.evaluate(seen.texts)
     return { texts, ...(await page.evaluate(seen.parts)), widths: await narrow(page, false) }
   },
 }
+
+// axe puts the rules of accessibility into the page.
+const axe = (page) => page.evaluate(readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8'))
 
 // narrow is the page at the widths of phones. Without scripts nothing is drawn anew.
 async function narrow(page, drawn) {

@@ -50,11 +50,13 @@ export function parts() {
   const name = (e) => `${e.closest('[id]')?.id}: ${e.textContent.trim().slice(0, 60)}`
   const all = (selector) => [...document.querySelectorAll('main ' + selector)]
   return {
-    figures: all('figure').length, equations: all('math').length, tables: all('table').length, images: all('img').length,
+    figures: all('figure').length, equations: all('math').length, tables: all('table').length, images: all('img').length, values: all('details.values').length,
+    dead: all('button, input, select, [role=button], [aria-pressed], [aria-expanded], .live[tabindex]').filter(sized).map((e) => `${e.tagName} ${name(e)}`),
     unseen: [
       ...all('figure').filter((f) => [...f.querySelectorAll('.twin svg')].filter(sized).length !== 1).map((f) => 'figure ' + f.id),
       ...all('figure').filter((f) => sized(f.querySelector('.live'))).map((f) => 'empty chart in ' + f.id),
       ...all('math').filter((m) => !sized(m)).map((m) => 'math ' + name(m)),
+      ...all('figure').filter((f) => f.querySelector('[type="application/json"]') && !sized(f.closest('.part').querySelector('details.values table'))).map((f) => 'the values of figure ' + f.id),
       ...all('table').filter((t) => !sized(t)).map((t) => 'table ' + name(t)),
       ...all('img').filter((i) => !sized(i) || i.naturalWidth === 0).map((i) => 'image ' + i.alt),
       ...all('.line').filter((l) => !l.querySelector('math')).map((l) => 'line without math ' + name(l)),
@@ -92,11 +94,11 @@ export function widths() {
   }
 }
 
-// rules runs the rules of the tags. It needs the rules in the page.
-export async function rules(tags) {
-  const result = await window.axe.run(document, { runOnly: tags, resultTypes: ['violations'] })
+// rules runs the rules of the tags, on the whole page or a part of it. It needs the rules in the page.
+export async function rules({ tags, part }) {
+  const result = await window.axe.run(part ?? document, { runOnly: tags, resultTypes: ['violations'] })
   return {
-    passed: result.passes.length,
+    passed: result.passes.length, targets: result.passes.some((r) => r.id === 'target-size'),
     broken: result.violations.map((v) => ({ rule: v.id, help: v.help, count: v.nodes.length, at: v.nodes.slice(0, 4).map((n) => `${n.target.join(' ')} ${n.html.slice(0, 120)} ${n.any.map((a) => a.message).join(' ')}`) })),
   }
 }

@@ -105,7 +105,7 @@ func (b *static) criteria(r *Run, s *lateral.Static) {
 		}
 	}
 	permitted := map[string]string{"permitted": "permitted", "not permitted": "NOT permitted"}[s.Permitted]
-	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: name + " (" + r.Name + "), " + or(permitted, "not shown to be permitted")})
+	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: name + ", " + or(permitted, "not shown to be permitted")})
 	r.Criterion(ofProcedure, "seismic weight", "W", Cell(s.Weight, u.force))
 	r.Criterion(ofProcedure, "period used", "T", exhibit.Cell{Numbers: []exhibit.Number{r.Shown("T", s.T, seconds)}})
 	if s.Cs > 0 {
@@ -128,7 +128,7 @@ func (b *combine) criteria(r *Run, c *modal.Combined) {
 	if c.Residual != nil {
 		text = append(text, "the rest as residual")
 	}
-	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: "modal response spectrum (" + r.Name + "): " + strings.Join(text, ", ")})
+	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: "modal response spectrum: " + strings.Join(text, ", ")})
 	label := "modal base shear"
 	if c.ScaleFactor != 1 {
 		label += ", scaled"
