@@ -131,11 +131,7 @@ func (d *run) asking(n *node) string {
 	if d.options.Cache == nil || !packable(reflect.TypeOf(n.body)) {
 		return ""
 	}
-	line := 0
-	if n.name == "" {
-		line = n.at.Line // its tables are named by it
-	}
-	return hashed(content(n.viewpoint(), "block", n.def.Name, n.name, line, d.system, n.at, n.body))
+	return hashed(content(n.viewpoint(), "block", n.def.Name, n.name, n.order, d.system, n.at, n.body))
 }
 
 // giving is the key of what a block gives: what it asked, and the answers.

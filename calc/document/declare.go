@@ -43,6 +43,7 @@ type node struct {
 	def    block.Kind
 	body   block.Body
 	result block.Result
+	order  int    // among the blocks of its kind without a name, from 1
 	key    string // of what it gave, in the cache; "" where that is not known
 
 	// a formula line or check
@@ -79,6 +80,7 @@ func (d *run) declare() {
 	names := d.formulaNames()
 	isName := func(n string) bool { return names[n] }
 	anchors := map[string]int{}
+	d.unnamed = map[string]int{}
 	for _, p := range d.parts {
 		for i := range p.md.Fences {
 			p.blocks = append(p.blocks, d.fence(p, p.md.Fences[i], isName, anchors))
@@ -162,7 +164,8 @@ func (d *run) fence(p *part, f markdown.Fence, isName formula.Names, anchors map
 			n.failed = true
 			n.diags.Errorf("missing-name", f.Place, "a %s block needs a name", k.Name).WithHint("write  ```calc %s NAME", k.Name)
 		}
-		n.name = ""
+		d.unnamed[k.Name]++
+		n.order = d.unnamed[k.Name]
 	} else {
 		d.claim(n, f.NameRange)
 	}

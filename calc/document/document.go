@@ -98,6 +98,7 @@ type run struct {
 	// anchors leads from the words of a heading and the names of blocks to their
 	// anchors on the page.
 	anchors map[string]string
+	unnamed map[string]int // blocks without a name, by kind
 	// checked holds the checks by what they say.
 	checked map[string]*node
 }

@@ -174,7 +174,7 @@ func (d *run) runBlock(n *node, sc scope) {
 	asking := d.asking(n)
 	if asking == "" || !d.recall(n, sc, asking) {
 		w := &witness{scope: sc}
-		r := &block.Run{Env: w, Name: n.name, Kind: n.def, Place: n.at}
+		r := &block.Run{Env: w, Name: n.name, Kind: n.def, Order: n.order, Place: n.at}
 		r.EchoFields(n.body)
 		n.body.Run(r)
 		said := r.Diags

@@ -156,3 +156,111 @@ func TestTripartite(t *testing.T) {
 		t.Errorf("no diagonals %v among %v", at1, p.Diagonals)
 	}
 }
+
+const sine = "form: sine\namplitude: 0.3 g\nperiod: 0.5 s\ncycles: 20\nstep: 0.01 s\nsource: invented"
+
+// TestBands: a bar from the shortest to the longest usable period of each record, the
+// first on top; the corners of its filter, 1.25 beyond it, as a thin line.
+func TestBands(t *testing.T) {
+	filtered := sine + "\ntreat:\n  - taper: 1 s\n  - bandpass: { from: 0.2 Hz, to: 20 Hz }"
+	p := ran(t, calc("record a", filtered)+calc("record b", sine+"\nusable_period: 3 s")+
+		calc("figure f", "series: [{ band: a, label: first }, { band: b }]", "mark: 1 s"), nil)
+	f := figureOf(t, p, "f")
+	got := f.Panels[0]
+	want := []exhibit.FigSerie{
+		{Label: "0.0625 to 4.00 s", X: []float64{1.25 / 20, 1 / (1.25 * 0.2)}, Y: []float64{1, 1}, Role: exhibit.Bar},
+		{X: []float64{1.0 / 20, 1 / 0.2}, Y: []float64{1, 1}, Role: exhibit.Data, Dots: true},
+		{Label: "0.0200 to 3.00 s", X: []float64{0.02, 3}, Y: []float64{0, 0}, Role: exhibit.Bar}, // from the Nyquist period
+	}
+	if len(got.Series) != len(want) {
+		t.Fatalf("series %v", got.Series)
+	}
+	for i, s := range got.Series {
+		w := want[i]
+		if s.Label != w.Label || s.Role != w.Role || s.Dots != w.Dots || s.Y[0] != w.Y[0] || s.Y[1] != w.Y[1] || math.Abs(s.X[0]/w.X[0]-1) > 1e-12 || math.Abs(s.X[1]/w.X[1]-1) > 1e-12 {
+			t.Errorf("series %d is %v, want %v", i, s, w)
+		}
+	}
+	if n := got.Y.Names; len(n) != 2 || n[0] != (exhibit.TickName{At: 1, Name: "first"}) || n[1] != (exhibit.TickName{At: 0, Name: "b"}) || !got.X.Log || *got.X.Min > 0.02 || *got.X.Max < 5 {
+		t.Errorf("axes %v and %v", got.X, got.Y)
+	}
+}
+
+// TestRing: the least and the largest value within the ends of the axes are ringed.
+func TestRing(t *testing.T) {
+	p := ran(t, calc("figure f", "series:", "  - { x: [1 s, 2 s, 3 s, 4 s], y: [5, 3, 4, 1], ring: least }", "  - { x: [1 s, 2 s, 3 s, 4 s], y: [5, 3, 4, 1], ring: largest }", "from: 2 s", "to: 3.5 s"), nil)
+	got := figureOf(t, p, "f").Panels[0].Points
+	if len(got) != 2 || got[0] != (exhibit.RefPoint{X: 2, Y: 3, Label: "3.00 at 2.00 s"}) || got[1] != (exhibit.RefPoint{X: 3, Y: 4, Label: "4.00 at 3.00 s"}) {
+		t.Errorf("rings %v", got)
+	}
+	p = ran(t, tower+calc("figure f", "series: [{ profile: frame.w, ring: largest }]", "over: frame"), nil)
+	w := value(t, p, "frame.w").Value
+	most := slices.Index(w.SI, slices.Max(w.SI))
+	if got := figureOf(t, p, "f").Panels[0].Points; len(got) != 1 || got[0].X != w.SI[most] || !strings.HasSuffix(got[0].Label, "at "+w.Labels[most]) {
+		t.Errorf("rings %v", got)
+	}
+}
+
+// TestBases: a caption that does not say by what standard its target stands, and at
+// what damping, is helped; one that does is left alone.
+func TestBases(t *testing.T) {
+	d := calc("target d", "basis: ASCE/SEI 7-22", "S_DS: 1", "S_D1: 0.6", "T_L: 8 s")
+	for caption, want := range map[string]string{"Demand": "Demand; d by ASCE/SEI 7-22, 5 % damping", "Demand by ASCE/SEI 7-22": "Demand by ASCE/SEI 7-22"} {
+		p := ran(t, d+calc("figure f", "series: [d.PSA]", "caption: "+caption), nil)
+		if got := figureOf(t, p, "f").Caption; got != want {
+			t.Errorf("caption %q, want %q", got, want)
+		}
+	}
+	p := ran(t, calc("record r", sine)+calc("periods g", "values: [0.5 s, 2 s]")+calc("spectrum rs", "record: r", "periods: g", "damping: 3 %")+calc("figure f", "series: [{ of: rs.PSA, label: east }]")+calc("figure h", "series: [rs.PSA]"), nil)
+	if got := figureOf(t, p, "f").Caption; got != "east; rs at 3 % damping" {
+		t.Errorf("caption %q", got)
+	}
+	if got := figureOf(t, p, "h").Caption; got != "rs 3 %" {
+		t.Errorf("caption %q", got)
+	}
+}
+
+// TestUnnamed: blocks without a name are called by their kind and order; text above
+// changes nothing.
+func TestUnnamed(t *testing.T) {
+	vectors := "series: [{ x: [1 s, 2 s], y: [1, 2] }]"
+	for _, above := range []string{"", "Words.\n\nAnd more words.\n\n"} {
+		p := ran(t, above+calc("figure", vectors)+calc("table", "values: [{ value: 2 m, label: a }]")+calc("figure named", vectors)+calc("figure", vectors), nil)
+		figureOf(t, p, "figure-1")
+		figureOf(t, p, "figure-2")
+		table(t, p, "table-1")
+	}
+}
+
+// TestMasses: the running sum of the effective masses stands against the 90 % needed,
+// and where it gets there is ringed.
+func TestMasses(t *testing.T) {
+	p := ran(t, tower+calc("modes m", "structure: frame"), nil)
+	f := figureOf(t, p, "m-mass").Panels[0]
+	sum := value(t, p, "m.mass_sum").Value.SI
+	if s := f.Series[0]; !slices.Equal(s.Y[1:], sum) || s.Y[0] != 0 || s.X[0] != 0 || s.X[len(sum)] != float64(len(sum)) {
+		t.Errorf("%v over %v, want %v", s.Y, s.X, sum)
+	}
+	first := slices.IndexFunc(sum, func(x float64) bool { return x >= 0.9 })
+	if len(f.Lines) != 1 || f.Lines[0].At != 0.9 || f.Lines[0].Vertical || len(f.Points) != 1 || f.Points[0].X != float64(first+1) || f.Points[0].Y != sum[first] {
+		t.Errorf("lines %v, points %v", f.Lines, f.Points)
+	}
+}
+
+// TestBuildUp: the Arias intensity comes in from 0 to 1, with 5 and 95 % and the
+// duration between them, which is the one of the register.
+func TestBuildUp(t *testing.T) {
+	p := ran(t, calc("record r", "file: r.csv"), map[string]string{"r.csv": sawtooth})
+	f := figureOf(t, p, "r")
+	if len(f.Panels) != 4 {
+		t.Fatalf("%d panels", len(f.Panels))
+	}
+	q := f.Panels[3]
+	s, d := q.Series[0], value(t, p, "r.d5_95").Value.SI[0]
+	if s.Y[0] != 0 || math.Abs(s.Y[len(s.Y)-1]-1) > 1e-12 || !slices.IsSorted(s.Y) || *q.Y.Min != 0 || *q.Y.Max != 1 || q.X.Label != f.Panels[0].X.Label {
+		t.Errorf("from %v to %v, axes %v and %v", s.Y[0], s.Y[len(s.Y)-1], q.X, q.Y)
+	}
+	if l := q.Lines; len(l) != 4 || l[0].At != 0.05 || l[1].At != 0.95 || !l[3].Vertical || math.Abs(l[3].At-l[2].At-d) > 1e-12 || !strings.HasPrefix(l[3].Label, "D5-95 = ") {
+		t.Errorf("lines %v, D5-95 is %v s", l, d)
+	}
+}

@@ -310,7 +310,7 @@ func TestFigureBlock(t *testing.T) {
 	if n := len(x) - 1; x[n] != 9 || math.Abs(y[n]-0.9*6/81*9.80665) > 1e-12 || !slices.Contains(x, 6) || !slices.IsSorted(x) {
 		t.Errorf("the target ends at %v s with %v m/s²", x[n], y[n])
 	}
-	if len(f.Lines) != 2 || f.Lines[0].Label != "T₁ 0.500 s" || f.Lines[1].Label != "2.00 s" {
+	if len(f.Lines) != 2 || f.Lines[0].Label != "T₁ 0.500 s" || f.Lines[1].Label != "2 s" {
 		t.Errorf("marks %v", f.Lines)
 	}
 	if own := figureOf(t, p, "d").Panels[0].Series[0].X; own[len(own)-1] != 4 {

@@ -74,3 +74,51 @@ func TestTargets(t *testing.T) {
 		t.Errorf("cautions: %v", found)
 	}
 }
+
+// TestOrdinatesGiven: MCE_R ordinates stand beside the design ones, which are two thirds
+// of them; ordinates of a design spectrum stand alone.
+func TestOrdinatesGiven(t *testing.T) {
+	files := map[string]string{"mp.csv": ordinates722}
+	target := func(of string) string {
+		return calc("target mp", "basis: ASCE/SEI 7-22", "ordinates: mp.csv", "ordinates_of: "+of, "site: D", "T_L: 12 s")
+	}
+	rows := table(t, ran(t, target("MCE_R"), files), "mp-rows")
+	if len(rows.Columns) != 3 || rows.Columns[1].Head != "SaM, as given" && !strings.HasPrefix(rows.Columns[1].Head, "SaM") {
+		t.Fatalf("columns %v", rows.Columns)
+	}
+	for i, T := range []float64{0, 0.01, 0.02, 0.03, 0.05, 0.075, 0.1, 0.15, 0.2, 0.25, 0.3, 0.4, 0.5, 0.75, 1, 1.5, 2, 3, 4, 5, 7.5, 10} {
+		row := rows.Rows[i]
+		at, mce, sa := row[0].Numbers[0].Value, row[1].Numbers[0].Value, row[2].Numbers[0].Value
+		if at != T || math.Abs(sa/mce*1.5-1) > 1e-12 {
+			t.Errorf("at %v s: %v of %v", at, sa, mce)
+		}
+	}
+	if mce := rows.Rows[9][1].Numbers[0].Value; math.Abs(mce/quantity.Gravity-1.71) > 1e-12 { // at 0.25 s
+		t.Errorf("at 0.25 s %v m/s² stand as given", mce)
+	}
+	if n := len(rows.Rows); n > 22 && len(rows.Rows[22][1].Numbers) > 0 {
+		t.Errorf("a row beyond the ordinates holds one")
+	}
+	if rows := table(t, ran(t, target("design"), files), "mp-rows"); len(rows.Columns) != 2 {
+		t.Errorf("columns %v", rows.Columns)
+	}
+}
+
+// TestMultiPeriodBasis: with the ordinates of the site, the mapped values and the site
+// coefficients do not apply, and the static block says so.
+func TestMultiPeriodBasis(t *testing.T) {
+	p := ran(t, tower+calc("target mp", "basis: ASCE/SEI 7-22", "ordinates: mp.csv", "ordinates_of: MCE_R", "site: D", "S_1: 0.7", "T_L: 12 s")+
+		calc("static f", "structure: frame", "target: mp", "R: 8", "I_e: 1", "system: concrete moment frame"), map[string]string{"mp.csv": ordinates722})
+	said := map[string]string{}
+	for _, row := range table(t, p, "f-basis").Rows {
+		said[row[0].Text] = row[1].Text
+	}
+	for _, symbol := range []string{"S_S", "F_a", "F_v"} {
+		if said[symbol] != "does not apply" {
+			t.Errorf("%s: %q in %v", symbol, said[symbol], said)
+		}
+	}
+	if said["S_1"] == "does not apply" {
+		t.Error("S_1 is given and said not to apply")
+	}
+}

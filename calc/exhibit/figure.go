@@ -64,6 +64,7 @@ const (
 	Governing Role = "governing" // thick, in the tie colour: the target
 	Secondary Role = "secondary" // thin, soft: one of many
 	Limit     Role = "limit"     // the bad colour, dashed
+	Bar       Role = "bar"       // a wide bar at one value of y
 )
 
 // FigSerie is one curve. X and Y are SI.
@@ -73,7 +74,7 @@ type FigSerie struct {
 	X     []float64 `json:"x"`
 	Y     []float64 `json:"y"`
 	Role  Role      `json:"role"`
-	Dash  int       `json:"dash,omitempty"` // 0 solid, 1 long dash, 2 dots, 3 dash-dot
+	Dash  int       `json:"dash,omitempty"` // 0 solid, 1 long dash, 2 dots, 3 dash-dot; 4 and 5 solid and dashed with marks
 	Step  bool      `json:"step,omitempty"` // storey shear: constant over the storey
 	Dots  bool      `json:"dots,omitempty"` // marks at the points
 }

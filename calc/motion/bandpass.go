@@ -163,9 +163,11 @@ func (p Bandpass) Apply(r *Record) (*Record, Residual, error) {
 	out := r.with(a, p)
 	out.Origin.Lead += pad * r.Step
 	if p.From > 0 {
+		out.Origin.Corners[0] = max(r.Origin.Corners[0], p.From)
 		out.Origin.UsablePeriod = shorter(r.Origin.UsablePeriod, 1/(UsableFactor*p.From))
 	}
 	if p.To > 0 {
+		out.Origin.Corners[1] = shorter(r.Origin.Corners[1], p.To)
 		out.Origin.ShortestPeriod = max(r.Origin.ShortestPeriod, UsableFactor/p.To)
 	}
 	residual := gainError(r.A, r.Step, work, r.Step, lead, p.probes(), func(f float64) float64 { return p.Gain(f, r.Step) })

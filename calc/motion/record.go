@@ -39,6 +39,9 @@ type Origin struct {
 	UsablePeriod float64 `json:"usable_period,omitempty"`
 	// ShortestPeriod is the shortest period at which the record is reliable, s; 0 when not stated.
 	ShortestPeriod float64 `json:"shortest_period,omitempty"`
+	// Corners are the lower and the upper corner of the filters applied here, Hz: of
+	// several the narrower; 0 for none.
+	Corners [2]float64 `json:"corners,omitzero"`
 	// Lead is the pad before the first sample of the file, s: records that belong
 	// together are in step when their leads are.
 	Lead      float64   `json:"lead,omitempty"`

@@ -116,7 +116,7 @@ func build722(in Given) (*Target, error) {
 		t.Branches = twoPeriod(sds, sd1, tl, factor, times, [4]cite.Ref{clause, clause, clause, clause})
 		t.Corners = []Corner{{"T_0", t0}, {"T_S", ts}, {"T_L", tl}}
 	}
-	t.Warnings = slices.Concat(warn722(in, t.MultiPeriod), large(sds, sd1), byRisk(in, all, t.Basis))
+	t.Warnings = slices.Concat(warn722(in, t.MultiPeriod), large(sds, sd1), falling(in, all), byRisk(in, all, t.Basis))
 	if t.MultiPeriod {
 		t.Notes = []string{"The maxima behind S_DS and S_D1 are those at the 22 periods, not between them."}
 	}

@@ -294,6 +294,18 @@ func (b *site1998) warnings() []Warning {
 	} else if q > 0 && q < 1 {
 		all = append(all, Warning{"low-q", "q = " + quantity.Short(q) + " lies below 1: the design spectrum is larger than the elastic one", ofEN("3.2.2.5")})
 	}
+	for _, x := range []struct {
+		symbol   string
+		low, top float64
+		why      string
+	}{
+		{"S", 1, 2, "soil factors are commonly between 1.0, that of rock, and 2.0"},
+		{"vertical_ratio", 0.3, 1.2, "a_vg/a_g is commonly between 0.3 and 1.2, recommended are 0.90 and 0.45"},
+	} {
+		if v, typed := b.number(x.symbol); typed && (v < x.low || v > x.top) {
+			all = append(all, Warning{"unusual-value", x.symbol + " = " + quantity.Short(v) + " is unusual: " + x.why + " (common practice, no limit of the standard); confirm it", cite.Ref{}})
+		}
+	}
 	if ag := b.value("a_g") / quantity.Gravity; ag > 1.5 {
 		all = append(all, Warning{"large-value", "a_g = " + quantity.Short(ag) + " g is very large: was it given in another unit?", cite.Ref{}})
 	}

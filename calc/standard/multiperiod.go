@@ -180,3 +180,12 @@ func multiPeriod(sa []float64, tl, factor float64) []Branch {
 		Branch{Name: "constant displacement", From: tl, B2: 10 * tl * last * quantity.Gravity, Ref: ref, Formula: s10 + " * 10 s * " + written(tl) + " s / T^2"})
 	return meeting(out)
 }
+
+// Ordinates are the MCE_R ordinates at the 22 periods as they were given, m/s², of a
+// multi-period design spectrum made of them; nil of every other target.
+func (t *Target) Ordinates() []float64 {
+	if !t.MultiPeriod || t.Spectrum != "design" || t.Given.Texts["ordinates_of"] != "MCE_R" {
+		return nil
+	}
+	return t.Given.Columns["PSA"]
+}

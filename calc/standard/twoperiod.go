@@ -76,5 +76,19 @@ func large(sds, sd1 float64) []Warning {
 	if sds <= unlikely && sd1 <= unlikely {
 		return nil
 	}
-	return []Warning{{"large-value", fmt.Sprintf("S_DS = %v or S_D1 = %v is very large for a value in g: was it given in another unit?", sds, sd1), cite.Ref{}}}
+	return []Warning{{"large-value", fmt.Sprintf("S_DS = %s or S_D1 = %s is very large for a value in g: was it given in another unit?", quantity.Short(sds), quantity.Short(sd1)), cite.Ref{}}}
+}
+
+// falling warns where the value at 1 s, as stated, lies above that at short periods:
+// hardly any site has such a spectrum, and the two may be exchanged. Values derived from
+// others are not doubted here.
+func falling(in Given, all map[string]found) []Warning {
+	for _, x := range [][2]string{{"S_DS", "S_D1"}, {"S_MS", "S_M1"}} {
+		_, short := in.number(x[0])
+		_, long := in.number(x[1])
+		if s, l := all[x[0]].value, all[x[1]].value; short && long && s > 0 && l > s {
+			return []Warning{{"short-below-long", fmt.Sprintf("%s = %s is less than %s = %s: hardly any site has more at 1 s than at short periods; are the two exchanged?", x[0], quantity.Short(s), x[1], quantity.Short(l)), cite.Ref{}}}
+		}
+	}
+	return nil
 }

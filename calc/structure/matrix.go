@@ -172,7 +172,7 @@ var diagonals = map[Part]struct {
 // symmetrised is a symmetric copy of a square matrix with a positive diagonal.
 func symmetrised(a [][]float64, in Part, levels []string, fs *faults) [][]float64 {
 	out := square(len(a))
-	sound, unit := true, diagonals[in].bounds.unit
+	sound := true
 	for i := range a {
 		d := a[i][i]
 		switch miss := diagonals[in].bounds.miss(d); {
@@ -188,7 +188,7 @@ func symmetrised(a [][]float64, in Part, levels []string, fs *faults) [][]float6
 		for j := range i {
 			x, y := a[i][j], a[j][i]
 			if sound && math.Abs(x-y) > asymmetry*math.Sqrt(a[i][i])*math.Sqrt(a[j][j]) {
-				fs.add("matrix-symmetry", in, i, j, "the %s matrix is not symmetric: row %d, column %d holds %.10g %s, row %d, column %d holds %.10g %s", in, i+1, j+1, x, unit, j+1, i+1, y, unit).
+				fs.add("matrix-symmetry", in, i, j, "the %s matrix is not symmetric: row %d, column %d %s row %d, column %d", in, i+1, j+1, differs(x, y), j+1, i+1).
 					Hint = "a linear structure has a symmetric matrix (Maxwell, Betti): one of the two is wrong"
 			}
 			out[i][j], out[j][i] = x/2+y/2, x/2+y/2
@@ -202,5 +202,20 @@ func signed(x float64) string {
 	if x == 0 {
 		return "zero"
 	}
-	return fmt.Sprintf("negative (%.4g)", x)
+	return "negative"
+}
+
+// differs says how x lies to y, in words that need no unit: the author's is not known
+// here.
+func differs(x, y float64) string {
+	switch {
+	case x == -y:
+		return "has the opposite sign of"
+	case x == 0 || y == 0:
+		if x == 0 {
+			return "is zero, unlike"
+		}
+		return "is not zero, unlike"
+	}
+	return fmt.Sprintf("is %.6g times", x/y)
 }

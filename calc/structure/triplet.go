@@ -17,7 +17,6 @@ func Triplets(n int, entries []Triplet, in Part) ([][]float64, error) {
 		panic("structure: Triplets of too large a matrix")
 	}
 	var fs faults
-	unit := diagonals[in].bounds.unit
 	a, at := square(n), map[[2]int]int{}
 	for i, e := range entries {
 		if e.Row < 1 || e.Column < 1 || e.Row > n || e.Column > n {
@@ -30,7 +29,7 @@ func Triplets(n int, entries []Triplet, in Part) ([][]float64, error) {
 			continue
 		}
 		if first, ok := at[[2]int{e.Row, e.Column}]; ok {
-			fs.add("matrix-entry", in, i, -1, "row %d, column %d stands twice: it is entry %d already, %.10g %s", e.Row, e.Column, first+1, entries[first].Value, unit).
+			fs.add("matrix-entry", in, i, -1, "row %d, column %d stands twice: it is entry %d already", e.Row, e.Column, first+1).
 				Hint = "entries are not added up; give each once"
 			continue
 		}
@@ -47,7 +46,7 @@ func Triplets(n int, entries []Triplet, in Part) ([][]float64, error) {
 		case !both:
 			a[c][r] = e.Value
 		case k < i && math.Abs(e.Value-entries[k].Value) > tolerance:
-			fs.add("matrix-symmetry", in, i, -1, "the %s matrix is not symmetric: row %d, column %d holds %.10g %s, entry %d gives its mirror %.10g %s", in, e.Row, e.Column, e.Value, unit, k+1, entries[k].Value, unit).
+			fs.add("matrix-symmetry", in, i, -1, "the %s matrix is not symmetric: row %d, column %d %s its mirror, entry %d", in, e.Row, e.Column, differs(e.Value, entries[k].Value), k+1).
 				Hint = "give one of the two, or both alike"
 		}
 	}

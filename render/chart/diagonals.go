@@ -23,9 +23,9 @@ func (p *panel) diagonals() []curve {
 		}
 		c := p.base("line", p.id("~diagonal", i), 1)
 		c.Symbol, c.Silent, c.Data = "none", true, points{a, b}
-		c.LineStyle = &lineStyle{Color: soft, Width: 0.4}
+		c.LineStyle = &lineStyle{Color: rule, Width: 0.8}
 		if strings.HasPrefix(strings.TrimLeft(g.Label, "0."), "1") {
-			c.LineStyle.Width = 0.9 // decades
+			c.LineStyle.Color = soft // decades
 		}
 		out = append(out, c)
 		if names[g.Rise] == nil {

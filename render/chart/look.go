@@ -19,8 +19,15 @@ const (
 	leading = 14   // px, from line to line
 )
 
-// dashes by FigSerie.Dash: solid, long dash, dots, dash-dot.
-var dashes = [][]float64{nil, {7, 3}, {1.5, 2.6}, {8, 3, 1.5, 3}}
+// dashes by FigSerie.Dash: solid, long dash, dots, dash-dot; two more that carry marks.
+var dashes = [][]float64{nil, {7, 3}, {1.5, 2.6}, {8, 3, 1.5, 3}, nil, {7, 3}}
+
+// dots are the symbols at the points of a curve by its dash: curves of a few points are
+// told apart by them.
+var dots = []string{"circle", "rect", "triangle", "diamond", "circle", "rect"}
+
+// cross is a symbol of two strokes.
+const cross = "path://M0,0L2,2M0,2L2,0"
 
 // pen is how one curve is drawn.
 type pen struct {
@@ -38,9 +45,11 @@ func penOf(s exhibit.FigSerie) pen {
 	case exhibit.Governing:
 		p = pen{color: tie, width: 2.8, z: 5, strong: true}
 	case exhibit.Secondary:
-		p = pen{color: faint, width: 0.7, z: 2}
+		p = pen{color: faint, width: 0.8, z: 2} // no thinner: 0.5 pt on paper
 	case exhibit.Limit:
 		p = pen{color: bad, width: 1.8, dash: []float64{9, 4}, z: 4, strong: true}
+	case exhibit.Bar:
+		p = pen{color: ink, width: 9, z: 2}
 	default:
 		if s.Dash > 0 {
 			p.width = 1.1

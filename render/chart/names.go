@@ -30,17 +30,100 @@ func (p *panel) lineNames() (curve, bool) {
 			continue
 		}
 		if !l.Vertical {
-			spots = append(spots, spot{Name: text, Value: numbers{p.x.hi, v}, Label: spotLabel{Position: "inside", Align: "right", VAlign: "bottom", Offset: numbers{-2, -2}}})
 			continue
 		}
 		q := spotLabel{Position: "inside", Align: "left", VAlign: "top", Offset: numbers{5, 2 + float64(rows[i].row)*leading}}
 		if !rows[i].right {
 			q.Align, q.Offset[0] = "right", -5
 		}
-		spots = append(spots, spot{Name: text, Value: numbers{v, p.y.hi}, Label: q})
+		at, y := p.y.hi, p.clear(q.Offset[1], true)
+		q.Offset[1] = y
+		if top := p.height - y; p.crossed(rows[i].from, rows[i].to, top-leading, top) && !p.crossed(rows[i].from, rows[i].to, y, y+leading) {
+			y = p.clear(2+float64(rows[i].row)*leading, false)
+			at, q.VAlign, q.Offset[1] = p.y.lo, "bottom", -y
+		}
+		spots = append(spots, spot{Name: text, Value: numbers{v, at}, Label: q})
 	}
+	spots = append(spots, p.levelNames()...)
 	c.Data = spots
 	return c, len(spots) > 0
+}
+
+// clear is y px from the top or from the bottom, or as much more as a line of text needs
+// to keep off the horizontal lines.
+func (p *panel) clear(y float64, top bool) float64 {
+	for range p.Lines {
+		for _, l := range p.Lines {
+			if l.Vertical || !p.y.holds(p.Y.Unit.From(l.At)) {
+				continue
+			}
+			at := p.y.at(p.Y.Unit.From(l.At), p.height)
+			if top {
+				at = p.height - at
+			}
+			if at > y-1 && at < y+leading-2 {
+				y = at + 1
+			}
+		}
+	}
+	return y
+}
+
+// levelNames are the names of the horizontal lines: above them at the right, or at the
+// left where a curve runs there; moved apart where lines lie close.
+func (p *panel) levelNames() []spot {
+	var sides [2][]spot // right, left
+	var at, high [2][]float64
+	for _, l := range p.Lines {
+		v := p.Y.Unit.From(l.At)
+		text := valued(clean(l.Label), v, p.Y.Unit)
+		if l.Vertical || text == "" || !p.y.holds(v) {
+			continue
+		}
+		y, w := p.y.at(v, p.height), textWidth(text, false)+4
+		side, q := 0, spot{Name: text, Value: numbers{p.x.hi, v}, Label: spotLabel{Position: "inside", Align: "right", VAlign: "middle", Offset: numbers{-2, 0}}}
+		if p.crossed(p.width-w, p.width, y, y+leading) && !p.crossed(0, w, y, y+leading) {
+			side, q.Value[0], q.Label.Align, q.Label.Offset[0] = 1, p.x.lo, "left", 4
+		}
+		sides[side], at[side], high[side] = append(sides[side], q), append(at[side], p.height-y-leading/2-1), append(high[side], leading)
+	}
+	for side := range sides {
+		for k, place := range spread(at[side], high[side], -8, p.height) {
+			q := &sides[side][k]
+			q.Label.Offset[1] = place - (p.height - p.y.at(q.Value[1], p.height))
+		}
+	}
+	return append(sides[0], sides[1]...)
+}
+
+// crossed tells whether a curve runs through a box, px from the lower left corner.
+func (p *panel) crossed(left, right, low, high float64) bool {
+	for _, s := range p.Series {
+		d := p.data(s)
+		at := func(i int) (x, y float64) { return p.x.at(d[i][0], p.width), p.y.at(d[i][1], p.height) }
+		for i := range d {
+			x, y := at(i)
+			if x >= left && x <= right && y >= low && y <= high {
+				return true
+			}
+			if i == 0 {
+				continue
+			}
+			a, b := at(i - 1)
+			if a > x {
+				a, b, x, y = x, y, a, b
+			}
+			if x < left || a > right || x == a {
+				continue
+			}
+			from, to := math.Max(a, left), math.Min(x, right)
+			u, v := b+(y-b)*(from-a)/(x-a), b+(y-b)*(to-a)/(x-a)
+			if math.Max(u, v) >= low && math.Min(u, v) <= high {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // lineRow is where the name of a vertical line stands: the row from the top, and
@@ -130,19 +213,35 @@ func (p *panel) rings() (curve, bool) {
 		}
 		name := clean(q.Label)
 		w, at, down := textWidth(name, false), p.x.at(x, p.width), p.height-p.y.at(y, p.height)
-		l := spotLabel{Position: "inside", Align: "left", VAlign: "middle", Offset: numbers{9, 0}}
-		if at+w+9 > p.width && at > p.width/2 {
-			l.Align, l.Offset[0] = "right", -9
-		}
-		// Away from the curve: a peak's name goes up, a trough's down, within the panel.
-		shift := -5.0
+		// Away from the curve: a peak's name goes up, a trough's down, within the panel; else
+		// wherever no curve runs.
+		first := -5.0
 		switch {
 		case p.profile:
-			shift = -10
+			first = -10
 		case p.y.lo < 0 && y < 0:
-			shift = 5
+			first = 5
 		}
-		l.Offset[1] = math.Max(9-down, math.Min(p.height-9-down, shift))
+		l := spotLabel{Position: "inside", VAlign: "middle"}
+		var found bool
+		for _, shift := range []float64{first, -leading - 2, leading + 2} {
+			shift = math.Max(9-down, math.Min(p.height-9-down, shift))
+			for _, left := range []bool{false, true} {
+				from := at + 9
+				if left {
+					from = at - 9 - w
+				}
+				middle := p.height - down - shift
+				fits := from >= 0 && from+w <= p.width
+				if free := fits && !p.crossed(from, from+w, middle-leading/2+2, middle+leading/2-2); free && !found || l.Align == "" && (fits || left) {
+					found = free
+					l.Align, l.Offset = "left", numbers{9, shift}
+					if left {
+						l.Align, l.Offset[0] = "right", -9
+					}
+				}
+			}
+		}
 		spots = append(spots, spot{Name: name, Value: numbers{x, y}, Label: l})
 	}
 	c.Data = spots
@@ -188,14 +287,17 @@ func (p *panel) limits() []curve {
 const endLimit = 112
 
 // samples are the dashes as text, for names that do not stand at their curve.
-var samples = []string{"—— ", "– – ", "···· ", "–·– "}
+var samples = []string{"—— ", "– – ", "···· ", "–·– ", "—o— ", "–x– "}
 
 // endName is the name at the right end of a curve: its lines, where the curve
-// ends and where the name stands, px from the top.
+// ends and where the name stands, px from the top. One inside stands at a curve that ends
+// within the panel; all others stand at its right edge.
 type endName struct {
 	series    int
 	lines     []string
 	at, place float64
+	inside    bool
+	far       bool // at the edge, though the curve ends before
 }
 
 // endNames are the names at the right ends, moved apart where they would meet.
@@ -205,7 +307,7 @@ func (p *panel) endNames() []endName {
 	names := p.spreadNames(false)
 	moved, differ := false, false
 	for _, n := range names {
-		moved = moved || math.Abs(n.place-n.at) > leading/2
+		moved = moved || n.far || math.Abs(n.place-n.at) > leading/2
 		differ = differ || sample(p.Series[n.series]) != sample(p.Series[names[0].series])
 	}
 	if moved && differ {
@@ -223,8 +325,9 @@ func sample(s exhibit.FigSerie) string {
 }
 
 func (p *panel) spreadNames(sampled bool) []endName {
-	var out []endName
+	var out, within []endName
 	var at, high []float64
+	var boxes [][4]float64
 	for i, s := range p.Series {
 		name, d := clean(s.Label), p.data(s)
 		if name == "" || len(d) == 0 {
@@ -234,14 +337,28 @@ func (p *panel) spreadNames(sampled bool) []endName {
 		if sampled {
 			n.lines[0] = sample(s) + n.lines[0]
 		}
-		_, y := p.lastSeen(d)
+		x, y := p.lastSeen(d)
 		n.at = p.height - p.y.at(y, p.height)
+		if end := p.x.at(x, p.width); end < p.width-1 {
+			half, wide := float64(len(n.lines))*leading/2, 0.0
+			for _, line := range n.lines {
+				wide = math.Max(wide, textWidth(line, penOf(s).strong))
+			}
+			box := [4]float64{end + 6, end + 8 + wide, p.height - n.at - half, p.height - n.at + half}
+			met := slices.ContainsFunc(boxes, func(b [4]float64) bool { return box[0] < b[1] && box[1] > b[0] && box[2] < b[3] && box[3] > b[2] })
+			if !met && box[1] <= p.width && !p.crossed(box[0], box[1], box[2], box[3]) {
+				n.inside, n.place = true, n.at
+				boxes, within = append(boxes, box), append(within, n)
+				continue
+			}
+			n.far = true
+		}
 		out, at, high = append(out, n), append(at, n.at), append(high, float64(len(n.lines))*leading)
 	}
 	for k, place := range spread(at, high, -8, p.height+8) {
 		out[k].place = place
 	}
-	return out
+	return append(out, within...)
 }
 
 // ends names the curves at their right ends. A series each, of the curve's name,
@@ -252,11 +369,17 @@ func (p *panel) ends() []curve {
 		s := p.Series[n.series]
 		pen := penOf(s)
 		x, y := p.lastSeen(p.data(s))
+		if !n.inside {
+			x = p.x.hi
+		}
 		c := p.marks("~end", 7)
 		c.Id = p.id("~end", n.series)
 		c.Name = clean(s.Label)
 		c.Clip = false
 		c.Label.Color = pen.color
+		if pen.color == faint {
+			c.Label.Color = soft // a thin curve may be pale, its name not
+		}
 		if pen.strong {
 			c.Label.Weight = 600
 		}
@@ -267,12 +390,24 @@ func (p *panel) ends() []curve {
 	return out
 }
 
-// lastSeen is the last point of a curve within the limits of the axes.
+// lastSeen is the last place of a curve within the limits of the axes: its last point
+// there, or where it leaves by the right edge.
 func (p *panel) lastSeen(d points) (x, y float64) {
 	for i := len(d) - 1; i >= 0; i-- {
-		if p.x.holds(d[i][0]) {
-			return d[i][0], math.Max(p.y.lo, math.Min(p.y.hi, d[i][1]))
+		if !p.x.holds(d[i][0]) {
+			continue
 		}
+		x, y = d[i][0], d[i][1]
+		if i+1 < len(d) && d[i+1][0] > p.x.hi {
+			a, b := p.x.at(x, 1), p.x.at(d[i+1][0], 1)
+			if t := (1 - a) / (b - a); p.y.log {
+				y *= math.Pow(d[i+1][1]/y, t)
+			} else {
+				y += t * (d[i+1][1] - y)
+			}
+			x = p.x.hi
+		}
+		return x, math.Max(p.y.lo, math.Min(p.y.hi, y))
 	}
 	return p.x.hi, p.y.lo
 }
@@ -281,6 +416,9 @@ func (p *panel) lastSeen(d points) (x, y float64) {
 func (p *panel) endWidth() float64 {
 	w := 0.0
 	for _, n := range p.endNames() {
+		if n.inside {
+			continue
+		}
 		for _, line := range n.lines {
 			w = math.Max(w, textWidth(line, penOf(p.Series[n.series]).strong)+10)
 		}

@@ -66,6 +66,8 @@ func measure(f exhibit.Figure) []*panel {
 			p.height = 130
 		case q.Y.Symmetric:
 			p.height = 96
+		case barred(q):
+			p.height = 34*float64(len(p.Y.Names)) + 8
 		case n == 1:
 			p.height = 280
 		default:

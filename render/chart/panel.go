@@ -36,6 +36,9 @@ func profile(p exhibit.Panel) bool {
 	if !function {
 		return true
 	}
+	if barred(p) {
+		return false
+	}
 	// Both rise: it is a profile if some value stays while the height runs (a limit),
 	// or if the heights have names.
 	if len(p.Y.Names) > 0 {
@@ -87,6 +90,9 @@ func (p *panel) curves() []curve {
 	out = append(out, p.diagonals()...)
 	for i, s := range p.Series {
 		out = append(out, p.curve(i, s))
+		if s.Dash >= 4 && !s.Dots {
+			out = append(out, p.marked(i, s))
+		}
 	}
 	for _, l := range p.Lines {
 		out = append(out, p.line(len(out), l))
@@ -124,7 +130,7 @@ func (p *panel) curve(i int, s exhibit.FigSerie) curve {
 	c.Data = pack(p.data(s), p.x.log, p.y.log)
 	c.Symbol, c.ShowSymbol = "none", off()
 	if s.Dots {
-		c.Symbol, c.SymbolSize, c.ShowSymbol = "circle", 6, on()
+		c.Symbol, c.SymbolSize, c.ShowSymbol = dots[min(s.Dash, len(dots)-1)], 6, on()
 	}
 	c.LineStyle = &lineStyle{Color: pen.color, Width: pen.width, Join: "round"}
 	if pen.dash != nil {
@@ -134,11 +140,40 @@ func (p *panel) curve(i int, s exhibit.FigSerie) curve {
 	if len(s.X) > 1000 && !p.profile {
 		c.Sampling = "minmax"
 	}
+	if barred(p.Panel) { // a bar has no values at the pointer
+		c.Id, c.Silent = p.id("~bar", i), true
+		c.LineStyle.Cap = "butt"
+	}
 	c.Units = []string{p.X.Unit.Pretty(), p.Y.Unit.Pretty()}
 	c.Axis = clean(p.Y.Label)
 	if p.profile {
 		c.Axis = clean(p.X.Label)
 	}
+	return c
+}
+
+// barred tells whether a panel holds bars, one a row.
+func barred(p exhibit.Panel) bool { return len(p.Series) > 0 && p.Series[0].Role == exhibit.Bar }
+
+// marked is the marks along a curve whose dash another has too, at even steps of the
+// axis: rings, or crosses for the second such dash.
+func (p *panel) marked(i int, s exhibit.FigSerie) curve {
+	c := p.base(types.ChartScatter, p.id("~mark", i), penOf(s).z)
+	c.Name, c.Silent = clean(s.Label), true
+	c.Symbol, c.SymbolSize = "circle", 6
+	if s.Dash > 4 {
+		c.Symbol = cross
+	}
+	c.ItemStyle = &itemStyle{Color: paper, BorderColor: penOf(s).color, BorderWidth: 1.2, Opacity: 1}
+	const count = 9
+	at, next := points{}, 0
+	for _, q := range p.data(s) {
+		if x := p.x.at(q[0], p.width); p.x.holds(q[0]) && x >= (float64(next)+0.5)*p.width/count {
+			at = append(at, q)
+			next = int(x*count/p.width + 0.5)
+		}
+	}
+	c.Data = at
 	return c
 }
 

@@ -72,6 +72,10 @@ const (
 	level              // heights: the data and a little room above
 )
 
+// decades is how far down from the largest value a logarithmic axis of values goes by
+// itself: what lies below is noise in most pictures.
+const decades = 1e-5
+
 // spanOf is the limits of an axis px long for its values (display unit).
 func spanOf(a exhibit.Axis, values []float64, how fit, px float64) span {
 	s := span{log: a.Log, lo: math.Inf(1), hi: math.Inf(-1)}
@@ -96,7 +100,8 @@ func spanOf(a exhibit.Axis, values []float64, how fit, px float64) span {
 		s.lo, s.hi = -m, m
 	case how == tight:
 	case a.Log:
-		s.lo, s.hi = niceDown(s.lo), nice(s.hi)
+		s.hi = nice(s.hi)
+		s.lo = niceDown(max(s.lo, s.hi*decades))
 	case how == level:
 		s.lo = math.Min(s.lo, 0)
 		s.hi += 0.03 * (s.hi - s.lo)

@@ -75,6 +75,9 @@ func valueTable(p exhibit.Panel, v *Values) ValueTable {
 	if upright {
 		base, value = p.Y, p.X
 	}
+	if barred(p) {
+		return bars(p)
+	}
 	var columns []column
 	runs := true
 	for _, s := range p.Series {
@@ -209,6 +212,19 @@ func placeName(a exhibit.Axis, at float64) string {
 		}
 	}
 	return quantity.Format(at, 4)
+}
+
+// bars is the table of a panel of bars: a row a bar, its name and ends.
+func bars(p exhibit.Panel) ValueTable {
+	t := ValueTable{Heads: []string{clean(p.Y.Label), "from: " + named(p.X), "to: " + named(p.X)}}
+	for _, s := range p.Series {
+		if s.Role != exhibit.Bar {
+			continue
+		}
+		name := placeName(p.Y, p.Y.Unit.From(s.Y[0]))
+		t.Rows = append(t.Rows, []string{name, quantity.Format(p.X.Unit.From(s.X[0]), 4), quantity.Format(p.X.Unit.From(s.X[1]), 4)})
+	}
+	return t
 }
 
 // pairs is the table of curves that run back and forth: two columns a curve, in

@@ -73,3 +73,18 @@ func TestDiagonals(t *testing.T) {
 		}
 	}
 }
+
+// TestBarValues: a bar is a row: its name, and its ends.
+func TestBarValues(t *testing.T) {
+	y := exhibit.Axis{Label: "record", Names: []exhibit.TickName{{At: 1, Name: "a"}, {At: 0, Name: "b"}}}
+	bar := func(from, to, at float64) exhibit.FigSerie {
+		return exhibit.FigSerie{X: []float64{from, to}, Y: []float64{at, at}, Role: exhibit.Bar}
+	}
+	thin := bar(0.04, 5, 1)
+	thin.Role = exhibit.Data
+	v := ValuesOf(exhibit.Figure{Panels: []exhibit.Panel{{X: exhibit.Axis{Label: "period T"}, Y: y, Series: []exhibit.FigSerie{bar(0.05, 4, 1), thin, bar(0.02, 3, 0)}}}})
+	got := v.Tables[0].Rows
+	if len(got) != 2 || strings.Join(got[0], " ") != "a 0.05000 4.000" || strings.Join(got[1], " ") != "b 0.02000 3.000" {
+		t.Errorf("rows %q", got)
+	}
+}

@@ -2,6 +2,7 @@
 // off, logarithmic or linear axes; all of it also from the keyboard.
 import { echarts } from './charts.js'
 import { Cursor } from './cursor.js'
+import { respread } from './ends.js'
 import { unpack } from './packed.js'
 import { mark, prepare, setTooltip } from './prepare.js'
 import { data, picture, save } from './save.js'
@@ -75,6 +76,7 @@ export class Live {
     const height = this.height + (this.slider ? 46 : 0)
     this.live.style.height = height + 'px'
     prepare(option, this.width)
+    if (this.off.size || this.linear) respread(option, this.off)
     const zoom = list(option.dataZoom)[0]
     if (zoom) {
       Object.assign(zoom, { start: this.zoom[0], end: this.zoom[1] })
@@ -109,7 +111,9 @@ export class Live {
       mark(axis, list(this.drawn.grid)[axis.gridIndex || 0].width, 56, window)
       return { axisTick: axis.axisTick, axisLabel: axis.axisLabel }
     })
-    if (!whole || !this.whole) this.chart.setOption({ xAxis: marks })
+    // The names at the ends of curves belong to the whole; the values at the pointer name them too.
+    const names = list(this.drawn.series).filter((s) => s.id.startsWith('~end')).map((s) => ({ id: s.id, label: { show: whole } }))
+    if (!whole || !this.whole) this.chart.setOption({ xAxis: marks, series: names })
     this.zoom = range
     this.whole = whole
     if (this.reset) this.reset.hidden = whole
@@ -229,6 +233,7 @@ export class Live {
         else this.off.add(name)
         b.setAttribute('aria-pressed', String(shown))
         this.drawn.legend.selected[name] = shown
+        this.chart.setOption({ series: respread(this.drawn, this.off) })
         this.chart.dispatchAction({ type: shown ? 'legendSelect' : 'legendUnSelect', name })
       }, row)
       b.setAttribute('aria-pressed', 'true')

@@ -41,7 +41,7 @@ export function ticks(lo, hi, log, px, space) {
       if (v >= lo * (1 - 1e-9) && v <= hi * (1 + 1e-9)) out.push(v)
     }
   }
-  if (out.length < 3) return multiples(lo, hi, nice(((hi - lo) * space) / px))
+  if (out.length < 3 && (hi < 10 * lo || out.length < 2)) return multiples(lo, hi, nice(((hi - lo) * space) / px))
   for (const end of [lo, hi]) {
     const short = Number(end.toPrecision(2)) === end
     if (short && out.every((v) => Math.abs(place(v) - place(end)) >= near)) out.push(end)

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"strings"
 
 	"quoin/calc/exhibit"
@@ -105,7 +106,7 @@ func (b *static) criteria(r *Run, s *lateral.Static) {
 		}
 	}
 	permitted := map[string]string{"permitted": "permitted", "not permitted": "NOT permitted"}[s.Permitted]
-	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: name + ", " + or(permitted, "not shown to be permitted")})
+	r.Criterion(ofProcedure, "procedure", "", exhibit.Cell{Text: name + ", " + cmp.Or(permitted, "not shown to be permitted")})
 	r.Criterion(ofProcedure, "seismic weight", "W", Cell(s.Weight, u.force))
 	r.Criterion(ofProcedure, "period used", "T", exhibit.Cell{Numbers: []exhibit.Number{r.Shown("T", s.T, seconds)}})
 	if s.Cs > 0 {

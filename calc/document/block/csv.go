@@ -2,6 +2,7 @@ package block
 
 import (
 	"bytes"
+	"cmp"
 	"errors"
 	"fmt"
 	"regexp"
@@ -91,7 +92,7 @@ func (r *Run) readSheet(f field.Field, names, units field.Field) *sheet {
 			for _, c := range cells {
 				col, err := head(c)
 				if err != nil {
-					r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", or(unitHint(err), headForm))
+					r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", cmp.Or(unitHint(err), headForm))
 					return nil
 				}
 				if old := s.find(col.name); old != nil {

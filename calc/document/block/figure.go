@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"strconv"
 	"strings"
 
@@ -12,7 +13,7 @@ import (
 
 var figureKind = Kind{
 	Name:     "figure",
-	Doc:      "a chart of series or vectors of other blocks, of profiles over the height, or of ratios",
+	Doc:      "a chart of series or vectors of other blocks, of profiles over the height, of ratios, or of usable bands",
 	Makes:    "figure",
 	New:      func() Body { return &figure{} },
 	Nameless: true,
@@ -20,7 +21,7 @@ var figureKind = Kind{
 
 type figure struct {
 	common
-	Series []seriesFields `name:"series" doc:"the curves: names of series (east_rs.PSA, or east_rs.PSA@5% for one damping); x and y; a profile; or a ratio"`
+	Series []seriesFields `name:"series" doc:"the curves: names of series (east_rs.PSA, or east_rs.PSA@5% for one damping); x and y; a profile; a ratio; or a band"`
 	Over   field.Field    `name:"over" is:"block" of:"structure" doc:"of profiles: the structure whose elevations they stand over"`
 	Axes   field.Field    `name:"axes" is:"choice" of:"plain|tripartite" default:"plain" doc:"tripartite: PSV over T, both log, with diagonals of PSA and SD, of the series PSA, PSV and SD of spectra and targets"`
 	XAxis  field.Field    `name:"x_axis" is:"choice" of:"linear|log" default:"linear" doc:"linear or log"`
@@ -44,6 +45,8 @@ type seriesFields struct {
 	Profile field.Field `name:"profile" is:"any" many:"yes" doc:"a vector by level or storey, drawn over the height of the structure named by over"`
 	At      field.Field `name:"at" is:"choice" of:"levels|storeys|feet" doc:"of a profile: whether its values belong to levels (points), to storeys (steps) or to the feet of storeys (points); known for values of blocks"`
 	Ratio   field.Field `name:"ratio" is:"series" many:"yes" doc:"two series, [a, b]: a over b where both are defined; a target is computed exactly, a series is linear between its points"`
+	Band    field.Field `name:"band" is:"block" of:"record" doc:"a record, whose usable band stands as a bar over the period; the corners of its filter as a thin line"`
+	Ring    field.Field `name:"ring" is:"choice" of:"none|least|largest" default:"none" doc:"the least or the largest value between the ends of the axes is ringed and named"`
 	Label   field.Field `name:"label" is:"text" doc:"name written at the curve"`
 	Draw    field.Field `name:"draw" is:"choice" of:"data|governing|secondary|limit" doc:"how it is drawn: data in ink, the governing curve thick, secondary thin, a limit dashed"`
 }
@@ -51,7 +54,7 @@ type seriesFields struct {
 // ways are the fields of which an entry has one; x and y go together.
 func (s *seriesFields) ways() []field.Field {
 	var out []field.Field
-	for _, f := range []field.Field{s.Of, s.X, s.Profile, s.Ratio} {
+	for _, f := range []field.Field{s.Of, s.X, s.Profile, s.Ratio, s.Band} {
 		if f.Given {
 			out = append(out, f)
 		}
@@ -80,21 +83,30 @@ func (b *figure) Check(c *Checks) {
 			}
 		}
 	}
-	profiles := 0
+	profiles, bands := 0, 0
 	for i := range b.Series {
 		s := &b.Series[i]
 		ways := s.ways()
 		switch {
 		case len(ways) == 0:
-			c.Fail(s.Of, "figure-series", "an entry needs a series, x and y, a profile or a ratio").WithHint("- east_rs.PSA, or - { x: response.storey_force, y: frame.h }")
+			c.Fail(s.Of, "figure-series", "an entry needs a series, x and y, a profile, a ratio or a band").WithHint("- east_rs.PSA, or - { x: response.storey_force, y: frame.h }")
 		case len(ways) > 1:
-			c.Fail(ways[1], "figure-series", "an entry is one of: a series, x and y, a profile, a ratio")
+			c.Fail(ways[1], "figure-series", "an entry is one of: a series, x and y, a profile, a ratio, a band")
 		case s.X.Given != s.Y.Given:
 			c.Fail(ways[0], "figure-series", "a curve of vectors needs both x and y")
 		case s.Ratio.Given && len(s.Ratio.List) != 2:
 			c.Fail(s.Ratio, "figure-ratio", "a ratio takes two series").WithHint("ratio: [east_rs.PSA@5%%, design.PSA]")
 		case s.At.Given && !s.Profile.Given:
 			c.Fail(s.At, "figure-series", "at belongs to a profile")
+		case s.Band.Given && s.Ring.Given && s.Ring.Text() != "none":
+			c.Fail(s.Ring, "figure-series", "a band has no values to ring")
+		}
+		if s.Band.Given {
+			bands++
+		}
+		if bands > 0 && bands < i+1 && len(ways) > 0 {
+			c.Fail(ways[0], "figure-band", "bands stand over the period alone; other curves need a figure of their own")
+			return
 		}
 		if s.Profile.Given {
 			profiles++
@@ -125,6 +137,7 @@ type drawn struct {
 	name       string // of the value axis, where the curve knows it
 	role       exhibit.Role
 	step, dots bool
+	ring       string      // "least" or "largest": that value is ringed
 	from       field.Field // where the document asks for it
 }
 
@@ -139,18 +152,21 @@ func (b *figure) Run(r *Run) {
 			some = b.profile(r, s)
 		case s.Ratio.Given:
 			some = b.ratio(r, s)
+		case s.Band.Given:
+			some = b.band(r, s, i+1) // rows count from the top
 		case s.Of.Given:
 			some = b.series(r, s)
 		default:
 			some = b.vectors(r, s)
 		}
 		for _, d := range some {
-			if s.Label.Given {
+			if s.Label.Given && !s.Band.Given {
 				d.label = s.Label.Text()
 			}
-			if s.Draw.Given {
+			if s.Draw.Given && !s.Band.Given {
 				d.role = exhibit.Role(s.Draw.Text())
 			}
+			d.ring = s.Ring.Text()
 			all = append(all, d)
 		}
 	}
@@ -163,7 +179,7 @@ func (b *figure) Run(r *Run) {
 	first := all[0]
 	for _, d := range all {
 		if !d.X.Dim.Is(first.X.Dim) || !d.Y.Dim.Is(first.Y.Dim) {
-			r.Fail(d.from, "dimension", "%s cannot stand on the axes of the first series: it is %s over %s, the first is %s over %s", or(d.ID, d.label), d.Y.Dim.Name(), d.X.Dim.Name(), first.Y.Dim.Name(), first.X.Dim.Name())
+			r.Fail(d.from, "dimension", "%s cannot stand on the axes of the first series: it is %s over %s, the first is %s over %s", cmp.Or(d.ID, d.label), d.Y.Dim.Name(), d.X.Dim.Name(), first.Y.Dim.Name(), first.X.Dim.Name())
 			return
 		}
 	}
@@ -171,16 +187,16 @@ func (b *figure) Run(r *Run) {
 	if !ok {
 		return
 	}
-	id := r.Name
-	if id == "" {
-		id = "figure-line-" + quantity.Plain(float64(r.Place.Line))
-	}
 	var names []string
 	for _, d := range all {
-		names = append(names, d.label)
+		if d.label != "" {
+			names = append(names, d.label)
+		}
 	}
 	caption := b.Caption.Text()
-	if caption == "" {
+	if caption == "" && b.bands() {
+		caption = "Usable bands of the records, corners of their filters as thin lines"
+	} else if caption == "" {
 		caption = strings.Join(names, ", ")
 	}
 	alt := p.Y.Label + " against " + p.X.Label
@@ -190,8 +206,11 @@ func (b *figure) Run(r *Run) {
 	if b.tripartite() {
 		alt = "PSV against period, both logarithmic, with diagonals of PSA and SD,"
 	}
+	if b.bands() {
+		alt = "Usable periods of the records, a bar each,"
+	}
 	r.Echo.Rows = nil // the figure shows its inputs
-	r.Figure(exhibit.Figure{ID: id, Caption: caption, Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})
+	r.Figure(exhibit.Figure{ID: r.Stem(), Caption: caption + b.bases(r, caption, names), Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})
 }
 
 // mostDots is how many points of vectors are marked one by one; more are a curve.
@@ -241,11 +260,4 @@ func literalText(f field.Field, i int) bool {
 		return f.Tree.Op == expr.Literal
 	}
 	return i < len(f.Trees) && f.Trees[i].Op == expr.Literal
-}
-
-func or(a, b string) string {
-	if a != "" {
-		return a
-	}
-	return b
 }

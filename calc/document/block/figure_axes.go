@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"regexp"
 	"slices"
 	"strings"
@@ -21,19 +22,27 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 	dash := map[exhibit.Role]int{}
 	for _, d := range all {
 		f := exhibit.FigSerie{ID: d.ID, Label: d.label, X: d.X.SI, Y: d.Y.SI, Role: d.role, Step: d.step, Dots: d.dots}
-		if f.Role == exhibit.Data || f.Role == exhibit.Governing {
-			f.Dash = dash[f.Role] % 4
+		if f.Role == exhibit.Data && b.bands() {
+			f.Dash = 0
+		} else if f.Role == exhibit.Data || f.Role == exhibit.Governing {
+			if f.Role == exhibit.Data && dash[f.Role] == 0 && b.Over.Given && governed(all) {
+				dash[f.Role]++ // curves of profiles are few and alike: thickness alone does not part them
+			}
+			f.Dash = dash[f.Role] % dashes
 			dash[f.Role]++
 		}
 		p.Series = append(p.Series, f)
 	}
-	p.X = exhibit.Axis{Label: or(b.XLabel.Text(), axisName(xs.Dim)), Unit: xu, Log: b.XAxis.Text() == "log" || b.tripartite()}
-	p.Y = exhibit.Axis{Label: or(b.YLabel.Text(), or(agreed(all), axisName(ys.Dim))), Unit: yu, Log: b.YAxis.Text() == "log" || b.tripartite()}
+	p.X = exhibit.Axis{Label: cmp.Or(b.XLabel.Text(), axisName(xs.Dim)), Unit: xu, Log: b.XAxis.Text() == "log" || b.tripartite()}
+	p.Y = exhibit.Axis{Label: cmp.Or(b.YLabel.Text(), agreed(all), axisName(ys.Dim)), Unit: yu, Log: b.YAxis.Text() == "log" || b.tripartite()}
 	if xs.Dim.Is(quantity.Time) && !b.XLabel.Given && r.histories(all) {
 		p.X.Label = "time t"
 	}
 	if b.Over.Given {
 		b.height(r, &p, all)
+	}
+	if b.bands() {
+		b.rows(&p)
 	}
 	if b.Series[0].Ratio.Given {
 		p.Lines = append(p.Lines, exhibit.RefLine{At: 1, Label: "1"})
@@ -52,6 +61,7 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 	if !value.Log && value.Min == nil && positive(p.Series, b.Over.Given) && (value.Max == nil || *value.Max > 0) {
 		value.Min = zero()
 	}
+	b.rings(&p, all)
 	return p, b.inView(r, &p) && b.marks(r, &p, b.Mark, p.X, true) && b.marks(r, &p, b.MarkY, p.Y, false)
 }
 
@@ -178,6 +188,9 @@ func (b *figure) marks(r *Run, p *exhibit.Panel, f field.Field, a exhibit.Axis, 
 	}
 	for i, x := range f.Value.SI {
 		text := quantity.Format(a.Unit.From(x), 3)
+		if i < len(f.List) && len(f.List) == len(f.Value.SI) && literalText(f, i) { // as it was written
+			text = short(round12(a.Unit.From(x)))
+		}
 		if u := a.Unit.Pretty(); u != "" {
 			text += " " + u
 		}
@@ -225,12 +238,59 @@ func axisName(d quantity.Dim) string {
 	return "value"
 }
 
-// agreed names the value axis, where the curves agree.
+// agreed names the value axis, where the curves that know a name agree.
 func agreed(all []drawn) string {
+	name := ""
 	for _, d := range all {
-		if d.name != all[0].name {
+		if d.name != "" && name != "" && d.name != name {
 			return ""
 		}
+		name = cmp.Or(name, d.name)
 	}
-	return all[0].name
+	return name
+}
+
+// dashes is how many ways of drawing a curve of one role are told apart.
+const dashes = 6
+
+func governed(all []drawn) bool {
+	return slices.ContainsFunc(all, func(d drawn) bool { return d.role == exhibit.Governing })
+}
+
+// rings names the least or the largest value of the curves that ask for it, of the
+// points that lie between the ends of the axes.
+func (b *figure) rings(p *exhibit.Panel, all []drawn) {
+	holds := func(a exhibit.Axis, v float64) bool {
+		return (a.Min == nil || v >= *a.Min) && (a.Max == nil || v <= *a.Max)
+	}
+	for i, d := range all {
+		if d.ring != "least" && d.ring != "largest" {
+			continue
+		}
+		s, best := p.Series[i], -1
+		value, at := s.Y, s.X
+		va, pa := p.Y, p.X
+		if b.Over.Given {
+			value, at, va, pa = s.X, s.Y, p.X, p.Y
+		}
+		for k := range value {
+			if holds(p.X, s.X[k]) && holds(p.Y, s.Y[k]) && (best < 0 || d.ring == "least" && value[k] < value[best] || d.ring == "largest" && value[k] > value[best]) {
+				best = k
+			}
+		}
+		if best < 0 {
+			continue
+		}
+		words := func(a exhibit.Axis, v float64) string {
+			return strings.TrimSpace(quantity.Format(a.Unit.From(v), 3) + " " + a.Unit.Pretty())
+		}
+		text := words(va, value[best]) + " at " + words(pa, at[best])
+		if k := slices.IndexFunc(pa.Names, func(n exhibit.TickName) bool { return n.At == at[best] }); k >= 0 {
+			text = words(va, value[best]) + " at " + pa.Names[k].Name
+		}
+		if d.step && b.Over.Given { // in the storey, not at its top
+			text = words(va, value[best])
+		}
+		p.Points = append(p.Points, exhibit.RefPoint{X: s.X[best], Y: s.Y[best], Label: text})
+	}
 }

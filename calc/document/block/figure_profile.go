@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"slices"
 	"strings"
 
@@ -60,7 +61,7 @@ func (b *figure) profile(r *Run, s *seriesFields) []drawn {
 	}
 	if len(names) > 0 && !slices.ContainsFunc(names, func(n string) bool { return strings.TrimSuffix(n, "_limit") != strings.TrimSuffix(names[0], "_limit") }) {
 		own := strings.TrimSuffix(names[0], "_limit")
-		d.name = or(spoken[own], strings.ReplaceAll(own, "_", " "))
+		d.name = cmp.Or(spoken[own], strings.ReplaceAll(own, "_", " "))
 	}
 	x, y := slices.Clone(v.SI), slices.Clone(m.H)
 	switch at {
@@ -125,8 +126,8 @@ func (r *Run) vectorNames(tree *expr.Node) (names []string, plain bool) {
 func (b *figure) height(r *Run, p *exhibit.Panel, all []drawn) {
 	m := r.Product(b.Over.Text()).(*structure.Model)
 	label := b.YLabel.Text()
-	p.X.Label = or(b.XLabel.Text(), or(agreed(all), axisName(all[0].X.Dim)))
+	p.X.Label = cmp.Or(b.XLabel.Text(), agreed(all), axisName(all[0].X.Dim))
 	unit := p.Y.Unit
 	p.Y = levelAxis(m.Levels, m.H, unit)
-	p.Y.Label = or(label, p.Y.Label)
+	p.Y.Label = cmp.Or(label, p.Y.Label)
 }

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"math"
 	"slices"
 	"strings"
@@ -30,7 +31,7 @@ func (b *figure) series(r *Run, s *seriesFields) []drawn {
 		what, _, _ = strings.Cut(what, "@")
 		d.name = what
 		if r.KindOf(block) == "record" {
-			d.name = or(histories[what], what)
+			d.name = cmp.Or(histories[what], what)
 		}
 		out[i] = d
 	}
@@ -121,7 +122,7 @@ func (b *figure) extend(t *standard.Target, c *exhibit.Curve) {
 	}
 	least := from
 	// Shorter periods are not drawn by custom: the spectrum is flat there.
-	if b.tripartite() && !b.From.Given {
+	if log && !b.From.Given {
 		least = math.Max(from, 0.01)
 	}
 	grid = slices.DeleteFunc(grid, func(T float64) bool { return T < least || T > to })

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"math"
 	"slices"
 	"strings"
@@ -25,7 +26,7 @@ func (b *figure) pseudoVelocity(r *Run, all []drawn) bool {
 			"PSA": spectrum.FromPSA, "SD": spectrum.FromSD, "PSV": func(y, _ float64) float64 { return y },
 		}[what]
 		if !ok || !d.X.Dim.Is(quantity.Time) {
-			r.Fail(d.from, "figure-tripartite", "tripartite axes take the PSA, PSV or SD of spectra and targets; this is %s", or(d.ID, d.label)).
+			r.Fail(d.from, "figure-tripartite", "tripartite axes take the PSA, PSV or SD of spectra and targets; this is %s", cmp.Or(d.ID, d.label)).
 				WithHint("- east_rs.PSV")
 			return false
 		}

@@ -25,6 +25,9 @@ func (b *building) checkMatrices(c *Checks) {
 		c.Diags.Errorf("structure-form", c.Place, "the structure is given twice: by storeys and by matrices").WithHint("give storeys, or elevation, mass and stiffness")
 		return
 	}
+	if b.Levels.Given && len(b.Levels.List) == 0 && !b.Elevation.Given && !b.hasMass() && !b.hasWeight() && !b.hasStiffness() {
+		return // storeys under a wrong name, as said
+	}
 	if !b.Elevation.Given {
 		c.Diags.Errorf("missing-field", c.Place, "a structure by matrices needs the field elevation").WithHint("the elevation of each level above the base, lowest first:  elevation: [4 m, 7.5 m]")
 	}

@@ -2,6 +2,7 @@ package block
 
 import (
 	"bytes"
+	"cmp"
 	"fmt"
 	"slices"
 	"strconv"
@@ -319,7 +320,7 @@ func (r *Run) heads(row []cell, unitField field.Field, unit **quantity.Unit, m m
 	for _, c := range row {
 		col, err := head(c)
 		if err != nil {
-			r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", or(unitHint(err), headForm))
+			r.Diags.Errorf("table-head", c.at, "%s", err).WithHint("%s", cmp.Or(unitHint(err), headForm))
 			return false
 		}
 		names = append(names, strings.ToLower(col.name))

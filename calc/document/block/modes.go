@@ -191,4 +191,29 @@ func (b *modes) figure(r *Run, s *modal.Modes) {
 		})
 	}
 	r.Figure(fig)
+	b.masses(r, s)
+}
+
+// masses draws the running sum of the effective masses against what is needed.
+func (b *modes) masses(r *Run, s *modal.Modes) {
+	if s.Count() < 2 {
+		return
+	}
+	x, y := []float64{0}, []float64{0}
+	axis := exhibit.Axis{Label: "mode", Min: zero()}
+	one := 1.0
+	p := exhibit.Panel{Y: exhibit.Axis{Label: "effective mass of the modes up to this one", Unit: percent, Min: zero(), Max: &one}}
+	for i, sum := range s.MassSum {
+		x, y = append(x, float64(i+1)), append(y, min(sum, 1))
+		axis.Names = append(axis.Names, exhibit.TickName{At: float64(i + 1), Name: strconv.Itoa(i + 1)})
+		if sum >= modal.MassNeeded && (i == 0 || s.MassSum[i-1] < modal.MassNeeded) {
+			p.Points = []exhibit.RefPoint{{X: float64(i + 1), Y: min(sum, 1), Label: quantity.Format(100*sum, 3) + " % up to mode " + strconv.Itoa(i+1) + ", " + quantity.Format(s.T[i], 3) + " s"}}
+		}
+	}
+	p.X = axis
+	needed := short(100 * modal.MassNeeded)
+	p.Series = []exhibit.FigSerie{{X: x, Y: y, Role: exhibit.Data, Dots: s.Count() <= mostDots}}
+	p.Lines = []exhibit.RefLine{{At: modal.MassNeeded, Label: needed + " %"}}
+	r.Figure(exhibit.Figure{ID: r.Name + "-mass", Caption: "Cumulative effective mass of the modes of " + b.of(r) + ", with " + needed + " % marked", Panels: []exhibit.Panel{p},
+		Alt: "Running sum of the effective masses over the modes, of the total mass: " + quantity.Format(100*s.MassSum[s.Count()-1], 3) + " % with all " + strconv.Itoa(s.Count()) + "."})
 }

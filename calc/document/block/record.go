@@ -164,6 +164,9 @@ func (b *record) read(r *Run) *motion.Record {
 		var ae *archive.Error
 		if errors.As(err, &ae) {
 			hint, text = ae.Hint, ae.Summary
+			if ae.Channel && b.Channel.Given {
+				at = b.Channel.At
+			}
 			if ae.Line > 0 {
 				at = diag.Range{File: full, Line: ae.Line, Column: ae.Column, EndLine: ae.Line, EndColumn: ae.Column + ae.Width}
 			}
@@ -303,8 +306,11 @@ func (b *record) results(r *Run, asRead, rec *motion.Record) {
 	aID := r.Curve("a", t, seconds, rec.A, accel)
 	vID := r.Curve("v", t, seconds, v, u.velocity)
 	dID := r.Curve("d", t, seconds, d, u.small)
+	var husid []float64
+	husidID := ""
 	if m.Arias > 0 {
-		r.Curve("husid", t, seconds, motion.Husid(rec), percent)
+		husid = motion.Husid(rec)
+		husidID = r.Curve("husid", t, seconds, husid, percent)
 	}
 	if f, amplitude := motion.Amplitude(rec); len(f) > 1 {
 		r.Curve("fourier", f, quantity.MustUnit("Hz"), amplitude, u.velocity)
@@ -315,13 +321,19 @@ func (b *record) results(r *Run, asRead, rec *motion.Record) {
 		p.Points = []exhibit.RefPoint{{X: at, Y: peak, Label: quantity.Format(unit.From(peak), 3) + " " + unit.Pretty() + " at " + quantity.Format(at, 3) + " s"}}
 		return p
 	}
-	r.Figure(exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Acceleration, velocity and displacement of "+r.Name+", as used"),
+	fig := exhibit.Figure{ID: r.Name, Caption: Lines(&b.common, "Acceleration, velocity and displacement of "+r.Name+", as used"),
 		Alt: "Histories of ground acceleration, velocity and displacement over " + quantity.Format(rec.Duration(), 4) + " s; the peaks are ringed.",
 		Panels: []exhibit.Panel{
 			panel(aID, "a", "a", rec.A, inG, m.TimePGA, at(rec.A, rec.Step, m.TimePGA)),
 			panel(vID, "v", "v", v, u.velocity, m.TimePGV, signed(v, rec.Step, m.TimePGV, m.PGV)),
 			panel(dID, "d", "d", d, u.small, m.TimePGD, signed(d, rec.Step, m.TimePGD, m.PGD)),
-		}})
+		}}
+	if m.Arias > 0 {
+		fig.Caption += ", and the build-up of the Arias intensity"
+		fig.Alt += " Below them the share of the Arias intensity, from 0 to 100 %."
+		fig.Panels = append(fig.Panels, buildUp(husidID, t, husid, m))
+	}
+	r.Figure(fig)
 	row := func(words, name string, si float64, unit quantity.Unit, when float64) []exhibit.Cell {
 		c := []exhibit.Cell{{Text: words}, {Numbers: []exhibit.Number{r.Shown(name, si, unit)}}, {Text: unit.Pretty()}, {}}
 		if when >= 0 {

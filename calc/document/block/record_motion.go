@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"math"
 
 	"quoin/calc/document/field"
@@ -34,8 +35,8 @@ func (b *record) motion(r *Run, asRead, used *motion.Record, m motion.Measures) 
 		peak = max(peak, math.Abs(a))
 	}
 	v := &exhibit.Motion{
-		Event: or(b.Event.Text(), o.Event), Date: or(b.Date.Text(), o.Date), Mechanism: b.Mechanism.Text(), Magnitude: b.Magnitude.Text(),
-		Station: or(b.Station.Text(), o.Station), Component: or(b.Component.Text(), o.Component),
+		Event: cmp.Or(b.Event.Text(), o.Event), Date: cmp.Or(b.Date.Text(), o.Date), Mechanism: b.Mechanism.Text(), Magnitude: b.Magnitude.Text(),
+		Station: cmp.Or(b.Station.Text(), o.Station), Component: cmp.Or(b.Component.Text(), o.Component),
 		Distance: number(b.Distance, b.Distance.Value.Unit), DistanceIs: b.DistanceIs.Text(), Vs30: number(b.Vs30, b.Vs30.Value.Unit), Vs30Is: b.Vs30Is.Text(),
 		Azimuth: number(b.Azimuth, pure), File: b.File.Text(), Format: o.Format, UnitInFile: o.UnitInFile, Source: b.Source.Text(),
 		FileSamples: asRead.Samples(), Samples: used.Samples(), Step: exact(used.Step), Duration: exact(used.Duration()),
@@ -48,4 +49,15 @@ func (b *record) motion(r *Run, asRead, used *motion.Record, m motion.Measures) 
 		v.Processing = append([]string{"cut to a stretch"}, v.Processing...)
 	}
 	r.Motion = v
+}
+
+// buildUp is the panel of the Arias intensity as it comes in: shares of the whole over
+// time, with 5 and 95 % and the duration between them.
+func buildUp(id string, t, husid []float64, m motion.Measures) exhibit.Panel {
+	one := 1.0
+	at := func(t float64) string { return quantity.Format(t, 3) + " s" }
+	return exhibit.Panel{X: exhibit.Axis{Label: "time t", Unit: seconds}, Y: exhibit.Axis{Label: "Arias intensity so far", Unit: percent, Min: zero(), Max: &one},
+		Series: []exhibit.FigSerie{{ID: id, Label: "I", X: t, Y: husid, Role: exhibit.Data}},
+		Lines: []exhibit.RefLine{{At: 0.05, Label: "5 %"}, {At: 0.95, Label: "95 %"},
+			{Vertical: true, At: m.T5, Label: at(m.T5)}, {Vertical: true, At: m.T95, Label: "D5-95 = " + at(m.D5to95) + ", to " + at(m.T95)}}}
 }

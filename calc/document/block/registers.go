@@ -5,7 +5,6 @@ import (
 
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
-	"quoin/calc/quantity"
 )
 
 var assumptionsKind = Kind{
@@ -32,7 +31,7 @@ type assumption struct {
 func (b *assumptions) Run(r *Run) {
 	seen := map[string]bool{}
 	open := 0
-	t := exhibit.Table{ID: or(r.Name, "assumptions-line-"+quantity.Plain(float64(r.Place.Line))), Caption: Lines(&b.common, "Assumptions"),
+	t := exhibit.Table{ID: r.Stem(), Caption: Lines(&b.common, "Assumptions"),
 		Columns: []exhibit.Column{Words("id"), Words("assumption"), Words("basis"), Words("status"), Words("by"), Words("when")}}
 	for _, a := range b.Items {
 		if seen[a.ID.Text()] {
@@ -86,7 +85,7 @@ func (b *references) Run(r *Run) {
 		}
 		r.References = append(r.References, exhibit.Reference{Key: key, Text: ref.Text.Text(), User: true})
 	}
-	t := exhibit.Table{ID: or(r.Name, "references-line-"+quantity.Plain(float64(r.Place.Line))), Caption: Lines(&b.common, "References of this document"), Columns: []exhibit.Column{Words("key"), Words("reference")}}
+	t := exhibit.Table{ID: r.Stem(), Caption: Lines(&b.common, "References of this document"), Columns: []exhibit.Column{Words("key"), Words("reference")}}
 	for _, ref := range r.References {
 		t.Rows = append(t.Rows, []exhibit.Cell{{Text: ref.Key}, {Text: ref.Text}})
 	}

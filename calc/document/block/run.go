@@ -2,7 +2,9 @@ package block
 
 import (
 	"bytes"
+	"cmp"
 	"fmt"
+	"strconv"
 	"strings"
 
 	"quoin/calc/cite"
@@ -66,8 +68,18 @@ type Run struct {
 	Env
 	Name  string
 	Kind  Kind
+	Order int        // among the blocks of its kind without a name, from 1
 	Place diag.Range // of the block's info string
 	Result
+}
+
+// Stem is what the tables and figures of the block are called by: its name, or its
+// kind and order.
+func (r *Run) Stem() string {
+	if r.Name != "" {
+		return r.Name
+	}
+	return r.Kind.Name + "-" + strconv.Itoa(r.Order)
 }
 
 // Read reads a file; one whose head says that it was made up makes the package a
@@ -116,7 +128,7 @@ func (r *Run) Warn(code, format string, args ...any) {
 func (r *Run) WarnAt(f field.Field, code, format string, args ...any) {
 	text := fmt.Sprintf(format, args...)
 	r.Warnings = append(r.Warnings, text)
-	r.Diags.Warnf(code, f.At, "%s: %s", or(r.Name, r.Kind.Name), text)
+	r.Diags.Warnf(code, f.At, "%s: %s", cmp.Or(r.Name, r.Kind.Name), text)
 }
 
 // Caution triggers a sentence of the limitations section.

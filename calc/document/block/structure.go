@@ -4,6 +4,7 @@ import (
 	"errors"
 	"strings"
 
+	"quoin/calc/diag"
 	"quoin/calc/document/field"
 	"quoin/calc/exhibit"
 	"quoin/calc/quantity"
@@ -33,7 +34,7 @@ type building struct {
 	common
 	Storeys   []storeyFields  `name:"storeys" doc:"the storeys, lowest first; or a CSV file with these columns"`
 	Elevation field.Field     `name:"elevation" is:"length" many:"yes" doc:"of a model by matrices: elevation of each level above the base, lowest first"`
-	Levels    field.Field     `name:"levels" is:"text" many:"yes" doc:"of a model by matrices: names of the levels; L1, L2, ... if not given"`
+	Levels    field.Field     `name:"levels" is:"text" many:"yes" hint:"levels are names alone; storeys with height, weight and stiffness are the field storeys" doc:"of a model by matrices: names of the levels; L1, L2, ... if not given"`
 	Mass      massFields      `name:"mass" doc:"of a model by matrices: mass at each level, or a mass matrix; one freedom a level"`
 	Weight    weightFields    `name:"weight" doc:"of a model by matrices: seismic weight at each level, in place of its mass"`
 	Stiffness stiffnessFields `name:"stiffness" doc:"of a model by matrices: the lateral stiffness matrix"`
@@ -79,7 +80,8 @@ func (b *building) Check(c *Checks) {
 
 // Run builds the model.
 func (b *building) Run(r *Run) {
-	model, given := b.fromStoreys(r), (*matrixPair)(nil)
+	model, read := b.fromStoreys(r)
+	var given *matrixPair
 	if b.byMatrices() {
 		model, given = b.fromMatrices(r)
 	}
@@ -92,24 +94,24 @@ func (b *building) Run(r *Run) {
 		r.Caution(k)
 	}
 	b.results(r, model, given)
-	b.doubts(r, model)
+	b.doubts(r, model, read)
 }
 
 // doubts warns of an order of levels and of masses that are likely slips.
-func (b *building) doubts(r *Run, m *structure.Model) {
-	at := func(i int, of func(s *storeyFields) field.Field) field.Field {
+func (b *building) doubts(r *Run, m *structure.Model, read []storeyCells) {
+	at := func(i int, of func(s *storeyFields) field.Field, in func(c storeyCells) diag.Range) field.Field {
 		switch {
 		case b.byMatrices() && b.Levels.Given && len(b.Levels.List) == len(m.Levels):
 			return field.Field{At: b.Levels.List[i].At}
-		case !b.byMatrices() && b.Storeys[0].File.Given:
-			return b.Storeys[0].File
+		case i < len(read) && read[i].level.Line > 0:
+			return field.Field{At: in(read[i])}
 		case !b.byMatrices():
 			return of(&b.Storeys[i])
 		}
 		return field.Field{At: r.Place}
 	}
 	if structure.Falling(m.Levels) {
-		r.WarnAt(at(0, func(s *storeyFields) field.Field { return s.Level }), "storey-order", "the levels run from %s to %s, and the lowest comes first: they look listed from the roof down", m.Levels[0], m.Levels[len(m.Levels)-1])
+		r.WarnAt(at(0, func(s *storeyFields) field.Field { return s.Level }, func(c storeyCells) diag.Range { return c.level }), "storey-order", "the levels run from %s to %s, and the lowest comes first: they look listed from the roof down", m.Levels[0], m.Levels[len(m.Levels)-1])
 	}
 	for _, i := range structure.Light(m.Mass) {
 		r.WarnAt(at(i, func(s *storeyFields) field.Field {
@@ -117,15 +119,21 @@ func (b *building) doubts(r *Run, m *structure.Model) {
 				return s.Mass
 			}
 			return s.Weight
-		}), "light-level", "the mass at level %s is below 2 %% of the usual one of the other levels: is its unit right?", m.Levels[i])
+		}, func(c storeyCells) diag.Range { return c.load }), "light-level", "the mass at level %s is below 2 %% of the usual one of the other levels: is its unit right?", m.Levels[i])
 	}
 }
 
-// fromStoreys is the shear building of the storeys; nil where they are at fault.
-func (b *building) fromStoreys(r *Run) *structure.Model {
+// storeyCells is where a storey read from a file says its level, and its weight or
+// mass; nowhere, for a storey of the document.
+type storeyCells struct{ level, load diag.Range }
+
+// fromStoreys is the shear building of the storeys, with where they were read; nil
+// where they are at fault.
+func (b *building) fromStoreys(r *Run) (*structure.Model, []storeyCells) {
 	if len(b.Storeys) == 0 {
-		return nil
+		return nil, nil
 	}
+	var read []storeyCells
 	var storeys []structure.Storey
 	var file field.Field
 	for i := range b.Storeys {
@@ -133,13 +141,14 @@ func (b *building) fromStoreys(r *Run) *structure.Model {
 		if s.File.Given {
 			file = s.File
 			r.Used("storeys", "storeys", plain(s.File.Text()), "")
-			rows := r.storeysFrom(s.File)
+			rows, cells := r.storeysFrom(s.File)
 			if rows == nil {
-				return nil
+				return nil, nil
 			}
-			storeys = append(storeys, rows...)
+			storeys, read = append(storeys, rows...), append(read, cells...)
 			continue
 		}
+		read = append(read, storeyCells{})
 		storeys = append(storeys, structure.Storey{Level: s.Level.Text(), Height: s.Height.SI(), Weight: s.Weight.SI(), Mass: s.Mass.SI(), Stiffness: s.Stiffness.SI()})
 	}
 	model, err := structure.Shear(storeys, b.Damping.SI())
@@ -151,9 +160,9 @@ func (b *building) fromStoreys(r *Run) *structure.Model {
 		for _, e := range unjoin(err) {
 			r.Fail(at, "structure", "%s", e)
 		}
-		return nil
+		return nil, nil
 	}
-	return model
+	return model, read
 }
 
 // unjoin splits joined errors.
@@ -166,10 +175,10 @@ func unjoin(err error) []error {
 }
 
 // storeysFrom reads storeys from a CSV file.
-func (r *Run) storeysFrom(f field.Field) []structure.Storey {
+func (r *Run) storeysFrom(f field.Field) ([]structure.Storey, []storeyCells) {
 	s := r.readSheet(f, field.Field{}, field.Field{})
 	if s == nil {
-		return nil
+		return nil, nil
 	}
 	level := s.find("level")
 	for _, c := range s.columns {
@@ -177,16 +186,17 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 		case "level", "height", "weight", "mass", "stiffness":
 		default:
 			r.Diags.Errorf("unknown-column", c.at, "a table of storeys has no column %s", c.name).WithHint("its columns are level, height, weight or mass, stiffness")
-			return nil
+			return nil, nil
 		}
 	}
 	if level == nil {
 		r.Fail(f, "missing-column", "%s has no column level", s.path).WithHint("%s", s.names())
-		return nil
+		return nil, nil
 	}
 	out := make([]structure.Storey, len(level.cells))
+	cells := make([]storeyCells, len(level.cells))
 	for i, c := range level.cells {
-		out[i].Level = c.text
+		out[i].Level, cells[i].level = c.text, c.at
 	}
 	found := map[string]bool{}
 	for _, col := range []struct {
@@ -206,26 +216,29 @@ func (r *Run) storeysFrom(f field.Field) []structure.Storey {
 		if c.unit != nil && !c.unit.Dim.Is(col.dim) && (c.unit.Dim.Is(quantity.Force) || c.unit.Dim.Is(quantity.Mass)) {
 			r.Diags.Errorf("dimension", c.at, "the column %s must be %s, its unit %s is %s", c.name, col.dim.Name(), c.unit.Pretty(), c.unit.Dim.Name()).
 				WithHint("a column weight holds forces (kN, kip), a column mass masses (t, kg): rename the column, or correct its unit")
-			return nil
+			return nil, nil
 		}
 		x, _, ok := r.numbers(c, col.dim)
 		if !ok {
-			return nil
+			return nil, nil
 		}
 		found[col.name] = true
 		for i, v := range x {
 			if !(v > 0) {
 				r.Diags.Errorf("bounds", c.cells[i].at, "the %s at level %s must be greater than zero", col.name, out[i].Level)
-				return nil
+				return nil, nil
 			}
 			col.set(&out[i], v)
+			if col.name == "weight" || col.name == "mass" {
+				cells[i].load = c.cells[i].at
+			}
 		}
 	}
 	if !found["height"] || !found["stiffness"] || found["weight"] == found["mass"] {
 		r.Fail(f, "missing-column", "%s needs the columns level, height, stiffness, and one of weight and mass", s.path).WithHint("%s", s.names())
-		return nil
+		return nil, nil
 	}
-	return out
+	return out, cells
 }
 
 func (b *building) results(r *Run, m *structure.Model, given *matrixPair) {

@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"math"
 	"slices"
 	"strconv"
@@ -77,10 +78,7 @@ func (b *table) Check(c *Checks) {
 // Run makes the table.
 func (b *table) Run(r *Run) {
 	r.Echo.Rows = nil // the table shows its inputs
-	t := exhibit.Table{ID: r.Name}
-	if t.ID == "" {
-		t.ID = "table-line-" + quantity.Plain(float64(r.Place.Line))
-	}
+	t := exhibit.Table{ID: r.Stem()}
 	ok := false
 	switch {
 	case b.File.Given:
@@ -178,7 +176,7 @@ func (b *table) side(r *Run, t *exhibit.Table) bool {
 		if !ok {
 			return false
 		}
-		col := Col(or(c.Head.Text(), c.Value.Written), unit)
+		col := Col(cmp.Or(c.Head.Text(), c.Value.Written), unit)
 		switch tree := c.Value.Tree; {
 		case symbolHead(c.Head.Text()):
 			col.Symbol, col.Bare = &expr.Node{Op: expr.Name, Text: c.Head.Text()}, true

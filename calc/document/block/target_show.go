@@ -1,6 +1,7 @@
 package block
 
 import (
+	"cmp"
 	"fmt"
 	"slices"
 	"strings"
@@ -58,6 +59,10 @@ func (b *target) results(r *Run, t *standard.Target, at places) {
 	}
 	for _, note := range t.Notes {
 		r.Explain(typeset(note))
+	}
+	if t.Ordinates() != nil {
+		r.Symbol("S_aM", "MCE_R pseudo-acceleration", inG)
+		r.Equation(`S_\mathrm{a} = \tfrac23\,S_\mathrm{aM}`, "design ordinates from the MCE_R ordinates given, at each of the 22 periods", t.Branches[0].Ref)
 	}
 	worst := max(r.parameters(t, std), r.ordinates(t))
 	if t.Basis != tableBasis {
@@ -119,7 +124,7 @@ func inOrder(all []standard.Parameter) []standard.Parameter {
 	var out []standard.Parameter
 	for len(all) > 0 {
 		ready := slices.IndexFunc(all, func(p standard.Parameter) bool {
-			tree, _ := formula.ParseExpr(or(p.Formula, "1"), nil)
+			tree, _ := formula.ParseExpr(cmp.Or(p.Formula, "1"), nil)
 			return !slices.ContainsFunc(formula.Deps(tree), func(d formula.Dep) bool {
 				return slices.ContainsFunc(all, func(q standard.Parameter) bool { return q.Symbol == d.Path })
 			})
@@ -259,12 +264,27 @@ func (b *target) standing(r *Run, t *standard.Target) {
 func (b *target) branches(r *Run, t *standard.Target) {
 	if t.Basis == tableBasis || t.MultiPeriod {
 		tab := exhibit.Table{ID: r.Name + "-rows", Caption: "Rows of " + r.Name, Columns: []exhibit.Column{Col("period T", seconds), Col(axisSymbol(t), inG)}}
+		given := t.Ordinates()
+		if given != nil {
+			tab.Caption += ": MCE_R ordinates as given, and the ordinates of the design spectrum, two thirds of them"
+			tab.Columns = []exhibit.Column{Col("period T", seconds), Col("SaM, as given", inG), Col(axisSymbol(t), inG)}
+		}
+		add := func(T, y float64) {
+			row := []exhibit.Cell{inUnits(T, seconds), Cell(y, inG)}
+			if given != nil {
+				row = []exhibit.Cell{row[0], {}, row[1]}
+				if k := len(tab.Rows); k < len(given) {
+					row[1] = inUnits(given[k], inG)
+				}
+			}
+			tab.Rows = append(tab.Rows, row)
+		}
 		for i, br := range t.Branches {
 			if i == 0 {
-				tab.Rows = append(tab.Rows, []exhibit.Cell{inUnits(br.From, seconds), Cell(br.At(br.From), inG)})
+				add(br.From, br.At(br.From))
 			}
 			if br.To > 0 {
-				tab.Rows = append(tab.Rows, []exhibit.Cell{inUnits(br.To, seconds), Cell(br.At(br.To), inG)})
+				add(br.To, br.At(br.To))
 			}
 		}
 		r.Table(tab)

@@ -171,22 +171,8 @@ func about(t float64) exhibit.Cell {
 
 // doubts warns of what a step will not do well on this record.
 func (b *record) doubts(r *Run, t motion.Treatment, rec, out *motion.Record, fields map[string]field.Field) {
-	switch t := t.(type) {
-	case motion.Bandpass:
-		if t.From > 0 && t.From*rec.Duration() < 1 {
-			r.WarnAt(fields["from"], "treat", "the lower corner of %s Hz is below one wave over the record (%s s): such a filter can hardly tell drift from motion", short(round12(t.From)), quantity.Format(rec.Duration(), 3))
-		}
-		peak := motion.Measure(rec).PGA
-		if ends := max(math.Abs(rec.A[0]), math.Abs(rec.A[len(rec.A)-1])); ends > 0.01*peak {
-			r.WarnAt(fields[""], "treat", "the record jumps to zero by %s %% of its peak at an end before it is filtered; taper it first", quantity.Format(100*ends/peak, 2))
-		}
-	case motion.Resample:
-		if t.Step == rec.Step {
-			r.WarnAt(fields["step"], "treat", "the record has the step of %s s already; resampling changes nothing", short(round12(t.Step)))
-		}
-		if lost := motion.Lost(rec, out); t.Step > rec.Step && lost > 0.01 {
-			r.WarnAt(fields["step"], "treat", "a step of %s s holds no motion above %s Hz: resampling removes %s %% of the energy of the record, the integral of a²", short(round12(t.Step)), quantity.Format(0.5/t.Step, 3), quantity.Format(100*lost, 3))
-		}
+	for _, d := range motion.Doubts(t, rec, out) {
+		r.WarnAt(fields[d.In], "treat", "%s", d.Text)
 	}
 }
 

@@ -214,7 +214,7 @@ func (d *decoder) field(n Node, s Spec, f *Field) {
 	var written []string
 	for _, it := range items {
 		if !it.Scalar() {
-			d.diags.Errorf("shape", it.At, "%s takes %s, this is %s", s.Name, taken(s), shape(it))
+			d.diags.Errorf("shape", it.At, "%s takes %s, this is %s", s.Name, taken(s), shape(it)).WithHint("%s", s.Hint)
 			return
 		}
 		if strings.TrimSpace(it.Text) == "" {

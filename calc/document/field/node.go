@@ -79,6 +79,8 @@ func Parse(file string, lines []Line, at diag.Range) (Node, diag.List) {
 			}
 			if name, value, ok := strings.Cut(line, "="); ok && !strings.Contains(line, ":") {
 				e.WithHint("a field is written with a colon: %s: %s", strings.TrimSpace(name), strings.TrimSpace(value))
+			} else if name, value, ok := strings.Cut(line, ":"); ok && strings.HasPrefix(strings.TrimSpace(value), "%") {
+				e.WithHint("quote it: %s: '%s'", strings.TrimSpace(name), strings.TrimSpace(value))
 			} else if strings.Contains(text.String(), "[") {
 				e.WithHint("an expression that holds brackets or commas is quoted in a list, or the whole list is: \"[0.2 * m.T[1], 2 s]\"")
 			}

@@ -1,6 +1,7 @@
 package formula
 
 import (
+	"cmp"
 	"errors"
 	"fmt"
 	"math"
@@ -354,13 +355,6 @@ func at(i int, v quantity.Value) string {
 	return fmt.Sprintf(" (item %d)", i+1)
 }
 
-func or(a, b string) string {
-	if a == "" {
-		return b
-	}
-	return a
-}
-
 // Shown gives a value the unit that its line asks for by "as".
 func Shown(v quantity.Value, line Line) (quantity.Value, *Finding) {
 	if !line.HasAs {
@@ -368,7 +362,7 @@ func Shown(v quantity.Value, line Line) (quantity.Value, *Finding) {
 	}
 	if !v.Dim.Is(line.As.Dim) {
 		return v, &Finding{Code: "dimension", From: line.AsFrom, To: line.AsTo, Hint: massHint(v.Dim, line.As.Dim),
-			Summary: fmt.Sprintf("the result is %s, and %s is a unit of %s", v.Dim.Name(), or(line.As.Text, "1"), line.As.Dim.Name())}
+			Summary: fmt.Sprintf("the result is %s, and %s is a unit of %s", v.Dim.Name(), cmp.Or(line.As.Text, "1"), line.As.Dim.Name())}
 	}
 	v.Unit = line.As
 	return v, nil

@@ -1,6 +1,7 @@
 package formula
 
 import (
+	"cmp"
 	"fmt"
 	"math"
 	"slices"
@@ -187,7 +188,7 @@ func count(e *evaluator, n *expr.Node, args []quantity.Value) (quantity.Value, b
 		return e.fail("unknown-unit", n, "%v", err)
 	}
 	if !x.Dim.Is(u.Dim) {
-		return e.failHint("dimension", n.Args[0], "name a unit of the same dimension", "num cannot count %s in %s", x.Dim.Name(), or(u.Pretty(), "1"))
+		return e.failHint("dimension", n.Args[0], "name a unit of the same dimension", "num cannot count %s in %s", x.Dim.Name(), cmp.Or(u.Pretty(), "1"))
 	}
 	out := like(x, quantity.None, quantity.Unit{})
 	for i, v := range x.SI {

@@ -152,10 +152,10 @@ func (c *content) choose(ask string) (trace, error) {
 	}
 	list := "channels: " + strings.Join(names, ", ")
 	if len(same) > 1 {
-		return trace{}, fail(fmt.Sprintf("the channels %s are all named %q; choose by number", strings.Join(same, ", "), ask), list)
+		return trace{}, ofChannel(fmt.Sprintf("the channels %s are all named %q; choose by number", strings.Join(same, ", "), ask), list)
 	}
 	if ask != "" {
-		return trace{}, fail("the file has no channel "+strconv.Quote(ask), list)
+		return trace{}, ofChannel("the file has no channel "+strconv.Quote(ask), list)
 	}
 	if len(c.traces) > 1 {
 		return trace{}, fail(fmt.Sprintf("the file has %d channels; choose one", len(c.traces)), list)

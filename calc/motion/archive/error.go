@@ -14,6 +14,7 @@ type Error struct {
 	Summary      string // one line, no full stop
 	Hint         string // what to do; may be empty
 	Excerpt      string // the line, cut to a readable length
+	Channel      bool   // it is the channel asked for that does not fit, not the file
 }
 
 func (e *Error) Error() string {
@@ -25,6 +26,11 @@ func (e *Error) Error() string {
 		s += " (" + e.Hint + ")"
 	}
 	return s
+}
+
+// ofChannel is an error about the channel asked for.
+func ofChannel(summary, hint string) *Error {
+	return &Error{Summary: summary, Hint: hint, Channel: true}
 }
 
 // fail is an error about the file as a whole.
