@@ -11,7 +11,8 @@ import (
 	"quoin/render/script"
 )
 
-// Faults is what the typesetter refuses in the document: errors with their places.
+// Faults is what the typesetter refuses in the document, or what is wrong with the
+// templates of its office: errors with their places.
 type Faults struct{ List diag.List }
 
 // Error is the first of them.

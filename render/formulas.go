@@ -2,12 +2,13 @@ package render
 
 import (
 	"quoin/calc/exhibit"
+	"quoin/render/page"
 	"quoin/render/script"
 )
 
 // Formulas sets the formulas of the prose that hold more than common commands and
-// draws nothing, for a run that writes no page. What the typesetter refuses is a
-// [*Faults], as from [Package].
+// fills the templates of the office, and draws nothing, for a run that writes no page. What
+// is refused is a [*Faults], as from [Package].
 func Formulas(p *exhibit.Package, files map[string][]byte) error {
 	r := &press{byKey: map[string]*job{}}
 	walk(p, func(n exhibit.Prose) {
@@ -19,5 +20,8 @@ func Formulas(p *exhibit.Package, files map[string][]byte) error {
 		r.ask(formulaKey(n.Text, display), equation, func() (string, error) { return script.TeX(n.Text, display) })
 	})
 	r.run(nil, func(*job) bool { return true })
-	return r.faults(p, files)
+	if err := r.faults(p, files); err != nil {
+		return err
+	}
+	return ofOffice(page.CheckOffice(p))
 }

@@ -1,6 +1,7 @@
 package render
 
 import (
+	"errors"
 	"fmt"
 	"runtime"
 	"sync"
@@ -53,6 +54,9 @@ func index(p *exhibit.Package, files map[string][]byte, digest string, o Options
 			return r.ask(formulaKey(src, display), equation, func() (string, error) { return script.TeX(src, display) })
 		}}
 	first, err := page.Render(p, options)
+	if err := ofOffice(err); err != nil {
+		return nil, err
+	}
 	if err != nil || len(r.jobs) == 0 {
 		return first, err
 	}
@@ -63,6 +67,15 @@ func index(p *exhibit.Package, files map[string][]byte, digest string, o Options
 	}
 	r.run(o.Progress, func(j *job) bool { return !isFormula(j) })
 	return page.Render(p, options)
+}
+
+// ofOffice is the faults of an office's templates among the errors of a page.
+func ofOffice(err error) error {
+	var f *page.OfficeFaults
+	if errors.As(err, &f) {
+		return &Faults{List: f.List}
+	}
+	return nil
 }
 
 // equation is the name of the jobs that set formulas.

@@ -16,7 +16,7 @@ import (
 
 // assemble makes the package of a run without errors.
 func (d *run) assemble() *exhibit.Package {
-	a := &assembly{run: d, p: &exhibit.Package{Meta: d.meta, System: d.system, Provenance: d.options.Provenance}, anchors: map[string]int{}, methods: map[string]*node{}, stems: map[string]bool{}, symbols: map[string]*exhibit.Symbol{}}
+	a := &assembly{run: d, p: &exhibit.Package{Meta: d.meta, System: d.system, Provenance: d.options.Provenance, Office: d.office}, anchors: map[string]int{}, methods: map[string]*node{}, stems: map[string]bool{}, symbols: map[string]*exhibit.Symbol{}}
 	a.p.Provenance.Overrides = d.options.Overrides
 	a.p.Provenance.Source = d.src.Main
 	for _, pt := range d.parts {

@@ -17,11 +17,14 @@ import (
 // elsewhere names the codes that no document alone provokes, and the test in
 // which they are provoked instead; the code stands there.
 var elsewhere = map[string]string{
-	"cross-check":    "block/run_test.go",                 // no sound input makes an engine differ from itself
-	"internal":       "fuzz_test.go",                      // a fault of the program: the fuzz targets look for it
-	"markdown-fault": "markdown/sound_test.go",            // as above
-	"sheet-spills":   "../../testdata/script/print.txtar", // of paper
-	"override":       "../../testdata/script/codes.txtar", // of the option --set
+	"cross-check":     "block/run_test.go",                 // no sound input makes an engine differ from itself
+	"internal":        "fuzz_test.go",                      // a fault of the program: the fuzz targets look for it
+	"markdown-fault":  "markdown/sound_test.go",            // as above
+	"sheet-spills":    "../../testdata/script/print.txtar", // of paper
+	"office-markup":   "../../render/page/office_test.go",  // of the page
+	"office-omits":    "../../render/page/office_test.go",
+	"office-template": "../../render/page/office_test.go",
+	"override":        "../../testdata/script/codes.txtar", // of the option --set
 }
 
 var numbered = regexp.MustCompile(`-\d+$`)

@@ -101,6 +101,9 @@ type run struct {
 	unnamed map[string]int // blocks without a name, by kind
 	// checked holds the checks by what they say.
 	checked map[string]*node
+
+	office         *exhibit.Office // nil: the program's own look
+	officeCautions []string
 }
 
 // part is one markdown file.
@@ -139,6 +142,7 @@ func (d *run) read() {
 		d.diags = append(d.diags, front.decode(main, md)...)
 	}
 	d.meta, d.system = front.meta(&d.diags), quantity.System(front.Units.Text())
+	d.dress(front.Office)
 	type file struct {
 		name string
 		data []byte

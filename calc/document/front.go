@@ -30,6 +30,7 @@ type frontMatter struct {
 	Revisions []revisionRow `name:"revisions" doc:"the revision table, oldest first"`
 	Status    field.Field   `name:"status" is:"choice" of:"draft|for check|issued|superseded|void" default:"draft" doc:"state of the document"`
 	Paper     field.Field   `name:"paper" is:"choice" of:"A4|Letter" default:"A4" doc:"size of the printed sheets"`
+	Office    field.Field   `name:"office" is:"file" doc:"a folder with the cover, head, palette and wording of an office (quoin blocks office)"`
 	Parts     field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
 }
 

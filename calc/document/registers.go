@@ -62,6 +62,9 @@ func (a *assembly) cautions() {
 	for _, c := range standing {
 		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Text: c.text})
 	}
+	for _, text := range a.officeCautions {
+		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: "office", Text: text})
+	}
 	by := map[string][]string{}
 	for _, n := range a.nodes {
 		for _, key := range n.result.Cautions {

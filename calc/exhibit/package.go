@@ -36,6 +36,7 @@ type Package struct {
 	Cautions    []Caution    `json:"cautions"` // standing ones first, then the triggered
 	Footnotes   []Footnote   `json:"footnotes"`
 	Warnings    diag.List    `json:"warnings"`
+	Office      *Office      `json:"office,omitempty"` // nil: the program's own look
 }
 
 // Meta is the front matter.

@@ -11,8 +11,10 @@ import (
 	"quoin/calc/document/field"
 	"quoin/calc/document/formula"
 	"quoin/calc/document/live"
+	"quoin/calc/exhibit"
 	"quoin/calc/quantity"
 	"quoin/calc/standard"
+	"quoin/render/page"
 )
 
 // topic is a page of the reference: a block kind, or another part of the
@@ -46,7 +48,7 @@ func topics() []topic {
 	for _, k := range block.Kinds {
 		out = append(out, kindTopic(k))
 	}
-	return append(out, everyBlockTopic(), frontTopic(), proseTopic(), unitsTopic())
+	return append(out, everyBlockTopic(), frontTopic(), proseTopic(), officeTopic(), unitsTopic())
 }
 
 // kinds is how many of the topics are block kinds.
@@ -189,6 +191,44 @@ func proseTopic() topic {
 		rows = append(rows, row{Name: f.Usage, Doc: f.Text})
 	}
 	return topic{Name: "prose", Doc: refProse, Form: "{{ .NAME }}", Sections: []section{{Title: refFunctions, Heads: headsForms, Rows: rows}, {Title: refRefers, Heads: headsForms, Rows: refers}}}
+}
+
+// officeTopic is what the folder of an office holds, and what its templates have.
+func officeTopic() topic {
+	words := func(list []exhibit.Wording) (out []row) {
+		for _, w := range list {
+			out = append(out, row{Name: w.Key, Type: w.Text, Doc: w.Doc})
+		}
+		return out
+	}
+	t := topic{Name: "office", Doc: refOffice, Form: "office: FOLDER", Sections: []section{
+		{Title: refOfficeFiles, Heads: headsForms, Rows: officeFiles},
+		{Title: "office.yaml", Heads: headsFields, Rows: fieldRows(document.OfficeFields())},
+		{Title: "palette.yaml", Intro: refPalette, Heads: headsOwn, Rows: words(exhibit.Colours)},
+		{Title: "wording.yaml", Intro: refWording, Heads: headsOwn, Rows: words(exhibit.Words)},
+	}}
+	for _, d := range page.OfficeData() {
+		sec := section{Title: d.File, Intro: d.Doc, Heads: headsForms}
+		for _, f := range d.Fields {
+			sec.Rows = append(sec.Rows, row{Name: "{{." + f.Name + "}}", Doc: f.Doc})
+		}
+		t.Sections = append(t.Sections, sec)
+	}
+	var places, functions, styles []row
+	for _, p := range page.Parts {
+		places = append(places, row{Name: fmt.Sprintf("{{part %q}}", p[0]), Doc: p[1]})
+	}
+	for _, f := range page.OwnFunctions {
+		functions = append(functions, row{Name: f.Usage, Doc: f.Doc})
+	}
+	for _, p := range page.Properties {
+		styles = append(styles, row{Name: p.Names, Doc: p.Doc})
+	}
+	elements := "elements: " + strings.Join(page.Elements(), ", ") + "; attributes: style, src and alt of a picture, scope and colspan of cells"
+	return topic{Name: t.Name, Doc: t.Doc, Form: t.Form, Sections: append(t.Sections,
+		section{Title: refParts, Intro: refPartsIntro, Heads: headsForms, Rows: places},
+		section{Title: refFunctions, Heads: headsForms, Rows: functions},
+		section{Title: refStyles, Intro: elements, Heads: headsForms, Rows: styles})}
 }
 
 // unitsTopic lists the units by what they measure, the small before the large.

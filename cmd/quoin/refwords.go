@@ -18,12 +18,19 @@ const (
 	refBinding   = "-2^2 is -4; a unit stands behind its number and binds more tightly than all operators"
 	refSpectrum  = "which spectrum of the standard"
 
-	refEvery   = "fields that every block but formula takes"
-	refFront   = "the head of the document, between two lines ---"
-	refFormula = "formula lines and checks, each typeset with its numbers"
-	refProse   = "values in the text, each a pipeline between double braces"
-	refRefers  = "references"
-	refUnits   = "the units of the language and what one of each is; a weight is a force, a mass is a mass"
+	refEvery       = "fields that every block but formula takes"
+	refFront       = "the head of the document, between two lines ---"
+	refFormula     = "formula lines and checks, each typeset with its numbers"
+	refProse       = "values in the text, each a pipeline between double braces"
+	refOffice      = "a folder with an office's own cover, head, palette and wording, named in the front matter"
+	refRefers      = "references"
+	refOfficeFiles = "files of the folder, each of which may be missing"
+	refPalette     = "colours as #rrggbb; ink, soft, tie and bad must stand out from paper by 4.5 to 1 (WCAG 2.2 AA); for the screen, charts included: paper stays black on white"
+	refWording     = "words of up to 40 characters, no two alike, and cautions_added, a list of sentences printed after the standing cautions; those of the program cannot be changed"
+	refParts       = "parts of the cover"
+	refPartsIntro  = "drawn by the program; each stands by itself in cover.html, in no element and no branch; what is not placed follows in this order"
+	refStyles      = "markup and styles"
+	refUnits       = "the units of the language and what one of each is; a weight is a force, a mass is a mass"
 )
 
 var (
@@ -35,8 +42,18 @@ var (
 	headsFields = []string{"field", "takes", "meaning"}
 	headsValues = []string{"value", "is", "meaning"}
 	headsForms  = []string{"form", "meaning"}
+	headsOwn    = []string{"name", "of the program", "is"}
 	headsUnits  = []string{"unit", "is"}
 
+	officeFiles = []row{
+		{Name: "cover.html", Doc: "the top of the cover"},
+		{Name: "head.html", Doc: "the head of every sheet; below it stands a line of revision, status, open state and sheet number, and the mark of invented data"},
+		{Name: "palette.yaml", Doc: "colours"},
+		{Name: "wording.yaml", Doc: "standard wording, and cautions that are added"},
+		{Name: "office.yaml", Doc: "name of the office; height of its head"},
+		{Name: "logo.svg", Doc: "pictures of any name: SVG of shapes and text alone, PNG, JPEG, GIF, WebP; up to 512 KiB each"},
+		{Name: "README.md", Doc: "is not read; no other file may lie there"},
+	}
 	formulaLines = []row{
 		{Name: "V = C_s * W", Doc: "sets V; each name is set once, and may be used above"},
 		{Name: "V = C_s * W as kip", Doc: "the same, shown in kip"},

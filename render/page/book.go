@@ -30,6 +30,7 @@ type book struct {
 	trail    trail             // what leads values home
 	within   string            // the block being made
 	lead     float64           // em, of the symbols before the equals signs of that block
+	own      own               // the clothes of an office
 	err      error             // the first, of making the page
 }
 
@@ -66,7 +67,10 @@ func (b *book) claim(id string) string {
 func (b *book) items() []item {
 	body, toc := b.chapters()
 	back, more := b.registers()
-	cover := b.cover()
+	cover := b.ownCover()
+	if cover == nil {
+		cover = b.cover()
+	}
 	contents := b.contents(append(toc, more...))
 	if s := pack(cover, b.room()); len(s) > 1 { // it goes on, and the contents may follow there
 		last := total(s[len(s)-1])
@@ -84,7 +88,7 @@ type entry struct {
 
 func (b *book) contents(toc []entry) []item {
 	out := []item{{name: "contents", high: headingHigh, keep: true, fresh: true, anchors: []string{"q-contents"}}}
-	toc = append([]entry{{Title: "Check summary", ID: "q-checks", Depth: 1}}, toc...)
+	toc = append([]entry{{Title: b.word("check_summary"), ID: "q-checks", Depth: 1}}, toc...)
 	for _, e := range toc {
 		high := [4]float64{0, 7.5, 6.4, 5.1}[e.Depth]
 		out = append(out, item{name: "contents-row", data: e, high: high + 5.1*(lines(e.Title+e.Kind, 88)-1)})

@@ -7,14 +7,40 @@ import (
 	"quoin/calc/exhibit"
 )
 
-// coverView is the head of the cover. What follows it, the boxes to sign, the
-// caution and the revisions, are items of their own: what does not fit goes on to
-// a further sheet.
-type coverView struct {
-	Status, Title, Subject string
-	Unsafe                 bool
-	Rows                   []coverRow
+// Cover is the data of the cover: of the program's own, and of cover.html of an
+// office. What follows it, the boxes to sign, the caution and the revisions, are items
+// of their own: what does not fit goes on to a further sheet.
+type Cover struct {
+	Office    string   `doc:"name of the office, of office.yaml; may be empty"`
+	Status    string   `doc:"status in capitals"`
+	Unsafe    bool     `doc:"whether the status is neither for check nor issued"`
+	Title     string   `doc:"title of the calculation"`
+	Subject   string   `doc:"what is calculated, in a line; may be empty"`
+	Number    string   `doc:"calculation number, or: not given"`
+	Project   string   `doc:"project, or: not given"`
+	Client    string   `doc:"client or owner; may be empty"`
+	Location  string   `doc:"place of the project; may be empty"`
+	Authority string   `doc:"authority having jurisdiction; may be empty"`
+	Basis     []string `doc:"governing documents; a list, which may be empty"`
+	Revision  string   `doc:"letter of the revision; may be empty"`
+	Date      string   `doc:"date of the revision or the commit; may be empty"`
+	Note      string   `doc:"reason of the revision; may be empty"`
+	Prepared  string   `doc:"initials and date, or a line"`
+	Checked   string   `doc:"initials and date, or a line, or: not checked: same person"`
+	Approved  string   `doc:"initials and date, or a line"`
+	Facts     []Fact   `doc:"the rows that say what this is: a list, each with .Label and .Text"`
+
+	rows []coverRow // what is open and where it stands: always drawn
 }
+
+// Fact is a row of the cover.
+type Fact struct {
+	Label string `doc:"what it is, in the wording of the office"`
+	Text  string `doc:"as in the front matter"`
+}
+
+// State is the rows that no office can leave out, for the program's own templates.
+func (c Cover) State() []coverRow { return c.rows }
 
 // coverRow is a row of what the cover says. Rest lines more stand at To.
 type coverRow struct {
@@ -39,23 +65,89 @@ type signView struct {
 	SamePerson                  bool
 }
 
-func (b *book) cover() []item {
+// coverData is what the cover shows.
+func (b *book) coverData() Cover {
 	m := b.p.Meta
 	status := strings.ToLower(strings.TrimSpace(m.Status))
-	v := coverView{Status: clip(strings.ToUpper(or(m.Status, "status not given")), 60), Title: clip(m.Title, titleChars), Subject: clip(m.Subject, titleChars),
-		Unsafe: status != "issued" && status != "for check", Rows: b.coverRows()}
+	r := current(b.p)
+	signs := b.signs()
+	v := Cover{Status: clip(strings.ToUpper(or(m.Status, "status not given")), 60), Title: clip(m.Title, titleChars), Subject: clip(m.Subject, titleChars),
+		Unsafe: status != "issued" && status != "for check", rows: b.coverRows(),
+		Number: clip(or(m.Number, "not given"), titleChars), Project: clip(or(m.Project, "not given"), titleChars), Client: clip(m.Client, titleChars),
+		Location: clip(m.Location, titleChars), Authority: clip(m.Authority, titleChars), Basis: m.Basis,
+		Revision: r.Rev, Date: or(r.Date, b.p.Provenance.CommitDate), Note: clip(r.Note, titleChars),
+		Prepared: signs.Prepared, Checked: signs.Checked, Approved: signs.Approved}
+	if signs.SamePerson {
+		v.Checked = "not checked: same person"
+	}
+	if b.p.Office != nil {
+		v.Office = b.p.Office.Name
+	}
+	for _, f := range []struct{ key, text string }{{"calculation", v.Number}, {"project", v.Project}, {"client", v.Client}, {"location", v.Location}, {"authority", v.Authority}} {
+		if strings.TrimSpace(f.text) != "" {
+			v.Facts = append(v.Facts, Fact{b.word(f.key), f.text})
+		}
+	}
+	return v
+}
+
+func (b *book) cover() []item {
+	v := b.coverData()
 	high := 14 + 9.2*lines(v.Title, 43)
 	if v.Subject != "" {
 		high += 5.2 * lines(v.Subject, 96)
 	}
-	for _, r := range v.Rows {
+	for _, f := range v.Facts {
+		high += coverRow{Lines: []coverLine{{Text: f.Text}}}.high()
+	}
+	for _, r := range v.rows {
 		high += r.high()
 	}
 	out := []item{{name: "cover", data: v, high: high, anchors: []string{"q-cover"}}}
-	out = append(append(out, b.criteria()...), b.sign())
-	if it, ok := b.shortCaution(); ok {
-		out = append(out, it)
+	for _, name := range parts[1:] {
+		out = append(out, b.part(name)...)
 	}
+	return out
+}
+
+// part is a part of the cover that the program draws.
+func (b *book) part(name string) []item {
+	switch name {
+	case "state":
+		rows := append([]coverRow{{Label: "Status", Lines: []coverLine{b.statusLine()}}}, b.coverRows()...)
+		it := item{name: "cover-state", data: rows, high: 4}
+		for _, r := range rows {
+			it.high += r.high()
+		}
+		return []item{it}
+	case "criteria":
+		return b.criteria()
+	case "sign":
+		return []item{b.sign()}
+	case "caution":
+		if it, ok := b.shortCaution(); ok {
+			return []item{it}
+		}
+		return nil
+	case "revisions":
+		return b.revisions()
+	}
+	panic("page: the cover has no part " + name)
+}
+
+// statusLine is the status, marked where nothing may rest on it.
+func (b *book) statusLine() coverLine {
+	v := strings.ToLower(strings.TrimSpace(b.p.Meta.Status))
+	text := clip(strings.ToUpper(or(b.p.Meta.Status, "status not given")), 60)
+	if v == "issued" || v == "for check" {
+		return coverLine{Text: text}
+	}
+	return coverLine{Open: text}
+}
+
+// revisions is the revision table, and the lists that the rows of the cover cut.
+func (b *book) revisions() (out []item) {
+	m := b.p.Meta
 	out = append(out, chunked("revisions", captioned, m.Revision, func(r exhibit.Revision) float64 {
 		return 0.1 + 4.8*max(lines(r.Note, 48), lines(checkedText(r.Prepared, r.Checked), 14), lines(r.Prepared, 10), lines(r.Date, 12), lines(r.Rev, 6))
 	}, nil)...)
@@ -102,7 +194,7 @@ func (r coverRow) high() float64 {
 	return high
 }
 
-// coverRows is what the package is and what is open in it; a row lists a few things
+// coverRows is what the package rests on and what is open in it; a row lists a few things
 // and says where the rest stands.
 func (b *book) coverRows() []coverRow {
 	m := b.p.Meta
@@ -116,12 +208,7 @@ func (b *book) coverRows() []coverRow {
 			add(label, coverLine{Text: clip(text, titleChars)})
 		}
 	}
-	given("Calculation", or(m.Number, "not given"))
-	given("Project", or(m.Project, "not given"))
-	given("Client", m.Client)
-	given("Location", m.Location)
-	given("Authority", m.Authority)
-	basis := add("Governing basis")
+	basis := add(b.word("basis"))
 	for i, s := range m.Basis {
 		if i < listed {
 			basis.Lines = append(basis.Lines, coverLine{Text: clip(s, titleChars)})
@@ -183,6 +270,16 @@ func (b *book) coverRows() []coverRow {
 
 // sign is the boxes to sign.
 func (b *book) sign() item {
+	v := b.signs()
+	tall := max(lines(v.Prepared, 16), lines(v.Checked, 16), lines(v.Approved, 16))
+	if v.SamePerson {
+		tall = max(tall, 2)
+	}
+	return item{name: "sign", data: v, high: 18.5 + 5*tall}
+}
+
+// signs is who signed.
+func (b *book) signs() signView {
 	m := b.p.Meta
 	text := func(s exhibit.Sign) string {
 		if !named(s) {
@@ -190,12 +287,7 @@ func (b *book) sign() item {
 		}
 		return clip(strings.TrimSpace(s.Initials+" "+s.Date), 60)
 	}
-	v := signView{text(m.Prepared), text(m.Checked), text(m.Approved), samePerson(m.Prepared.Initials, m.Checked.Initials)}
-	tall := max(lines(v.Prepared, 16), lines(v.Checked, 16), lines(v.Approved, 16))
-	if v.SamePerson {
-		tall = max(tall, 2)
-	}
-	return item{name: "sign", data: v, high: 18.5 + 5*tall}
+	return signView{text(m.Prepared), text(m.Checked), text(m.Approved), samePerson(m.Prepared.Initials, m.Checked.Initials)}
 }
 
 // shortView is what every reader must know: a few statements, and what was
@@ -211,7 +303,7 @@ func (b *book) shortCaution() (item, bool) {
 	high, words := 13.5, ""
 	for _, c := range b.p.Cautions {
 		switch {
-		case c.Key == "demonstration" || len(c.Blocks) == 0 && len(v.Texts) < 2:
+		case c.Key == "demonstration" || c.Key == "office" || len(c.Blocks) == 0 && len(v.Texts) < 2:
 			v.Texts = append(v.Texts, c.Text)
 			high += 0.7 + 4.7*lines(c.Text, 103)
 		case len(c.Blocks) > 0 && c.Short != "":

@@ -36,6 +36,7 @@ func (b *book) funcs() template.FuncMap {
 		"footref":   b.footref,
 		"checked":   checkedText,
 		"words":     wordsOf,
+		"word":      b.word,
 		"worded":    b.worded,
 		"evidenced": evidenced,
 		"person":    personText,

@@ -37,19 +37,19 @@ type Assets struct {
 // Render writes the page. The same package and options give the same bytes.
 func Render(p *exhibit.Package, o Options) ([]byte, error) {
 	b := newBook(p, o)
+	b.dress()
 	sheets := pack(b.items(), b.room())
 	if b.err != nil {
 		return nil, b.err
 	}
 	b.number(sheets)
-	style := strings.Join([]string{o.Assets.FontsCSS, o.Assets.TemmlCSS, templates.PageCSS, sheetCSS(p, b.open, len(sheets))}, "\n")
+	style := strings.Join([]string{o.Assets.FontsCSS, o.Assets.TemmlCSS, templates.PageCSS, sheetCSS(p, b.open, len(sheets))}, "\n") + ownCSS(p.Office)
 	if err := embeddable(style, "</style", "style"); err != nil {
 		return nil, err
 	}
 	if err := embeddable(o.Assets.PageScript, "</script", "script"); err != nil {
 		return nil, err
 	}
-	head := b.head()
 	view := struct {
 		Title, Policy, Tool string
 		Licences            string
@@ -60,7 +60,9 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 	}{Title: documentTitle(p), Policy: policy(style, o.Assets.PageScript), Tool: p.Provenance.Tool, Licences: o.Assets.Licences,
 		Style: template.CSS(style), Script: template.JS(o.Assets.PageScript)}
 	for i, s := range sheets {
-		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Head: head}
+		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Head: b.head()}
+		v.Head.Sheet, v.Head.Sheets = v.N, v.Of
+		v.Own, _ = b.ownHead(v.N, v.Of)
 		b.trail.here = i + 1
 		for _, it := range s {
 			text, err := b.execute(it)
@@ -70,6 +72,9 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 			v.Items = append(v.Items, text)
 		}
 		view.Sheets = append(view.Sheets, v)
+	}
+	if err := b.faults(); err != nil {
+		return nil, err
 	}
 	view.Trail = b.steps()
 	var out bytes.Buffer
@@ -83,7 +88,8 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 type sheetView struct {
 	N, Of int
 	Cover bool
-	Head  headView
+	Head  Head
+	Own   template.HTML // the head of an office, "" for the program's own
 	Items []template.HTML
 }
 

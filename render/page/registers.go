@@ -57,6 +57,7 @@ func (b *book) registers() (out []item, toc []entry) {
 			return
 		}
 		number := string(letter)
+		title = b.word(title)
 		letter++
 		head := item{name: "register", data: entry{Number: number, Title: title, ID: id}, high: headingHigh, keep: true, anchors: []string{id}, fresh: len(out) == 0}
 		out = append(append(out, head), items...)
@@ -64,9 +65,9 @@ func (b *book) registers() (out []item, toc []entry) {
 	}
 	p := b.p
 	if len(p.Footnotes) > 0 {
-		add("q-notes", "Notes", b.footnotes())
+		add("q-notes", "notes", b.footnotes())
 	}
-	add("q-assumptions", "Assumptions", chunked("assumptions", headRow, p.Assumptions, func(a exhibit.Assumption) float64 {
+	add("q-assumptions", "assumptions", chunked("assumptions", headRow, p.Assumptions, func(a exhibit.Assumption) float64 {
 		return 4.6 * max(lines(a.Text, 40), lines(a.Basis, 22))
 	}, nil))
 	notation := chunked("notation", headRow, b.notation(), func(rows []notationRow) float64 {
@@ -84,7 +85,7 @@ func (b *book) registers() (out []item, toc []entry) {
 		words := "Latin letters first, then Greek. In equations a last subscript in words names the block whose value it is."
 		notation = append([]item{{name: "text", data: struct{ Label, Text string }{"", words}, high: paragraph(words), keep: true}}, notation...)
 	}
-	add("q-notation", "Notation", notation)
+	add("q-notation", "notation", notation)
 	var refs []item
 	for _, r := range p.References {
 		v := struct {
@@ -94,11 +95,11 @@ func (b *book) registers() (out []item, toc []entry) {
 		}{b.refs[r.Key], r.Key, r.Text, r.Clauses, r.Memory}
 		refs = append(refs, item{name: "reference", data: v, high: 2 + 5*lines(r.Key+r.Text+strings.Join(r.Clauses, "; ")+"from memory, confirm", 85), anchors: []string{v.ID}})
 	}
-	add("q-references", "References", refs)
-	add("q-inputs", "Inputs", b.inputs())
-	add("q-records", "Records used", b.motions())
-	add("q-software", "Software", b.software())
-	add("q-cautions", "Limitations and caution", b.cautions())
+	add("q-references", "references", refs)
+	add("q-inputs", "inputs", b.inputs())
+	add("q-records", "records", b.motions())
+	add("q-software", "software", b.software())
+	add("q-cautions", "cautions", b.cautions())
 	return out, toc
 }
 

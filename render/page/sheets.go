@@ -51,6 +51,9 @@ func (b *book) room() float64 {
 	}
 	high -= 14 + 16 + 22 + 3 // margins, head, and a little to spare
 	h := b.head()
+	if own, ok := b.ownHeadHigh(); ok {
+		high -= own - 22
+	}
 	high -= 4.4 * (lines(strings.Join(append([]string{h.Revision, h.Status}, h.Open...), " · "), 80) - 1)
 	for _, line := range []string{h.Number + "  " + h.Title, h.Project + " · " + h.Location} {
 		high -= 4.5 * (min(2, lines(line, headChars)) - 1)

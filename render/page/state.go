@@ -135,18 +135,32 @@ func sourceText(p *exhibit.Package) string {
 	return text
 }
 
-type headView struct {
-	Project, Number, Title, Location string
-	Revision, Status                 string
-	Open                             []string
-	Prepared, Checked, Date          string
-	Demonstration                    string
+// Head is the data of the head of a sheet: of the program's own, and of head.html of
+// an office.
+type Head struct {
+	Office        string   `doc:"name of the office, of office.yaml; may be empty"`
+	Number        string   `doc:"calculation number, or: no number"`
+	Title         string   `doc:"title of the calculation"`
+	Project       string   `doc:"project, or: project not given"`
+	Location      string   `doc:"place of the project; may be empty"`
+	Revision      string   `doc:"Rev B, or: no revision"`
+	Date          string   `doc:"date of the revision or the commit, or: no date"`
+	Status        string   `doc:"status, empty where Open begins with it"`
+	Open          []string `doc:"all that is open, in words; a list"`
+	Prepared      string   `doc:"prepared MK 2031-03-02; a line where nobody is named"`
+	Checked       string   `doc:"checked RV 2031-03-04; a line where nobody is named, or: not checked: same person"`
+	Demonstration string   `doc:"the mark of invented data; may be empty"`
+	Sheet         int      `doc:"number of the sheet"`
+	Sheets        int      `doc:"how many sheets there are"`
 }
 
-func (b *book) head() headView {
+func (b *book) head() Head {
 	m := b.p.Meta
-	h := headView{Project: or(m.Project, "project not given"), Number: or(m.Number, "no number"), Title: m.Title, Location: m.Location,
-		Status: or(m.Status, "no status"), Open: b.open, Prepared: signText("prepared", m.Prepared), Checked: signText("checked", m.Checked)}
+	h := Head{Project: or(m.Project, "project not given"), Number: or(m.Number, "no number"), Title: m.Title, Location: m.Location,
+		Status: or(m.Status, "no status"), Open: b.open, Prepared: signText(b.verb("prepared"), m.Prepared), Checked: signText(b.verb("checked"), m.Checked)}
+	if b.p.Office != nil {
+		h.Office = b.p.Office.Name
+	}
 	if samePerson(m.Prepared.Initials, m.Checked.Initials) {
 		h.Checked = "not checked: same person"
 	}
