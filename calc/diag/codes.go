@@ -13,6 +13,7 @@ type Code struct {
 var Codes = []Code{
 	{"ambiguous-unit", "A word behind a number is a unit and also a name that the document sets, so that the line can be read in two ways.", "Put blanks around the operator to mean the name (3 kN * m), or give the name another spelling."},
 	{"arity", "A function has more or fewer arguments than it takes.", "Write the call in the form that the hint shows."},
+	{"assumption-key", "An assumption has the id of a reference or of a published standard: a citation in brackets could mean either.", "Give the assumption an id of its own, A1."},
 	{"assumption-twice", "Two assumptions have the same id.", "Give each assumption an id of its own."},
 	{"block-as-value", "A block's name stands where a number is needed.", "Name one of the block's values: NAME.value."},
 	{"block-place", "A calc block stands in a footnote, where its results cannot be printed.", "Move the block into the text."},
@@ -168,6 +169,7 @@ var Codes = []Code{
 	{"stray-braces", "Double braces are not a whole value, or stand where none can stand.", "Write {{ .NAME }} in one paragraph, or \\{{ for two braces as text."},
 	{"structure", "The structure is no sound model: a mass or stiffness is missing, zero or negative.", "Correct the number of the storey or freedom that the message names."},
 	{"structure-form", "A structure is given in two ways, or a matrix in none or in several.", "Give storeys, or elevation, mass and stiffness; each matrix by one of diagonal, rows, triplets and file."},
+	{"superseded-by", "A package is superseded and does not say by what, or names what replaces it and is not marked as superseded.", "Give superseded_by and status: superseded together."},
 	{"syntax", "A formula line cannot be read.", "Write name = expression, or check a <= b; the message points at the first thing that does not fit."},
 	{"table", "A CSV file is no table: a row has another number of cells than the head, or there are no rows.", "Write one head row, name [unit], and rows of as many cells."},
 	{"table-cells", "A row of a markdown table has more cells than its head.", "Write \\| for a bar inside a cell."},

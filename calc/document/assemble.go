@@ -23,6 +23,7 @@ func (d *run) assemble() *exhibit.Package {
 		a.part(pt)
 	}
 	a.refers()
+	a.dependents()
 	a.registry()
 	a.notation()
 	a.p.Inputs = d.files.inputs(d.src.Main)
@@ -122,7 +123,7 @@ func (a *assembly) block(s *section) *exhibit.Block {
 	n := s.block
 	res := n.result
 	c := block.Common(n.body)
-	b.Caption, b.Note, b.Warnings = c.Caption.Text(), c.Note.Text(), res.Warnings
+	b.Caption, b.Note, b.Warnings, b.Rests = c.Caption.Text(), c.Note.Text(), res.Warnings, a.restsOnOpen(n)
 	for _, it := range c.Cite.List {
 		ref, ok := cite.Parse(it.Text, a.ownKeys)
 		if !ok {
@@ -237,7 +238,7 @@ func (a *assembly) formula(s *section, b *exhibit.Block) {
 		default:
 			a.equations++
 			e := exhibit.Equation{ID: n.name, Symbol: &expr.Node{Op: expr.Name, Text: n.name, ID: n.name}, Tree: n.line.Tree, Result: &n.value, Digits: n.digits,
-				Description: n.line.Description, Place: n.place(), Number: a.equations, Overridden: n.overridden != nil}
+				Description: n.line.Description, Place: n.place(), Number: a.equations, Overridden: n.overridden != nil, Rests: a.restsOnOpen(n)}
 			e.Ref, e.RefText = a.source(n.line.Source)
 			if e.Ref != nil {
 				a.refs = append(a.refs, *e.Ref)
@@ -255,6 +256,7 @@ func (d *run) source(text string) (*cite.Ref, string) {
 	if text == "" {
 		return nil, ""
 	}
+	text, _ = d.sourceOf(text)
 	if ref, ok := cite.Parse(text, d.ownKeys); ok {
 		ref.Memory = false // the author cites it, and answers for it
 		return &ref, ""
@@ -277,14 +279,14 @@ func (d *run) checksOf(n *node) []exhibit.Check {
 	if n.kind == blockNode {
 		out := slices.Clone(n.result.Checks)
 		for i := range out {
-			out[i].Place, out[i].Anchor = n.place(), n.anchor
+			out[i].Place, out[i].Anchor, out[i].Rests = n.place(), n.anchor, d.restsOnOpen(n)
 		}
 		return out
 	}
 	out := block.CheckRows(n.line.Text, n.line.Tree, n.rows, n.relation, d.system)
 	ref, refText := d.source(n.line.Source)
 	for i := range out {
-		out[i].Description, out[i].Ref, out[i].RefText, out[i].Place, out[i].Anchor = n.line.Description, ref, refText, n.place(), n.anchor
+		out[i].Description, out[i].Ref, out[i].RefText, out[i].Place, out[i].Anchor, out[i].Rests = n.line.Description, ref, refText, n.place(), n.anchor, d.restsOnOpen(n)
 	}
 	return out
 }

@@ -19,7 +19,7 @@ func (d *run) brackets() {
 		for _, b := range p.md.Brackets {
 			word, _, _ := strings.Cut(b.Text, " ")
 			near := d.nearSource(b.Text)
-			if near == "" && (len(d.ownKeys) == 0 || !keylike.MatchString(b.Text) || quantity.IsSymbol(word)) {
+			if near == "" && !d.assumedLike(b.Text) && (len(d.ownKeys) == 0 || !keylike.MatchString(b.Text) || quantity.IsSymbol(word)) {
 				continue
 			}
 			d.diags.Warnf("unknown-source", b.Range, "no reference is known as %q", b.Text).WithHint("%s", d.sourceHint(b.Text, `add it to a references block; write \[ for a bracket as text`))
@@ -31,6 +31,9 @@ func (d *run) brackets() {
 func (d *run) sourceHint(text, otherwise string) string {
 	if near := d.nearSource(text); near != "" {
 		return "did you mean " + near + "?"
+	}
+	if d.assumedLike(text) {
+		return "the assumptions of this document are " + strings.Join(d.assumed, ", ")
 	}
 	return otherwise
 }

@@ -91,7 +91,9 @@ type run struct {
 	meta    exhibit.Meta
 	system  quantity.System
 	parts   []*part  // the main file first
-	ownKeys []string // of its references blocks
+	ownKeys []string // of its references blocks, and the ids of its assumptions
+	assumed []string // ids of assumptions
+	rests   map[*node][]string
 
 	nodes []*node          // in document order
 	names map[string]*node // the one namespace
@@ -175,11 +177,33 @@ func (d *run) read() {
 		}
 		for _, f := range all[i].md.Fences {
 			if f.Kind == "references" {
-				for _, k := range referenceKeys(all[i].name, f) {
-					keys[k] = true
+				for _, k := range listed(all[i].name, f, "key") {
+					keys[k.Text] = true
 				}
 			}
 		}
+	}
+	for i := range all {
+		if all[i].md == nil {
+			continue
+		}
+		for _, f := range all[i].md.Fences {
+			if f.Kind != "assumptions" {
+				continue
+			}
+			for _, id := range listed(all[i].name, f, "id") {
+				switch _, published := cite.Lookup(id.Text); {
+				case slices.Contains(d.assumed, id.Text): // told by the block
+				case keys[id.Text] || published:
+					d.diags.Errorf("assumption-key", id.At, "%s is the key of a reference already", id.Text).WithHint("both are cited in brackets: give the assumption another id, A1")
+				default:
+					d.assumed = append(d.assumed, id.Text)
+				}
+			}
+		}
+	}
+	for _, id := range d.assumed {
+		keys[id] = true
 	}
 	d.ownKeys = sorted(keys)
 	for i, f := range all {
@@ -214,14 +238,14 @@ func sorted(keys map[string]bool) []string {
 	return out
 }
 
-// referenceKeys finds the keys of a references block, without complaint.
-func referenceKeys(file string, f markdown.Fence) []string {
+// listed finds the values of one field in a block that is a list, without complaint.
+func listed(file string, f markdown.Fence, name string) []field.Node {
 	n, _ := field.Parse(file, yamlLines(f.Body), f.Place)
-	var out []string
+	var out []field.Node
 	for _, it := range n.Items {
 		for _, p := range it.Pairs {
-			if p.Key == "key" && p.Value.Scalar() && p.Value.Text != "" {
-				out = append(out, p.Value.Text)
+			if p.Key == name && p.Value.Scalar() && p.Value.Text != "" {
+				out = append(out, p.Value)
 			}
 		}
 	}

@@ -13,25 +13,30 @@ import (
 
 // frontMatter is the YAML at the head of the main file.
 type frontMatter struct {
-	Quoin     field.Field   `name:"quoin" is:"text" need:"yes" doc:"1: marks a calculation package"`
-	Title     field.Field   `name:"title" is:"text" need:"yes" doc:"the title of the calculation"`
-	Number    field.Field   `name:"number" is:"text" doc:"calculation number"`
-	Project   field.Field   `name:"project" is:"text" doc:"project"`
-	Client    field.Field   `name:"client" is:"text" doc:"client or owner"`
-	Subject   field.Field   `name:"subject" is:"text" doc:"what is calculated, in a line"`
-	Location  field.Field   `name:"location" is:"text" doc:"place of the project"`
-	Authority field.Field   `name:"authority" is:"text" doc:"the authority having jurisdiction, for the cover"`
-	System    field.Field   `name:"system" is:"text" doc:"the system that resists lateral force, in words, for the criteria on the cover"`
-	Units     field.Field   `name:"units" is:"choice" of:"SI|US" default:"SI" doc:"the units results are shown in"`
-	Basis     field.Field   `name:"basis" is:"text" many:"yes" doc:"governing documents with edition"`
-	Prepared  signField     `name:"prepared" doc:"initials and date"`
-	Checked   signField     `name:"checked" doc:"initials and date of a second person"`
-	Approved  signField     `name:"approved" doc:"initials and date"`
-	Revisions []revisionRow `name:"revisions" doc:"the revision table, oldest first"`
-	Status    field.Field   `name:"status" is:"choice" of:"draft|for check|issued|superseded|void" default:"draft" doc:"state of the document"`
-	Paper     field.Field   `name:"paper" is:"choice" of:"A4|Letter" default:"A4" doc:"size of the printed sheets"`
-	Office    field.Field   `name:"office" is:"file" doc:"a folder with the cover, head, palette and wording of an office (quoin blocks office)"`
-	Parts     field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
+	Quoin        field.Field   `name:"quoin" is:"text" need:"yes" doc:"1: marks a calculation package"`
+	Title        field.Field   `name:"title" is:"text" need:"yes" doc:"the title of the calculation"`
+	Number       field.Field   `name:"number" is:"text" doc:"calculation number"`
+	Project      field.Field   `name:"project" is:"text" doc:"project"`
+	Client       field.Field   `name:"client" is:"text" doc:"client or owner"`
+	Contract     field.Field   `name:"contract" is:"text" doc:"contract number of the owner"`
+	Discipline   field.Field   `name:"discipline" is:"text" doc:"discipline: structural, process, ..."`
+	Subject      field.Field   `name:"subject" is:"text" doc:"what is calculated, in a line"`
+	Location     field.Field   `name:"location" is:"text" doc:"place of the project"`
+	Authority    field.Field   `name:"authority" is:"text" doc:"the authority having jurisdiction, for the cover"`
+	System       field.Field   `name:"system" is:"text" doc:"the system that resists lateral force, in words, for the criteria on the cover"`
+	Units        field.Field   `name:"units" is:"choice" of:"SI|US" default:"SI" doc:"the units results are shown in"`
+	Basis        field.Field   `name:"basis" is:"text" many:"yes" doc:"governing documents with edition"`
+	Prepared     signField     `name:"prepared" doc:"initials and date"`
+	Checked      signField     `name:"checked" doc:"initials and date of a second person"`
+	Approved     signField     `name:"approved" doc:"initials and date"`
+	Independence field.Field   `name:"independence" is:"text" doc:"how independent the check is: the class of it, or in words"`
+	Supersedes   field.Field   `name:"supersedes" is:"text" doc:"the calculation and revision that this one replaces"`
+	SupersededBy field.Field   `name:"superseded_by" is:"text" doc:"the calculation and revision that replaces this one, with status superseded or void"`
+	Revisions    []revisionRow `name:"revisions" doc:"the revision table, oldest first"`
+	Status       field.Field   `name:"status" is:"choice" of:"draft|for check|issued|superseded|void" default:"draft" doc:"state of the document"`
+	Paper        field.Field   `name:"paper" is:"choice" of:"A4|Letter" default:"A4" doc:"size of the printed sheets"`
+	Office       field.Field   `name:"office" is:"file" doc:"a folder with the cover, head, palette and wording of an office (quoin blocks office)"`
+	Parts        field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
 }
 
 // FrontMatter lists the fields of the front matter, for the reference.
@@ -48,8 +53,10 @@ type revisionRow struct {
 	Rev      field.Field `name:"rev" is:"text" need:"yes" doc:"letter or number of the revision"`
 	Date     field.Field `name:"date" is:"text" doc:"YYYY-MM-DD"`
 	Note     field.Field `name:"note" is:"text" doc:"reason of the revision"`
+	Sheets   field.Field `name:"sheets" is:"text" doc:"the sheets it changes"`
 	Prepared field.Field `name:"prepared" is:"text" doc:"initials"`
 	Checked  field.Field `name:"checked" is:"text" doc:"initials"`
+	Approved field.Field `name:"approved" is:"text" doc:"initials"`
 }
 
 func (f *frontMatter) decode(name string, md *markdown.File) diag.List {
@@ -110,10 +117,18 @@ func (f *frontMatter) meta(diags *diag.List) exhibit.Meta {
 		Title: f.Title.Text(), Number: f.Number.Text(), Project: f.Project.Text(), Client: f.Client.Text(),
 		Subject: f.Subject.Text(), Location: f.Location.Text(), Authority: f.Authority.Text(), System: f.System.Text(), Basis: f.Basis.Texts(),
 		Prepared: f.Prepared.sign(diags), Checked: f.Checked.sign(diags), Approved: f.Approved.sign(diags),
-		Status: f.Status.Text(), Paper: f.Paper.Text(),
+		Status: f.Status.Text(), Paper: f.Paper.Text(), Contract: f.Contract.Text(), Discipline: f.Discipline.Text(), Independence: f.Independence.Text(),
+		Supersedes: f.Supersedes.Text(), SupersededBy: f.SupersededBy.Text(),
+	}
+	replaced := m.Status == "superseded" || m.Status == "void"
+	switch {
+	case m.Status == "superseded" && strings.TrimSpace(m.SupersededBy) == "":
+		diags.Warnf("superseded-by", f.Status.At, "the package is superseded, by what is not said").WithHint("superseded_by: number and revision of what replaces it")
+	case !replaced && m.SupersededBy != "":
+		diags.Warnf("superseded-by", f.SupersededBy.At, "the package is replaced by %s, and its status is %s", m.SupersededBy, m.Status).WithHint("status: superseded")
 	}
 	for _, r := range f.Revisions {
-		m.Revision = append(m.Revision, exhibit.Revision{Rev: r.Rev.Text(), Date: date(r.Date, diags), Note: r.Note.Text(), Prepared: r.Prepared.Text(), Checked: r.Checked.Text()})
+		m.Revision = append(m.Revision, exhibit.Revision{Rev: r.Rev.Text(), Date: date(r.Date, diags), Note: r.Note.Text(), Sheets: r.Sheets.Text(), Prepared: r.Prepared.Text(), Checked: r.Checked.Text(), Approved: r.Approved.Text()})
 	}
 	return m
 }

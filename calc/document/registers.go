@@ -78,6 +78,13 @@ func (a *assembly) cautions() {
 			by["open-assumption"] = append(by["open-assumption"], as.Anchor)
 		}
 	}
+	for _, as := range a.p.Assumptions {
+		for _, o := range as.Dependents {
+			if as.Status == "open" && !slices.Contains(by["open-assumption"], o.Anchor) {
+				by["open-assumption"] = append(by["open-assumption"], o.Anchor)
+			}
+		}
+	}
 	once := func(key, anchor string) {
 		if !slices.Contains(by[key], anchor) {
 			by[key] = append(by[key], anchor)

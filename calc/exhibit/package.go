@@ -41,21 +41,26 @@ type Package struct {
 
 // Meta is the front matter.
 type Meta struct {
-	Title     string     `json:"title"`
-	Number    string     `json:"number"`
-	Project   string     `json:"project"`
-	Client    string     `json:"client"`
-	Subject   string     `json:"subject"`
-	Location  string     `json:"location"`
-	Authority string     `json:"authority"` // having jurisdiction
-	System    string     `json:"system"`    // that resists lateral force, in words
-	Basis     []string   `json:"basis"`     // governing documents with edition
-	Prepared  Sign       `json:"prepared"`
-	Checked   Sign       `json:"checked"`
-	Approved  Sign       `json:"approved"`
-	Revision  []Revision `json:"revisions"` // oldest first; the last is current
-	Status    string     `json:"status"`    // draft, for check, issued, superseded, void
-	Paper     string     `json:"paper"`     // A4 or Letter
+	Title        string     `json:"title"`
+	Number       string     `json:"number"`
+	Project      string     `json:"project"`
+	Client       string     `json:"client"`
+	Contract     string     `json:"contract,omitempty"`
+	Discipline   string     `json:"discipline,omitempty"`
+	Subject      string     `json:"subject"`
+	Location     string     `json:"location"`
+	Authority    string     `json:"authority"` // having jurisdiction
+	System       string     `json:"system"`    // that resists lateral force, in words
+	Basis        []string   `json:"basis"`     // governing documents with edition
+	Prepared     Sign       `json:"prepared"`
+	Checked      Sign       `json:"checked"`
+	Approved     Sign       `json:"approved"`
+	Independence string     `json:"independence,omitempty"` // of the check
+	Supersedes   string     `json:"supersedes,omitempty"`
+	SupersededBy string     `json:"superseded_by,omitempty"`
+	Revision     []Revision `json:"revisions"` // oldest first; the last is current
+	Status       string     `json:"status"`    // draft, for check, issued, superseded, void
+	Paper        string     `json:"paper"`     // A4 or Letter
 }
 
 // Sign is a person's initials and a date as written in the front matter.
@@ -69,8 +74,10 @@ type Revision struct {
 	Rev      string `json:"rev"`
 	Date     string `json:"date"`
 	Note     string `json:"note"`
+	Sheets   string `json:"sheets,omitempty"` // that it changes
 	Prepared string `json:"prepared"`
 	Checked  string `json:"checked"`
+	Approved string `json:"approved,omitempty"`
 }
 
 // Provenance is where the package came from. Nothing in it comes from the clock.
@@ -131,7 +138,8 @@ type Block struct {
 	// Parts in order: "inputs", "method", "results"; only those shown. A formula
 	// block has one part without a name.
 	Parts    []Part   `json:"parts"`
-	Warnings []string `json:"warnings"` // travel with the numbers: footnotes of the block
+	Warnings []string `json:"warnings"`        // travel with the numbers: footnotes of the block
+	Rests    []string `json:"rests,omitempty"` // open assumptions that it rests on
 }
 
 // Part is one part of a block.
@@ -208,6 +216,7 @@ type Equation struct {
 	Place       Place           `json:"place"`
 	Number      int             `json:"number,omitempty"` // counted through the package
 	Overridden  bool            `json:"overridden,omitempty"`
+	Rests       []string        `json:"rests,omitempty"` // open assumptions that it rests on
 	// TeX is set instead of Tree for equations of a method.
 	TeX string `json:"tex,omitempty"`
 }
@@ -264,8 +273,9 @@ type Check struct {
 	Ref         *cite.Ref  `json:"ref,omitempty"`
 	RefText     string     `json:"ref_text,omitempty"`
 	Place       Place      `json:"place"`
-	Anchor      string     `json:"anchor"` // of the block it stands in
-	Tree        *expr.Node `json:"tree"`   // the comparison, evaluated
+	Anchor      string     `json:"anchor"`          // of the block it stands in
+	Tree        *expr.Node `json:"tree"`            // the comparison, evaluated
+	Rests       []string   `json:"rests,omitempty"` // open assumptions that it rests on
 }
 
 // RatioText is the ratio as printed: two decimals, more where a ratio above 1
@@ -311,6 +321,8 @@ type Assumption struct {
 	When   string `json:"when"`
 	Place  Place  `json:"place"`
 	Anchor string `json:"anchor"`
+	// Dependents are the blocks and formula lines that rest on it.
+	Dependents []Origin `json:"dependents,omitempty"`
 }
 
 // Symbol is a symbol of the package with all that it stands for.

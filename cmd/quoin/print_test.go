@@ -8,6 +8,7 @@ import (
 	"path/filepath"
 	"regexp"
 	"slices"
+	"strconv"
 	"strings"
 	"testing"
 	"time"
@@ -26,7 +27,9 @@ func TestPrint(t *testing.T) {
 		page := readPage(t, exampleOf(t, "four-storey"))
 		pdf := printed(t, module+"/examples/four-storey/package.md", dir)
 		isPaper(t, pdf, "594.96 x 841.92 pts (A4)")
-		holdsPage(t, pdf, page)
+		if found := holdsPage(t, pdf, page); found["caption"] < 15 || found["equation"] < 30 {
+			t.Errorf("too little to test on: %v", found)
+		}
 		drawn(t, pdf, page)
 	})
 	for name, size := range map[string]string{"equipment-frame": "612 x 792 pts (letter)", "three-records": "594.96 x 841.92 pts (A4)"} {
@@ -56,8 +59,23 @@ func TestPrint(t *testing.T) {
 		page := pageOf(t, file, dir)
 		pdf := printed(t, file, dir)
 		isPaper(t, pdf, "612 x 792 pts (letter)")
-		holdsPage(t, pdf, page)
+		if found := holdsPage(t, pdf, page); found["equation"] == 0 {
+			t.Errorf("too little to test on: %v", found)
+		}
 	})
+	for _, size := range []string{"A4", "Letter"} {
+		t.Run("sheets on "+size, func(t *testing.T) {
+			dir := t.TempDir()
+			file := filepath.Join(dir, "p.md")
+			if err := os.WriteFile(file, []byte(tallAndWide(size)), 0o644); err != nil {
+				t.Fatal(err)
+			}
+			page := pageOf(t, file, dir)
+			pdf := printed(t, file, dir)
+			holdsPage(t, pdf, page)
+			sheetsLie(t, pdf, page)
+		})
+	}
 	if left, err := os.ReadDir(os.TempDir()); err != nil || slices.ContainsFunc(left, func(e os.DirEntry) bool { return strings.HasPrefix(e.Name(), "quoin-print-") }) {
 		t.Errorf("this is left behind: %v (%v)", left, err)
 	}
@@ -151,14 +169,14 @@ var (
 
 // holdsPage sees that page n of the PDF is sheet n of the page, and has all its
 // figures, tables and numbers of equations.
-func holdsPage(t *testing.T, pdf, page string) {
+func holdsPage(t *testing.T, pdf, page string) (found map[string]int) {
 	t.Helper()
 	starts := sheetStart.FindAllStringIndex(page, -1)
 	pages := strings.Split(strings.TrimSuffix(output(t, "pdftotext", "-layout", pdf, "-"), "\f"), "\f")
 	if len(pages) != len(starts) || len(pages) < 2 {
 		t.Fatalf("%d pages of %d sheets", len(pages), len(starts))
 	}
-	found := map[string]int{}
+	found = map[string]int{}
 	for i, text := range pages {
 		end := len(page)
 		if i+1 < len(starts) {
@@ -178,9 +196,78 @@ func holdsPage(t *testing.T, pdf, page string) {
 			}
 		}
 	}
-	if found["equation"] == 0 || len(pages) > 20 && (found["caption"] < 15 || found["equation"] < 30) {
-		t.Errorf("too little to test on: %v", found)
+	return found
+}
+
+// tallAndWide is a package of what no sheet holds in one piece.
+func tallAndWide(size string) string {
+	var b strings.Builder
+	fmt.Fprintf(&b, "---\nquoin: 1\ntitle: Tall and wide\npaper: %s\n---\n\n# Prose\n\n%s\n\n", size, strings.Repeat("words that go on and on, ", 500))
+	for i := range 90 {
+		fmt.Fprintf(&b, "%d. item %d %s\n", i+1, i+1, strings.Repeat("of a list ", i%30))
 	}
+	fmt.Fprintf(&b, "\n```\n%s```\n\n", strings.Repeat("a line of a listing "+strings.Repeat("x", 90)+"\n", 60))
+	for _, columns := range []int{20, 45} {
+		row := func(cell string) { b.WriteString("|" + strings.Repeat(" "+cell+" |", columns) + "\n") }
+		row("head")
+		row("---")
+		for range 40 {
+			row("1234.5")
+		}
+		b.WriteString("\n")
+	}
+	b.WriteString("# Vectors\n\n```calc structure tower\nstoreys:\n")
+	for i := range 60 {
+		fmt.Fprintf(&b, "  - { level: L%d, height: 3.5 m, weight: %d kN, stiffness: 900 kN/mm }\n", i+1, 2000+i)
+	}
+	b.WriteString("damping: 5 %\ncite: [ASCE/SEI 7-22]\n```\n\n```calc table loads\ncolumns:\n")
+	for i := range 12 {
+		fmt.Fprintf(&b, "  - { value: tower.w * %d, head: weight of the level %d times, unit: kN }\n", 1000+i, 1000+i)
+	}
+	b.WriteString("```\n\n```calc formula\nq = tower.w / 2 + tower.w / 3  # a vector\ncheck q <= 1 MN  # [ASCE/SEI 7-22 12.8] of every level, in words that take more than a line of the table\nV = sum(q)")
+	for i := range 70 {
+		fmt.Fprintf(&b, " + %d kN * 1.%02d", i, i)
+	}
+	b.WriteString("  # a long sum\n```\n")
+	return b.String()
+}
+
+// sheetsLie sees that sheets across are printed so, each on a page of its own, and
+// that no word leaves its page or enters the margins but the foot.
+func sheetsLie(t *testing.T, pdf, page string) {
+	t.Helper()
+	sheets := sheetStart.FindAllString(page, -1)
+	wide := 0
+	for i, m := range regexp.MustCompile(`(?s)<page width="([0-9.]+)" height="([0-9.]+)">(.*?)</page>`).FindAllStringSubmatch(output(t, "pdftotext", "-bbox", pdf, "-"), -1) {
+		width, high := number(t, m[1]), number(t, m[2])
+		lies := strings.Contains(sheets[i], " across ")
+		if lies {
+			wide++
+		}
+		if lies != (width > high) {
+			t.Errorf("page %d is %v by %v points: %s", i+1, width, high, sheets[i])
+		}
+		for _, w := range regexp.MustCompile(`xMin="([0-9.-]+)" yMin="([0-9.-]+)" xMax="([0-9.-]+)" yMax="([0-9.-]+)">([^<]*)`).FindAllStringSubmatch(m[3], -1) {
+			if number(t, w[1]) < 26 || number(t, w[3]) > width-36 || number(t, w[4]) > high-12 {
+				t.Errorf("page %d: %q stands at %s to %s, %s of %v by %v", i+1, w[5], w[1], w[3], w[4], width, high)
+			}
+		}
+	}
+	if wide < 4 || wide > len(sheets)-8 {
+		t.Errorf("%d sheets of %d lie across", wide, len(sheets))
+	}
+	if !strings.Contains(page, "continued") {
+		t.Error("nothing goes on")
+	}
+}
+
+func number(t *testing.T, text string) float64 {
+	t.Helper()
+	x, err := strconv.ParseFloat(text, 64)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return x
 }
 
 var (

@@ -22,16 +22,17 @@ type book struct {
 	origins  map[string]string // registry id -> anchor of where it is shown
 	exhibits map[any]string    // *Equation, *Table, *Figure -> id
 	entries  map[string]exhibit.Entry
-	refs     map[string]string // reference key -> anchor
-	rows     map[string]string // key of a check -> anchor of its row
-	notes    map[int]bool      // footnotes there are
-	marked   map[int]bool      // footnotes already referred to
-	symbols  map[string]bool   // names that words show as symbols
-	trail    trail             // what leads values home
-	within   string            // the block being made
-	lead     float64           // em, of the symbols before the equals signs of that block
-	own      own               // the clothes of an office
-	err      error             // the first, of making the page
+	refs     map[string]string   // reference key -> anchor
+	rows     map[string]string   // key of a check -> anchor of its row
+	cited    map[string][]string // id of an assumption -> anchors of the prose that cites it
+	notes    map[int]bool        // footnotes there are
+	marked   map[int]bool        // footnotes already referred to
+	symbols  map[string]bool     // names that words show as symbols
+	trail    trail               // what leads values home
+	within   string              // the block being made
+	lead     float64             // em, of the symbols before the equals signs of that block
+	own      own                 // the clothes of an office
+	err      error               // the first, of making the page
 }
 
 // parsed is the templates; each book gives its own answers to their questions.
@@ -39,12 +40,17 @@ var parsed = template.Must(template.New("").Funcs((&book{}).funcs()).ParseFS(tem
 
 func newBook(p *exhibit.Package, o Options) *book {
 	b := &book{p: p, o: o, open: append(OpenState(p), o.State...), ids: map[string]bool{}, sheets: map[string]int{},
-		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p), trail: newTrail(p)}
+		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, cited: map[string][]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p), trail: newTrail(p)}
 	for _, e := range p.Values {
 		b.entries[e.ID] = e
 	}
 	for i, r := range p.References {
 		b.refs[r.Key] = "q-ref-" + strconv.Itoa(i+1)
+	}
+	for i, a := range p.Assumptions {
+		if b.refs[a.ID] == "" {
+			b.refs[a.ID] = "q-assumption-" + strconv.Itoa(i+1)
+		}
 	}
 	for _, f := range p.Footnotes {
 		b.notes[f.Index] = true
@@ -72,8 +78,8 @@ func (b *book) items() []item {
 		cover = b.cover()
 	}
 	contents := b.contents(append(toc, more...))
-	if s := pack(cover, b.room()); len(s) > 1 { // it goes on, and the contents may follow there
-		last := total(s[len(s)-1])
+	if s := pack(cover, b.rooms()); len(s) > 1 { // it goes on, and the contents may follow there
+		last := total(s[len(s)-1].items)
 		contents[0].fresh = last+total(contents) > b.room() && last > b.room()/3
 	}
 	return slices.Concat(cover, contents, b.summary(), body, back)

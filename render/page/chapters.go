@@ -44,9 +44,7 @@ func (b *book) chapters() (out []item, toc []entry) {
 			}
 			for _, n := range piece.Prose {
 				if n.Kind != exhibit.Heading {
-					for _, part := range cut(n) {
-						out = append(out, item{name: "node", data: part, high: proseHigh(part), anchors: b.inner(part)})
-					}
+					out = append(out, b.nodes(n)...)
 					continue
 				}
 				h := headingView{ID: b.claim(n.Anchor), Title: n.Children}
@@ -72,6 +70,11 @@ func (b *book) inner(n exhibit.Prose) []string {
 	var out []string
 	if n.Kind == exhibit.FootnoteRef {
 		out = append(out, footnoteBack(n.Level))
+	}
+	if n.Kind == exhibit.Cite && strings.HasPrefix(b.refs[n.Target], "q-assumption-") {
+		a := fmt.Sprintf("%s-by-%d", b.refs[n.Target], len(b.cited[n.Target])+1)
+		b.cited[n.Target] = append(b.cited[n.Target], a)
+		out = append(out, a)
 	}
 	for _, c := range n.Children {
 		out = append(out, b.inner(c)...)
@@ -112,6 +115,7 @@ func (o *outline) step(level int) (depth int, number string) {
 type blockView struct {
 	ID, Place, Kind, Name, Caption string
 	Cites                          any
+	Rests                          []string
 }
 
 // place is a line of the source as said in the margin.
@@ -127,8 +131,8 @@ func (b *book) place(p exhibit.Place) string {
 
 func (b *book) block(k *exhibit.Block) ([]item, entry) {
 	b.within, b.lead = k.Name, leadOf(k)
-	v := blockView{ID: b.claim(k.Anchor), Place: b.place(k.Place), Kind: k.Kind, Name: k.Name, Caption: k.Caption, Cites: k.Cites}
-	head := item{name: "block", data: v, high: 12 + 5*(lines(k.Kind+k.Name+k.Caption, 80)-1), keep: true, anchors: []string{v.ID}}
+	v := blockView{ID: b.claim(k.Anchor), Place: b.place(k.Place), Kind: k.Kind, Name: k.Name, Caption: k.Caption, Cites: k.Cites, Rests: k.Rests}
+	head := item{name: "block", data: v, high: 12 + 5*(lines(k.Kind+k.Name+k.Caption+restText(k.Rests), 80)-1), keep: true, anchors: []string{v.ID}}
 	again := &item{name: "continued", data: v, high: 10}
 	out := []item{head}
 	for _, part := range k.Parts {
@@ -144,7 +148,7 @@ func (b *book) block(k *exhibit.Block) ([]item, entry) {
 	if len(k.Warnings) > 0 {
 		high := 3.0
 		for _, w := range k.Warnings {
-			high += paragraph(w)
+			high += 0.8 + cellLine*lines(w, 98)
 		}
 		out = append(out, item{name: "warnings", data: k.Warnings, high: high})
 	}

@@ -83,7 +83,7 @@ func (b *book) coverData() Cover {
 	if b.p.Office != nil {
 		v.Office = b.p.Office.Name
 	}
-	for _, f := range []struct{ key, text string }{{"calculation", v.Number}, {"project", v.Project}, {"client", v.Client}, {"location", v.Location}, {"authority", v.Authority}} {
+	for _, f := range []struct{ key, text string }{{"calculation", v.Number}, {"project", v.Project}, {"client", joined(v.Client, "contract ", clip(m.Contract, titleChars))}, {"location", v.Location}, {"discipline", clip(m.Discipline, titleChars)}, {"authority", v.Authority}} {
 		if strings.TrimSpace(f.text) != "" {
 			v.Facts = append(v.Facts, Fact{b.word(f.key), f.text})
 		}
@@ -93,7 +93,7 @@ func (b *book) coverData() Cover {
 
 func (b *book) cover() []item {
 	v := b.coverData()
-	high := 14 + 9.2*lines(v.Title, 43)
+	high := 14 + 9.2*lines(v.Title, 39)
 	if v.Subject != "" {
 		high += 5.2 * lines(v.Subject, 96)
 	}
@@ -125,10 +125,8 @@ func (b *book) part(name string) []item {
 	case "sign":
 		return []item{b.sign()}
 	case "caution":
-		if it, ok := b.shortCaution(); ok {
-			return []item{it}
-		}
-		return nil
+		always, _ := b.shortCaution()
+		return always
 	case "revisions":
 		return b.revisions()
 	}
@@ -149,12 +147,14 @@ func (b *book) statusLine() coverLine {
 func (b *book) revisions() (out []item) {
 	m := b.p.Meta
 	out = append(out, chunked("revisions", captioned, m.Revision, func(r exhibit.Revision) float64 {
-		return 0.1 + 4.8*max(lines(r.Note, 48), lines(checkedText(r.Prepared, r.Checked), 14), lines(r.Prepared, 10), lines(r.Date, 12), lines(r.Rev, 6))
+		return 2.1 + 4.8*max(lines(r.Note, 42), lines(r.Sheets, 12), lines(checkedText(r.Prepared, r.Checked), 14), lines(r.Prepared, 10), lines(r.Date, 12), lines(r.Rev, 6))
 	}, nil)...)
+	_, further := b.shortCaution()
+	out = append(out, further...)
 	if len(b.p.Provenance.Overrides) > listed {
 		all := b.p.Provenance.Overrides
 		more := chunked("overrides", headRow, all, func(o exhibit.Override) float64 {
-			return 0.1 + 4.8*max(lines(o.Name, 28), lines(o.Text, 30), lines(o.Was, 30))
+			return 2.1 + 4.8*max(lines(o.Name, 28), lines(o.Text, 30), lines(o.Was, 30))
 		}, func(o exhibit.Override) []string {
 			if o == all[0] {
 				return []string{"q-overrides"}
@@ -227,6 +227,10 @@ func (b *book) coverRows() []coverRow {
 		revision += ": " + r.Note
 	}
 	given("Revision", revision)
+	given("Supersedes", m.Supersedes)
+	if m.SupersededBy != "" {
+		add("Superseded by", coverLine{Open: clip(m.SupersededBy, titleChars)})
+	}
 	given("Source", sourceText(b.p))
 	if values, open := b.inputTally(); values != "" {
 		add("Inputs", coverLine{Text: values, Open: open}).Listed = "q-inputs"
@@ -244,6 +248,8 @@ func (b *book) coverRows() []coverRow {
 	assumptions := assumptionTally(b.p)
 	row = add("Assumptions", coverLine{Text: strconv.Itoa(assumptions.OK) + " verified", Open: assumptions.Failed})
 	row.Rest, row.To = assumptions.Rest, "q-assumptions"
+	add("To be confirmed", b.unconfirmed())
+	add("Check", coverLine{Text: "independence: " + clip(or(m.Independence, "not declared"), titleChars)})
 	if list := b.p.Provenance.Overrides; len(list) > 0 {
 		row = add("Overridden")
 		for _, o := range list[:min(len(list), listed)] {
@@ -266,6 +272,43 @@ func (b *book) coverRows() []coverRow {
 	}
 	add("Package digest", coverLine{Text: or(grouped(b.o.Digest), "none")}).Digest = true
 	return out
+}
+
+// joined is two texts, the second with what it is.
+func joined(a, what, b string) string {
+	switch {
+	case strings.TrimSpace(b) == "":
+		return a
+	case strings.TrimSpace(a) == "":
+		return what + b
+	}
+	return a + ", " + what + b
+}
+
+// unconfirmed says whether the package holds what is yet to be confirmed.
+func (b *book) unconfirmed() coverLine {
+	var parts []string
+	say := func(n int, one, many string) {
+		switch {
+		case n == 1:
+			parts = append(parts, "1 "+one)
+		case n > 1:
+			parts = append(parts, strconv.Itoa(n)+" "+many)
+		}
+	}
+	memory := 0
+	for _, r := range b.p.References {
+		if r.Memory {
+			memory++
+		}
+	}
+	say(len(openAssumptions(b.p)), "open assumption", "open assumptions")
+	say(exhibit.Missing(b.p.Given), "input without a source", "inputs without a source")
+	say(memory, "publication cited from memory", "publications cited from memory")
+	if len(parts) == 0 {
+		return coverLine{Text: "nothing"}
+	}
+	return coverLine{Text: "yes: " + strings.Join(parts, ", ")}
 }
 
 // sign is the boxes to sign.
@@ -297,24 +340,28 @@ type shortView struct {
 	Triggered []exhibit.Caution
 }
 
-// shortCaution is the caution of the cover.
-func (b *book) shortCaution() (item, bool) {
+// shortCaution is the caution of the cover: what is always said, for its first sheet,
+// and what was triggered.
+func (b *book) shortCaution() (always, used []item) {
 	var v shortView
-	high, words := 13.5, ""
+	high, words := 11.5, ""
 	for _, c := range b.p.Cautions {
 		switch {
 		case c.Key == "demonstration" || c.Key == "office" || len(c.Blocks) == 0 && len(v.Texts) < 2:
 			v.Texts = append(v.Texts, c.Text)
-			high += 0.7 + 4.7*lines(c.Text, 103)
 		case len(c.Blocks) > 0 && c.Short != "":
 			v.Triggered = append(v.Triggered, c)
 			words += c.Short + " (" + strings.Repeat("12, ", len(c.Blocks)) + "); "
 		}
 	}
-	if words != "" {
-		high += 0.7 + 4.7*lines("From what was used, by sheet: "+words, 103)
+	if len(v.Texts) > 0 {
+		text := strings.Join(v.Texts, " ") + " All limits and cautions: sheet 00."
+		always = []item{{name: "short-caution", data: shortView{Texts: v.Texts}, high: high + 4.7*lines(text, 99)}}
 	}
-	return item{name: "short-caution", data: v, high: high}, len(v.Texts)+len(v.Triggered) > 0
+	if words != "" {
+		used = []item{{name: "short-caution", data: shortView{Triggered: v.Triggered}, high: high + 4.7*lines("By sheet: "+words, 93)}}
+	}
+	return always, used
 }
 
 // grouped sets a digest in groups of four.

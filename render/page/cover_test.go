@@ -40,9 +40,10 @@ func TestCoverIsPacked(t *testing.T) {
 		for _, many := range []int{0, 1, 3, 5, 8, 20, 60} {
 			p := plainPackage(paper, many)
 			b := newBook(p, Options{Digest: strings.Repeat("0", 64)})
-			sheets := pack(b.items(), b.room())
+			sheets := pack(b.items(), b.rooms())
 			signs := 0
-			for i, s := range sheets {
+			for i, sheet := range sheets {
+				s := sheet.items
 				for _, it := range s {
 					if it.name == "sign" {
 						signs++

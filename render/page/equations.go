@@ -29,7 +29,7 @@ type equationView struct {
 	Lead                                      string // where the equals signs of the block stand, em
 	Shrink                                    string // on paper, where a sheet would not hold it
 	Symbols, Numbers, Matrix                  template.HTML
-	From                                      []string // what its numbers come from
+	From, Rests                               []string // what its numbers come from; the open assumptions behind it
 	Columns                                   [][]labelled
 	Source                                    any
 	Number, Use                               int
@@ -41,7 +41,7 @@ type labelled struct{ Label, Text string }
 // equation is an equation as items: one, and further ones for a vector that is
 // longer than one can show.
 func (b *book) equation(e *exhibit.Equation, label string) []item {
-	v := equationView{Label: label, Description: e.Description, Number: e.Number, Overridden: e.Overridden, Method: e.Result == nil}
+	v := equationView{Label: label, Description: e.Description, Number: e.Number, Overridden: e.Overridden, Rests: e.Rests, Method: e.Result == nil}
 	v.Source = sourceOf(e.Ref, e.RefText)
 	v.ID = b.exhibits[e]
 	if e.Tree != nil {
@@ -65,7 +65,7 @@ func (b *book) equation(e *exhibit.Equation, label string) []item {
 			rows = max(rows, tall)
 		}
 	}
-	high := rows*em + 4.5*lines(e.Description+strings.Repeat("(00), ", min(len(v.From), mostFrom)), 90) + 4
+	high := rows*em + 4.5*lines(e.Description+strings.Repeat("(00), ", min(len(v.From), mostFrom))+restText(e.Rests), 90) + 4
 	if e.Ref != nil { // in the margin, in narrow lines
 		margin := lines(e.Ref.Key, 14) + lines(e.Ref.Clause, 14)
 		if e.Ref.Memory {

@@ -1,7 +1,6 @@
 package page
 
 import (
-	"fmt"
 	"regexp"
 	"slices"
 	"strconv"
@@ -29,20 +28,46 @@ func (b *book) exhibit(it exhibit.Item, label string) []item {
 	case it.Checks != nil:
 		return b.checks(it.Checks, label, "Checks", false)
 	case it.Text != "":
-		return []item{{name: "text", data: struct{ Label, Text string }{label, it.Text}, high: paragraph(it.Text)}}
+		return []item{{name: "text", data: struct{ Label, Text string }{label, it.Text}, high: 1.6 + paragraph(it.Text)}}
 	case it.Prose != nil:
-		high := 0.0
-		var anchors []string
-		for _, n := range it.Prose {
-			high += proseHigh(n)
-			anchors = append(anchors, b.inner(n)...)
-		}
-		return []item{{name: "part-prose", data: struct {
-			Label string
-			Prose []exhibit.Prose
-		}{label, it.Prose}, high: high, anchors: anchors}}
+		return b.partProse(it.Prose, label)
 	}
 	return nil
+}
+
+// partProse is paragraphs of a part of a block, cut between them or, where one is
+// higher than a sheet may be, in its midst.
+func (b *book) partProse(list []exhibit.Prose, label string) []item {
+	it := item{name: "part-prose", data: struct {
+		Label string
+		Prose []exhibit.Prose
+	}{label, list}, high: 1.6}
+	heights := make([]float64, len(list))
+	for i, n := range list {
+		heights[i] = proseHigh(n, b.measure(false))
+		it.high += heights[i]
+		it.anchors = append(it.anchors, b.inner(n)...)
+	}
+	it.cut = func(room float64) (first, rest []item) {
+		if it.high <= wholeProse {
+			return nil, nil
+		}
+		n := fit(heights, room-1.6, 1)
+		for _, h := range heights[:n] {
+			room -= h
+		}
+		head, tail := slices.Clone(list[:n]), slices.Clone(list[n:])
+		if heights[n] > tallest {
+			if f, r, ok := cut(list[n], room, b.measure(false)); ok {
+				head, tail[0] = append(head, f), r
+			}
+		}
+		if len(head) == 0 {
+			return nil, nil
+		}
+		return b.partProse(head, label), b.partProse(tail, "")
+	}
+	return []item{it}
 }
 
 // cellView is a cell as set.
@@ -195,85 +220,6 @@ type columnHead struct {
 	Symbol *expr.Node
 	Unit   string
 	Right  bool
-}
-
-// table is a table as items: one, or several where it is higher than a sheet.
-func (b *book) table(t *exhibit.Table, label string) []item {
-	type view struct {
-		Label, ID, Caption, CSV, Aria string
-		Number                        int
-		Heads                         []columnHead
-		Rows                          [][]cellView
-		Notes                         []string
-	}
-	v := view{Label: label, ID: b.exhibits[t], Caption: t.Caption, CSV: "tables/" + t.ID + ".csv", Number: t.Number,
-		Aria: fmt.Sprintf("Table %d, %s", t.Number, t.Caption)}
-	for _, c := range t.Columns {
-		head := c.Head
-		if c.Bare && c.Symbol != nil {
-			head = ""
-		}
-		v.Heads = append(v.Heads, columnHead{head, c.Symbol, c.Unit.Pretty(), c.Right})
-	}
-	rows := make([][]cellView, len(t.Rows))
-	heights := make([]float64, len(t.Rows))
-	chars := max(6, 100/max(1, len(t.Columns)))
-	for r, row := range t.Rows {
-		tall := 1.0
-		cells := make([]cellView, len(row))
-		for i, c := range row {
-			if i < len(t.Columns) {
-				cells[i] = b.cell(c, &t.Columns[i].Unit)
-				if i+1 < len(row) && t.Columns[i+1].Head == "unit" && row[i+1].Text != "" {
-					cells[i].Numbers = bareText(c.Numbers)
-				}
-				cells[i].Right = t.Columns[i].Right || len(c.Numbers) > 0
-			} else {
-				cells[i] = b.cell(c, nil)
-			}
-			tall = max(tall, lines(cells[i].Text+cells[i].Numbers, chars))
-		}
-		rows[r], heights[r] = cells, 1.9+4.6*tall
-	}
-	for i := range t.Columns {
-		alignPoints(rows, i)
-		for _, r := range rows {
-			if i < len(r) && r[i].Right {
-				v.Heads[i].Right = true
-			}
-		}
-	}
-	notes := 0.0
-	for _, n := range t.Notes {
-		notes += 4.6 * lines(n, 95)
-	}
-	var out []item
-	most := b.room() - 15 - notes // what a sheet holds below the head of the block
-	high := 14 + 4.6*lines(t.Caption, 90)
-	add := func(last bool) {
-		it := item{name: "table", high: high}
-		if last {
-			v.Notes = t.Notes
-			it.high += notes
-		}
-		if v.ID != "" {
-			it.anchors = []string{v.ID}
-		}
-		it.data = v
-		out = append(out, it)
-		v.Label, v.ID, v.Rows, v.Caption = "", "", nil, t.Caption+", continued"
-		v.Aria = fmt.Sprintf("Table %d, %s", t.Number, v.Caption)
-		high = 14 + 4.6*lines(v.Caption, 90)
-	}
-	for r := range rows {
-		if len(v.Rows) > 0 && high+heights[r] > most {
-			add(false)
-		}
-		v.Rows = append(v.Rows, rows[r])
-		high += heights[r]
-	}
-	add(true)
-	return out
 }
 
 // alignPoints says for each number of a column how many digits are missing after

@@ -72,6 +72,9 @@ func slug(text string) string {
 type checkView struct {
 	Name, Item, Anchor, Demand, Relation, Limit, Ratio string
 	ID                                                 string        // of the row in its block
+	Again                                              bool          // the row above is of the same check
+	Of                                                 int           // of how many rows of this check it is the worst
+	Rests                                              []string      // open assumptions behind it
 	Over                                               bool          // the bar would be longer than there is room
 	Formula                                            template.HTML // instead of a name in words
 	Sides                                              [2]numbersView
@@ -104,16 +107,18 @@ func (b *book) checks(list []exhibit.Check, label, caption string, summary bool)
 	return checkTable(rows, label, caption, summary)
 }
 
+type checksView struct {
+	Label, Caption string
+	Summary        bool
+	Rows           []checkView
+}
+
 // checkTable is rows of checks, the first in full.
 func checkTable(rows []checkRow, label, caption string, summary bool) []item {
 	if len(rows) == 0 {
 		return nil
 	}
-	v := struct {
-		Label, Caption string
-		Summary        bool
-		Rows           []checkView
-	}{Label: label, Caption: caption, Summary: summary}
+	v := checksView{Label: label, Caption: caption, Summary: summary}
 	it := item{name: "checks", high: 14}
 	add := func(r checkView, high float64) {
 		v.Rows = append(v.Rows, r)
@@ -128,19 +133,26 @@ func checkTable(rows []checkRow, label, caption string, summary bool) []item {
 	}
 	it.data = v
 	it.cut = func(room float64) (first, rest []item) {
-		n, used := 0, 14+rows[0].fullHigh
-		for n < len(rows) && used <= room {
-			if n++; n < len(rows) {
-				used += rows[n].shortHigh
-			}
+		heights := make([]float64, len(rows))
+		for i, r := range rows {
+			heights[i] = r.shortHigh
 		}
+		heights[0] = rows[0].fullHigh
+		n := fit(heights, room-14, min(2, len(rows)-1))
 		return checkTable(rows[:n], label, caption, summary), checkTable(rows[n:], "", caption, summary)
 	}
 	return []item{it}
 }
 
+// How wide the columns of a table of checks are, em: of its names and clauses, and
+// in the summary. As in page.css.
+const (
+	checkName0, checkClause0 = 13.0, 9.4
+	checkName1, checkClause1 = 11.4, 8.5
+)
+
 func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
-	r := checkView{Name: checkName(c), Item: c.Item, Source: sourceOf(c.Ref, c.RefText), OK: c.OK,
+	r := checkView{Name: checkName(c), Item: c.Item, Source: sourceOf(c.Ref, c.RefText), OK: c.OK, Rests: c.Rests,
 		Demand: numbersText([]exhibit.Number{c.Demand}), Limit: numbersText([]exhibit.Number{c.Limit}), Ratio: c.RatioText()}
 	r.Relation = or(relations[c.Relation], c.Relation)
 	if c.Tolerance != nil {
@@ -150,7 +162,11 @@ func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
 		r.HasBar, r.Over = true, *c.Ratio > 1.25
 		r.Bar = strconv.FormatFloat(math.Round(10*min(max(80**c.Ratio, 0), 100))/10, 'f', -1, 64)
 	}
-	tall := lines(r.Name+", "+r.Item, 25)
+	name, clause := checkName0, checkClause0
+	if summary {
+		name, clause = checkName1, checkClause1
+	}
+	tall := textFace.lines(r.Name+", "+r.Item, name)
 	if c.Description == "" && c.Tree != nil {
 		set := equation.Setter{System: b.p.System, Width: 15}.Symbols(c.Tree)
 		r.Formula, tall = template.HTML(set.XML), set.Height*0.8
@@ -163,9 +179,15 @@ func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
 	r.Sides = [2]numbersView{{r.Demand, b.side(c, 0)}, {r.Limit, b.side(c, 1)}}
 	high := func(tall float64) float64 { return 2.4 + 4.6*tall }
 	out := checkRow{short: r, shortHigh: high(tall)}
-	out.short.Source = ""
-	if c.Ref != nil && c.Ref.Memory {
-		tall = max(tall, 1+lines(c.Ref.String(), 22))
+	if out.short.Source, out.short.Rests = "", nil; c.Item != "" {
+		out.short.Again, out.shortHigh = true, high(textFace.lines(c.Item, name))
+	}
+	if c.Ref != nil {
+		source := labelFace.lines(c.Ref.String(), clause)
+		if c.Ref.Memory {
+			source += labelFace.lines("from memory, confirm", clause)
+		}
+		tall = max(tall, 0.87*source)
 	}
 	if !summary && c.Tree != nil && c.Description != "" {
 		set := equation.Setter{System: b.p.System, Width: 16}.Symbols(c.Tree)
@@ -174,6 +196,9 @@ func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
 		} else {
 			r.Tree, tall = template.HTML(set.XML), tall+set.Height*0.8
 		}
+	}
+	if len(r.Rests) > 0 {
+		tall += lines(restText(r.Rests), 25)
 	}
 	out.full, out.fullHigh = r, high(tall)
 	return out

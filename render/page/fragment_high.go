@@ -9,8 +9,6 @@ import (
 // How high a fragment is in print is estimated like all else on a sheet: from its
 // texts, the sizes it states and the room that each element has.
 
-const point = 25.4 / 72 // mm
-
 // length is a length in mm, in a font of so many points; 0 for what is none.
 func length(text string, font float64) float64 {
 	for _, u := range []struct {

@@ -61,17 +61,17 @@ func (b *book) given() []item {
 			if t, ok := r.Source.(string); ok {
 				text = t
 			}
-			high += 1.4 + 4.6*max(lines(r.Label+"S_xx ", 34), lines(r.Value.Text+r.Value.Numbers, 20), lines(text, 26))
+			high += 1.4 + 4.6*max(lines(r.Label+"S_xx ", 29), lines(r.Value.Text+r.Value.Numbers, 19), lines(text, 25))
 		}
 		shared := 0.0
 		for _, s := range v.Sources {
 			if t, ok := s.(string); ok {
-				shared += 4.6 * lines(t, 26)
+				shared += 4.6 * lines(t, 25)
 			} else {
 				shared += 4.6
 			}
 		}
-		return max(high, shared, 9.2)
+		return 2 + max(high, shared, 9.2)
 	}, nil)
 }
 
@@ -88,7 +88,7 @@ func (b *book) inputs() []item {
 		out = append(out, item{name: "text", data: struct{ Label, Text string }{"", words}, high: paragraph(words), keep: true})
 		out = append(out, b.given()...)
 	}
-	files := chunked("inputs", headRow, p.Inputs, func(i exhibit.Input) float64 { return 9.2 * lines(i.Path, 30) }, nil)
+	files := chunked("inputs", headRow, p.Inputs, func(i exhibit.Input) float64 { return rowHigh(max(lines(i.Path, 22), 1)) }, nil)
 	if len(files) > 0 && len(p.Given) > 0 {
 		out = append(out, item{name: "files-head", high: 11, keep: true, anchors: []string{"q-files"}})
 	}

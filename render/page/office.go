@@ -44,20 +44,20 @@ type ownTemplate struct {
 	musts  []string // fields of the data that must be seen
 	tree   *parse.Tree
 	pieces []piece
-	runs   []run
+	runs   []written
 	budget *budget
 	sound  bool
 }
 
-// piece is a stretch of a template between the parts that the program draws, or
+// piece is a written of a template between the parts that the program draws, or
 // such a part.
 type piece struct {
 	part string
 	tmpl *template.Template
 }
 
-// run is a text of a template and the branch it stands in.
-type run struct{ from, to, branch int }
+// written is a text of a template and the branch it stands in.
+type written struct{ from, to, branch int }
 
 // mostOutput is how many bytes a template may write in one go.
 const mostOutput = 512 << 10
@@ -191,7 +191,7 @@ func (b *book) markup(t *ownTemplate, src string) {
 		}
 		return 0
 	}, picture: func(action string) bool { return picturePlace.MatchString(action) }}
-	slices.SortFunc(t.runs, func(a, b run) int { return a.from - b.from })
+	slices.SortFunc(t.runs, func(a, b written) int { return a.from - b.from })
 	end := 0
 	r.actions = [][2]int{}
 	for _, x := range t.runs {

@@ -36,7 +36,7 @@ func (w *walker) list(l *parse.ListNode, dot reflect.Type) {
 	for _, n := range l.Nodes {
 		if text, ok := n.(*parse.TextNode); ok {
 			at := int(text.Pos)
-			w.t.runs = append(w.t.runs, run{at, at + len(text.Text), branch})
+			w.t.runs = append(w.t.runs, written{at, at + len(text.Text), branch})
 			continue
 		}
 		if part, ok := partOf(n); ok {

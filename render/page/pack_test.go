@@ -23,10 +23,11 @@ func TestCutFills(t *testing.T) {
 	anchors := func(i int) []string { return []string{"r" + strconv.Itoa(i)} }
 	for _, before := range []float64{0, 100, most - least - 20, most - least + 1, most - 1} {
 		items := append([]item{{name: "text", high: before}, {name: "head", high: 14, keep: true}}, chunked("table", headRow, rows, high, anchors)...)
-		sheets := pack(items, most)
+		sheets := pack(items, rooms{most, most})
 		var got []int
 		var led []string
-		for n, s := range sheets {
+		for n, sheet := range sheets {
+			s := sheet.items
 			for _, it := range s {
 				if it.name != "table" {
 					continue
@@ -62,13 +63,13 @@ func TestChecksCut(t *testing.T) {
 		list = append(list, exhibit.Check{ID: "a <= b [" + strconv.Itoa(i) + "]", Name: "a <= b", Item: "L" + strconv.Itoa(i), Relation: "<=", Description: "drift", Ref: &ref, Tree: tree})
 	}
 	b := newBook(plainPackage("A4", 0), Options{})
-	sheets := pack(b.checks(list, "checks", "Checks", false), 120)
+	sheets := pack(b.checks(list, "checks", "Checks", false), rooms{120, 120})
 	if len(sheets) < 2 {
 		t.Fatal("nothing is cut")
 	}
 	ids := 0
 	for _, s := range sheets {
-		for _, it := range s {
+		for _, it := range s.items {
 			ids += len(it.anchors)
 			text, err := b.execute(it)
 			if err != nil {

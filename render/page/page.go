@@ -38,12 +38,12 @@ type Assets struct {
 func Render(p *exhibit.Package, o Options) ([]byte, error) {
 	b := newBook(p, o)
 	b.dress()
-	sheets := pack(b.items(), b.room())
+	sheets := pack(b.items(), b.rooms())
 	if b.err != nil {
 		return nil, b.err
 	}
 	b.number(sheets)
-	style := strings.Join([]string{o.Assets.FontsCSS, o.Assets.TemmlCSS, templates.PageCSS, sheetCSS(p, b.open, len(sheets))}, "\n") + ownCSS(p.Office)
+	style := strings.Join([]string{o.Assets.FontsCSS, o.Assets.TemmlCSS, templates.PageCSS, sheetCSS(p, b.open, sheets)}, "\n") + ownCSS(p.Office)
 	if err := embeddable(style, "</style", "style"); err != nil {
 		return nil, err
 	}
@@ -60,11 +60,11 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 	}{Title: documentTitle(p), Policy: policy(style, o.Assets.PageScript), Tool: p.Provenance.Tool, Licences: o.Assets.Licences,
 		Style: template.CSS(style), Script: template.JS(o.Assets.PageScript)}
 	for i, s := range sheets {
-		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Head: b.head()}
+		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Wide: s.wide, Head: b.head()}
 		v.Head.Sheet, v.Head.Sheets = v.N, v.Of
 		v.Own, _ = b.ownHead(v.N, v.Of)
 		b.trail.here = i + 1
-		for _, it := range s {
+		for _, it := range s.items {
 			text, err := b.execute(it)
 			if err != nil {
 				return nil, err
@@ -88,6 +88,7 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 type sheetView struct {
 	N, Of int
 	Cover bool
+	Wide  bool // lies across
 	Head  Head
 	Own   template.HTML // the head of an office, "" for the program's own
 	Items []template.HTML

@@ -12,8 +12,7 @@ import (
 	"quoin/render/equation"
 )
 
-// tallest is how high a part of prose or of checks may be, mm, so that it can be
-// cut between sheets.
+// tallest is how high a paragraph may be, mm, that is not cut between sheets.
 const tallest = 110
 
 // headRow is how high the head of a table of a register is, mm; with a caption
@@ -32,18 +31,14 @@ func chunked[T any](name string, head float64, rows []T, high func(T) float64, a
 	it := item{name: name, data: rows, high: head}
 	heights := make([]float64, len(rows))
 	for i, r := range rows {
-		heights[i] = high(r) + 2
+		heights[i] = high(r)
 		it.high += heights[i]
 		if anchors != nil {
 			it.anchors = append(it.anchors, anchors(r)...)
 		}
 	}
 	it.cut = func(room float64) (first, rest []item) {
-		n, used := 0, head
-		for n < len(rows) && used+heights[n] <= room {
-			used += heights[n]
-			n++
-		}
+		n := fit(heights, room-head, min(2, len(rows)-1))
 		return chunked(name, head, rows[:n], high, anchors), chunked(name, head, rows[n:], high, anchors)
 	}
 	return []item{it}
@@ -68,7 +63,7 @@ func (b *book) registers() (out []item, toc []entry) {
 		add("q-notes", "notes", b.footnotes())
 	}
 	add("q-assumptions", "assumptions", chunked("assumptions", headRow, p.Assumptions, func(a exhibit.Assumption) float64 {
-		return 4.6 * max(lines(a.Text, 40), lines(a.Basis, 22))
+		return rowHigh(max(lines(a.Text, 40), lines(a.Basis, 22)))
 	}, nil))
 	notation := chunked("notation", headRow, b.notation(), func(rows []notationRow) float64 {
 		high := 0.0
@@ -77,7 +72,7 @@ func (b *book) registers() (out []item, toc []entry) {
 			for _, p := range n.Places {
 				places += p.Block + " 00, "
 			}
-			high += 4.6*max(lines(n.Meaning, 52), lines(places, 22)) + 1.9
+			high += rowHigh(max(lines(n.Meaning, 36), lines(places, 21), lines(n.Value, 19)))
 		}
 		return high
 	}, nil)
@@ -121,7 +116,7 @@ func (b *book) cautions() []item {
 		}
 	}
 	high := func(c cautionRow) float64 {
-		return 5*lines(c.Text+strings.Repeat("sheet 12, ", len(c.Blocks)), 95) - 0.5
+		return 0.7 + cellLine*lines(c.Text+strings.Repeat("sheet 12, ", len(c.Blocks)), 103)
 	}
 	return append(chunked("standing", cautionHead, standing, high, nil), chunked("triggered", cautionHead, triggered, high, nil)...)
 }
@@ -146,11 +141,14 @@ func (b *book) footnotes() []item {
 	return chunked("footnotes", headRow, list, func(f footnoteView) float64 {
 		high := 0.0
 		for _, n := range f.Body {
-			high += proseHigh(n)
+			high += proseHigh(n, b.measure(false))
 		}
 		return high
 	}, func(f footnoteView) []string { return []string{f.ID} })
 }
+
+// rowHigh is how high a row of a register is that takes so many lines.
+func rowHigh(lines float64) float64 { return cellAround + cellLine*lines }
 
 // notationRow is one meaning of a symbol. The symbol stands at its first.
 type notationRow struct {

@@ -18,11 +18,28 @@ type item struct {
 	keep    bool     // stays with what follows
 	fresh   bool     // starts a sheet
 	half    bool     // starts a sheet unless half of one is free: a chapter
+	wide    bool     // stands on a sheet across, with the others of its kind
 	anchors []string // what leads here
 	again   *item    // repeated where its block goes on on another sheet
 	// cut parts what can go on on another sheet: what stands in so much room, mm
 	// (nothing, if little would), and the rest. Nil where it is not cut.
 	cut func(room float64) (first, rest []item)
+}
+
+// leaf is a sheet: what stands on it, and whether it lies across.
+type leaf struct {
+	items []item
+	wide  bool
+}
+
+// rooms is how high a sheet is below its head, mm: upright, and across.
+type rooms struct{ upright, across float64 }
+
+func (r rooms) of(wide bool) float64 {
+	if wide {
+		return r.across
+	}
+	return r.upright
 }
 
 // Sheets is how many sheets a written page has.
@@ -43,76 +60,129 @@ func total(items []item) float64 {
 	return sum
 }
 
-// room is the height of a sheet below its head in print, mm.
-func (b *book) room() float64 {
-	high := 297.0
+// paperSize is the paper, mm.
+func (b *book) paperSize() (width, height float64) {
 	if strings.EqualFold(b.p.Meta.Paper, "letter") {
-		high = 279.4
+		return 215.9, 279.4
 	}
-	high -= 14 + 16 + 22 + 3 // margins, head, and a little to spare
+	return 210, 297
+}
+
+// What the margins of the paper take, mm: above and below, at the right, and at the
+// left with the margin of the text, which binds. As in sheetCSS and page.css.
+const (
+	marginsHigh = 14 + 16
+	marginsWide = 10 + 14
+	bindingWide = 24
+)
+
+// measure is how wide the text of a sheet is, mm.
+func (b *book) measure(wide bool) float64 {
+	width, height := b.paperSize()
+	if wide {
+		width = height
+	}
+	return width - marginsWide - bindingWide
+}
+
+// room is the height of an upright sheet below its head in print, mm.
+func (b *book) room() float64 { return b.rooms().upright }
+
+// spare is left free at the foot of a sheet, mm: heights are estimates.
+const spare = 3
+
+func (b *book) rooms() rooms {
+	_, height := b.paperSize()
+	width, _ := b.paperSize()
+	return rooms{height - marginsHigh - spare - b.headHigh(false), width - marginsHigh - spare - b.headHigh(true)}
+}
+
+// headHigh is how high the head of a sheet is, mm.
+func (b *book) headHigh(wide bool) float64 {
+	const size, line = 8.6 * point, 8.6 * point * 1.5
 	h := b.head()
-	if own, ok := b.ownHeadHigh(); ok {
-		high -= own - 22
+	beside := func(text string) float64 { // what is left of a row for the text at its left, em
+		return (b.measure(wide)+bindingWide-2-7)/size - labelFace.width(text)
 	}
-	high -= 4.4 * (lines(strings.Join(append([]string{h.Revision, h.Status}, h.Open...), " · "), 80) - 1)
-	for _, line := range []string{h.Number + "  " + h.Title, h.Project + " · " + h.Location} {
-		high -= 4.5 * (min(2, lines(line, headChars)) - 1)
-	}
+	state := strings.Join(append([]string{h.Revision, h.Status}, h.Open...), " · ")
+	high := 0.0
 	if h.Demonstration != "" {
-		high -= 6
+		high += 5
 	}
-	return high
+	if own, ok := b.ownHeadHigh(); ok { // with one line of state
+		return high + own + line*(labelFace.lines(state, beside("Sheet 00 of 00"))-1)
+	}
+	high += 9
+	by := beside(h.Prepared + " · " + h.Checked)
+	for _, row := range []string{h.Number + "  " + h.Title, h.Project + " · " + h.Location} {
+		high += line * min(2, labelFace.lines(row, by))
+	}
+	return high + line*labelFace.lines(state, by)
 }
 
 // pack cuts items into sheets: in order, as many as fit, with what is kept
 // together on one sheet. What is higher than a sheet and not to be cut spills in
 // print.
-func pack(items []item, most float64) [][]item {
+func pack(items []item, most rooms) []leaf {
 	items = slices.Clone(items)
-	var out [][]item
-	var sheet []item
-	used := 0.0
-	turn := func() {
-		if len(sheet) > 0 {
-			out, sheet, used = append(out, sheet), nil, 0
+	for i := len(items) - 2; i >= 0; i-- { // a heading goes with what it heads
+		items[i].wide = items[i].wide || items[i].keep && items[i+1].wide && !items[i+1].fresh
+	}
+	var out []leaf
+	var sheet leaf
+	used, fresh := 0.0, true // fresh: nothing stands here but what is repeated
+	turn := func(next item) {
+		if len(sheet.items) > 0 && !fresh {
+			out = append(out, sheet)
+		}
+		sheet, used, fresh = leaf{wide: next.wide}, 0, true
+		if next.again != nil && len(out) > 0 {
+			sheet.items, used = []item{*next.again}, next.again.high
 		}
 	}
-	for i := 0; i < len(items); {
-		j := i // the run i..j stays together
-		high := items[i].high
-		for items[j].keep && j+1 < len(items) && !items[j+1].fresh {
-			j++
-			high += items[j].high
+	place := func(list ...item) {
+		sheet.items, used, fresh = append(sheet.items, list...), used+total(list), false
+	}
+	for len(items) > 0 {
+		n := 1 // the run of the first n stays together
+		for items[n-1].keep && n < len(items) && !items[n].fresh && items[n].wide == items[n-1].wide {
+			n++
 		}
-		// A run that no sheet holds starts here if half a sheet is free.
-		begins := items[j].cut != nil && most-used-high+items[j].high >= least
-		if items[i].fresh || items[i].half && used > most/2 || used+high > most && !begins && !(high > most && used < most/2) {
-			turn()
-			if again := items[i].again; again != nil {
-				sheet, used = append(sheet, *again), again.high
-			}
+		run, last := items[:n], items[n-1]
+		high, room := total(run), most.of(items[0].wide)
+		if fresh && sheet.wide != items[0].wide || !fresh && (items[0].fresh || sheet.wide != items[0].wide || items[0].half && used > halfFull*room) {
+			turn(items[0])
 		}
-		if room := most - used - high + items[j].high; used+high > most && items[j].cut != nil {
-			if first, rest := items[j].cut(room); len(first) > 0 && len(rest) > 0 {
-				sheet = append(append(sheet, items[i:j]...), first...)
-				turn()
-				items = slices.Insert(items[j+1:], 0, rest...)
-				i = 0
+		left := room - used - total(run[:n-1])
+		if used+high > room && last.cut != nil && left >= least {
+			if first, rest := last.cut(left); len(first) > 0 && len(rest) > 0 {
+				place(run[:n-1]...)
+				place(first...)
+				items = slices.Insert(slices.Clone(items[n:]), 0, rest...)
+				turn(items[0])
 				continue
 			}
 		}
-		sheet = append(sheet, items[i:j+1]...)
-		used += high
-		i = j + 1
+		if used+high > room && !fresh && !(high > room && last.cut == nil && used < room/2) {
+			turn(items[0])
+			continue
+		}
+		place(run...)
+		items = items[n:]
 	}
-	turn()
+	if !fresh {
+		out = append(out, sheet)
+	}
 	return out
 }
 
+// halfFull is how full a sheet may be, of its room, for a chapter to begin on it.
+const halfFull = 0.6
+
 // number notes the sheet of every anchor.
-func (b *book) number(sheets [][]item) {
+func (b *book) number(sheets []leaf) {
 	for i, s := range sheets {
-		for _, it := range s {
+		for _, it := range s.items {
 			for _, a := range it.anchors {
 				if _, known := b.sheets[a]; a != "" && !known {
 					b.sheets[a] = i + 1
@@ -123,8 +193,8 @@ func (b *book) number(sheets [][]item) {
 }
 
 // sheetCSS gives each sheet a named page, so that a sheet that spills carries its
-// number on every printed page, and the paper.
-func sheetCSS(p *exhibit.Package, open []string, of int) string {
+// number on every printed page, and the paper, upright or across.
+func sheetCSS(p *exhibit.Package, open []string, sheets []leaf) string {
 	size := "A4"
 	if strings.EqualFold(p.Meta.Paper, "letter") {
 		size = "letter"
@@ -140,8 +210,12 @@ func sheetCSS(p *exhibit.Package, open []string, of int) string {
 	left = append(left, open...)
 	foot := clip(strings.Join(left, " · "), 190)
 	fmt.Fprintf(&b, "@page{size:%s;margin:14mm 14mm 16mm 10mm;@bottom-left{content:%s;width:56%%;padding-left:24mm}@bottom-right{width:28%%}}\n", size, cssString(foot))
-	for n := 1; n <= of; n++ {
-		fmt.Fprintf(&b, "@page s%d{@bottom-right{content:%s counter(page)}}\n@media print{.s%d{page:s%d}}\n", n, cssString(fmt.Sprintf("Sheet %d of %d · printed page ", n, of)), n, n)
+	for i, s := range sheets {
+		n, across := i+1, ""
+		if s.wide {
+			across = "size:" + size + " landscape;"
+		}
+		fmt.Fprintf(&b, "@page s%d{%s@bottom-right{content:%s counter(page)}}\n@media print{.s%d{page:s%d}}\n", n, across, cssString(fmt.Sprintf("Sheet %d of %d · printed page ", n, len(sheets))), n, n)
 	}
 	return b.String()
 }

@@ -27,14 +27,14 @@ func (b *book) software() []item {
 	}
 	v.Modules = strings.Join(s.Modules, ", ")
 	v.Evidence = evidence(s)
-	high := 96 + 5.1*(lines(v.Evidence, 78)+lines(v.Modules, 78)+1)
-	out := []item{{name: "software", data: v, high: high}}
+	high := 22 + 5*(lines(v.Evidence, 78)+lines(v.Modules, 78)+1)
+	out := []item{{name: "software", data: v, high: high}, {name: "software-rules", data: v, high: 96}}
 	return append(out, chunked("methods", headRow, s.Kinds, func(m exhibit.Method) float64 {
 		names := 0
 		for _, o := range m.Blocks {
 			names += len(o.Name) + 5
 		}
-		return 4.6 * max(lines(m.Limits, 48), lines(strings.Repeat("x", names), 24))
+		return rowHigh(max(lines(m.Limits, 41), lines(strings.Repeat("x", names), 20), 2))
 	}, nil)...)
 }
 

@@ -18,7 +18,10 @@ func OpenState(p *exhibit.Package) []string {
 	}
 	status := strings.ToLower(strings.TrimSpace(p.Meta.Status))
 	say(status == "", "status not given")
-	say(status == "draft" || status == "superseded" || status == "void", "%s", status)
+	by := strings.TrimSpace(p.Meta.SupersededBy)
+	say(status == "draft" || (status == "superseded" || status == "void") && by == "", "%s", status)
+	say(status == "superseded" && by != "", "superseded by %s", clip(by, 60))
+	say(status == "void" && by != "", "void, see %s", clip(by, 60))
 	open := openAssumptions(p)
 	say(len(open) == 1, "1 open assumption")
 	say(len(open) > 1, "%d open assumptions", len(open))
@@ -170,8 +173,11 @@ func (b *book) head() Head {
 		h.Revision = "Rev " + r.Rev
 	}
 	h.Date = or(or(r.Date, b.p.Provenance.CommitDate), "no date")
+	if m.Contract != "" {
+		h.Location = strings.TrimPrefix(h.Location+" · contract "+clip(m.Contract, 40), " · ")
+	}
 	// The status is said once: in ink where it is no open state.
-	if len(h.Open) > 0 && (h.Open[0] == strings.ToLower(strings.TrimSpace(m.Status)) || h.Open[0] == "status not given") {
+	if len(h.Open) > 0 && (strings.HasPrefix(h.Open[0], "superseded by ") || strings.HasPrefix(h.Open[0], "void, see ") || h.Open[0] == strings.ToLower(strings.TrimSpace(m.Status)) || h.Open[0] == "status not given") {
 		h.Status = ""
 	}
 	for _, c := range b.p.Cautions {

@@ -165,10 +165,10 @@ func TestPack(t *testing.T) {
 			}
 			items = append(items, it)
 		}
-		sheets := pack(items, most)
+		sheets := pack(items, rooms{most, most})
 		var flat []item
-		for _, s := range sheets {
-			used := 0.0
+		for _, sheet := range sheets {
+			s, used := sheet.items, 0.0
 			for i, it := range s {
 				used += it.high
 				if it.name != "again" {

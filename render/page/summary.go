@@ -27,16 +27,50 @@ func (b *book) claimRow(c exhibit.Check) string {
 // summary is the check summary, worst first, and what the run warned of.
 func (b *book) summary() []item {
 	t := checkTally(b.p)
-	out := []item{{name: "summary", data: t, high: headingHigh + 8 + 5*lines(t.Failed, 85), keep: t.Any, anchors: []string{"q-checks"}, fresh: len(b.p.Checks) > 12}}
-	out = append(out, b.checks(exhibit.WorstFirst(b.p.Checks), "", "Checks, worst first", true)...)
+	out := []item{{name: "summary", data: t, high: headingHigh + 18 + 5*lines(t.Failed, 85), keep: t.Any, anchors: []string{"q-checks"}, fresh: len(b.p.Checks) > 12}}
+	out = append(out, b.summaryTable()...)
 	for i, w := range b.warnings() {
-		it := item{name: "warning", data: w, high: 1.5 + 4.8*lines(w.Text+w.Place, 92)}
+		it := item{name: "warning", data: w, high: 1 + 4.8*lines("sheet 00, "+w.Place+w.Text, 100)}
 		if i == 0 {
 			out = append(out, item{name: "warnings-head", high: 11, keep: true, anchors: []string{"q-warnings"}})
 		}
 		out = append(out, it)
 	}
 	return out
+}
+
+// summaryTable is a row a check, its worst item, and a row for every other item that
+// is not met: none hides behind a worse one.
+func (b *book) summaryTable() []item {
+	var list []exhibit.Check
+	of := map[string]int{} // by the row of the worst
+	for start := 0; start < len(b.p.Checks); {
+		end := start + 1
+		for end < len(b.p.Checks) && sameCheck(b.p.Checks[start], b.p.Checks[end]) {
+			end++
+		}
+		worst := exhibit.WorstFirst(b.p.Checks[start:end])
+		of[checkKey(worst[0])] = end - start
+		list = append(append(list, worst[0]), exhibit.Failed(worst[1:])...)
+		start = end
+	}
+	list = exhibit.WorstFirst(list)
+	rows := make([]checkRow, len(list))
+	for i, c := range list {
+		r := b.checkRow(c, true)
+		if n := of[checkKey(c)]; n > 1 {
+			r.full.Of = n
+			r.fullHigh += 4.6 * (textFace.lines(r.full.Name+", "+r.full.Item+" worst of 00", checkName1) - textFace.lines(r.full.Name+", "+r.full.Item, checkName1))
+		}
+		r.short, r.shortHigh = r.full, r.fullHigh
+		rows[i] = r
+	}
+	return checkTable(rows, "", "Checks, worst first", true)
+}
+
+// sameCheck tells two rows of one check.
+func sameCheck(x, y exhibit.Check) bool {
+	return x.Name == y.Name && x.Anchor == y.Anchor && x.Place == y.Place && x.Item != "" && y.Item != ""
 }
 
 // warning is what the run warned of, and the block it is about.

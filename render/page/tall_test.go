@@ -1,7 +1,6 @@
 package page
 
 import (
-	"reflect"
 	"strconv"
 	"testing"
 
@@ -19,23 +18,26 @@ func TestTallTable(t *testing.T) {
 	}
 	b := newBook(&exhibit.Package{System: quantity.SI}, Options{})
 	b.exhibits[table] = "tab-big"
-	items := b.table(table, "results")
-	if len(items) < 5 {
-		t.Fatalf("%d parts of 300 rows", len(items))
+	sheets := pack(b.table(table, "results"), b.rooms())
+	if len(sheets) < 5 {
+		t.Fatalf("%d sheets of 300 rows", len(sheets))
 	}
 	next := 0
-	for i, it := range items {
-		if it.high > b.room()-10 {
-			t.Errorf("part %d is %v mm high, a sheet holds %v", i, it.high, b.room())
+	for i, s := range sheets {
+		if high := total(s.items); high > b.room() || len(s.items) != 1 {
+			t.Fatalf("sheet %d is %v mm high, a sheet holds %v", i, high, b.room())
 		}
-		v := reflect.ValueOf(it.data)
-		if id := v.FieldByName("ID").String(); (id != "") != (i == 0) {
-			t.Errorf("part %d has the id %q", i, id)
+		v := s.items[0].data.(tableView)
+		if (v.ID != "") != (i == 0) {
+			t.Errorf("part %d has the id %q", i, v.ID)
 		}
-		if n := v.FieldByName("Notes").Len(); (n > 0) != (i == len(items)-1) {
-			t.Errorf("part %d has %d notes", i, n)
+		if (len(v.Notes) > 0) != (i == len(sheets)-1) {
+			t.Errorf("part %d has %d notes", i, len(v.Notes))
 		}
-		for _, row := range v.FieldByName("Rows").Interface().([][]cellView) {
+		if (v.Caption == "Many rows, continued") != (i > 0) {
+			t.Errorf("part %d says %q", i, v.Caption)
+		}
+		for _, row := range v.Rows {
 			if row[0].Text != strconv.Itoa(next) {
 				t.Fatalf("row %s where %d belongs", row[0].Text, next)
 			}
