@@ -172,7 +172,7 @@ func (d *run) recall(n *node, sc scope, asking string) bool {
 	if unpack(data, n.viewpoint(), to...) != nil {
 		return false
 	}
-	n.result, n.key = result, key
+	n.result, n.key, n.cached, n.asked = result, key, true, asked
 	n.diags = append(n.diags, said...)
 	for _, q := range asked {
 		if q.What == askFile {

@@ -45,6 +45,8 @@ type node struct {
 	result block.Result
 	order  int    // among the blocks of its kind without a name, from 1
 	key    string // of what it gave, in the cache; "" where that is not known
+	cached bool   // what it gave came from there
+	asked  []question
 
 	// a formula line or check
 	line       formula.Line

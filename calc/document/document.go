@@ -37,6 +37,8 @@ type Options struct {
 	// Cache, if set, keeps the results of blocks for the next run. With it and
 	// without, Run gives the same.
 	Cache Cache
+	// Trace asks for the steps of the run.
+	Trace bool
 }
 
 // Result is what a run gives. Package is nil when there are errors.
@@ -45,6 +47,7 @@ type Result struct {
 	Diagnostics diag.List
 	Files       map[string][]byte // every file read, by path below the root
 	Checks      []exhibit.Check
+	Steps       []Step // if asked for: what became of each block, line and check, in order
 }
 
 // Run reads the document, runs its graph and assembles the package. All errors
@@ -68,6 +71,9 @@ func Run(src Source, o Options) Result {
 	res := Result{Diagnostics: d.diags.Sort(), Files: d.files.contents()}
 	if len(d.parts) > 0 {
 		res.Checks = d.checks()
+	}
+	if o.Trace {
+		res.Steps = d.steps()
 	}
 	if !res.Diagnostics.HasErrors() {
 		res.Package = d.assemble()

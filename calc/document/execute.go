@@ -177,6 +177,7 @@ func (d *run) runBlock(n *node, sc scope) {
 		r := &block.Run{Env: w, Name: n.name, Kind: n.def, Order: n.order, Place: n.at}
 		r.EchoFields(n.body)
 		n.body.Run(r)
+		n.asked = w.asked
 		said := r.Diags
 		n.result = r.Result
 		n.result.Diags = nil

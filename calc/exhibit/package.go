@@ -91,9 +91,9 @@ type Provenance struct {
 	Build      Build      `json:"build"`
 }
 
-// Build is how the program itself was made.
+// Build is how the program itself was made, as far as a package says it: the
+// version of the program stands for the rest.
 type Build struct {
-	Language     string   `json:"language"`     // "go1.26.0"
 	Architecture string   `json:"architecture"` // "amd64"
 	Modules      []string `json:"modules"`      // "name version", sorted
 }

@@ -119,3 +119,39 @@ func weigh(b *testing.B, out string) {
 	}
 	b.ReportMetric(float64(info.Size()), "page-bytes")
 }
+
+// many is the first example in n folders, each of another name and number, so that no
+// two give the same package; all in one git work tree where git is here.
+func many(tb testing.TB, n int) (root string) {
+	root = tb.TempDir()
+	for i := range n {
+		dir := filepath.Join(root, fmt.Sprintf("frame-%03d", i))
+		if err := os.CopyFS(dir, os.DirFS(filepath.Dir(example))); err != nil {
+			tb.Fatal(err)
+		}
+		os.RemoveAll(filepath.Join(dir, "package.package"))
+		file := filepath.Join(dir, "package.md")
+		text, err := os.ReadFile(file)
+		if err == nil {
+			err = os.WriteFile(file, []byte(strings.Replace(string(text), "\ntitle: ", fmt.Sprintf("\ntitle: %d ", i), 1)), 0o644)
+		}
+		if err != nil {
+			tb.Fatal(err)
+		}
+	}
+	for _, args := range [][]string{{"init", "-q"}, {"add", "-A"}, {"-c", "user.name=AB", "-c", "user.email=ab@example.org", "commit", "-q", "-m", "one"}} {
+		git(root, args...)
+	}
+	return root
+}
+
+// BenchmarkMany200Unchanged builds 200 packages of the size of the first example, none
+// of them changed: it is to take less than 5 s on two cores.
+func BenchmarkMany200Unchanged(b *testing.B) {
+	b.Setenv("QUOIN_CACHE", b.TempDir())
+	root := many(b, 200)
+	built(b, root)
+	for b.Loop() {
+		built(b, root)
+	}
+}

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"os"
+	"path/filepath"
 	"slices"
 
 	"quoin/calc/diag"
@@ -29,21 +30,39 @@ func (a *app) build(file string) int {
 	}
 	bar := a.progress()
 	defer bar.done()
+	a.trace = true
 	res, err := a.compute(src, bar)
 	if err != nil {
 		return a.fail(file, err)
 	}
+	w := written{because: a.explain(src, res)}
 	if res.Package == nil {
 		bar.done()
-		return a.report(src, res, written{})
+		return a.report(src, res, w)
+	}
+	w.dir = dir
+	w.unchanged, err = a.put(res, dir, bar)
+	bar.done()
+	return a.outcome(src, res, err, w)
+}
+
+// put makes dir the package of a run; unchanged says that it was so already.
+func (a *app) put(res document.Result, dir string, bar *progress) (unchanged bool, err error) {
+	key := a.wholeKey(res)
+	if a.stands(key, dir) {
+		return true, nil
 	}
 	files, err := a.draw(res, bar)
-	unchanged := err == nil && ledger.Holds(dir, files)
-	if err == nil && !unchanged {
+	if err != nil {
+		return false, err
+	}
+	if unchanged = ledger.Holds(dir, files); !unchanged {
 		err = ledger.Write(dir, files)
 	}
-	bar.done()
-	return a.outcome(src, res, err, written{dir: dir, unchanged: unchanged})
+	if err == nil {
+		a.keep(key, files)
+	}
+	return unchanged, err
 }
 
 // folder is where the package of src goes.
@@ -109,27 +128,35 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 		return document.Result{}, err
 	}
 	defer root.Close()
+	tree := a.trees.of(filepath.Dir(filepath.Join(src.root, filepath.FromSlash(src.main))))
 	from := exhibit.Provenance{Tool: versionLine(), Source: src.main, Build: buildOf()}
-	from.Commit, from.CommitDate = commit(src.root)
-	o := document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun)}
+	var why string
+	from.Commit, from.CommitDate, why = tree.provenance()
+	if why != "" {
+		fmt.Fprint(a.stderr, fileWarning(src.given, gitCannotTell(why)))
+	}
+	o := document.Options{Overrides: slices.Clone(a.flags.overrides), Provenance: from, Progress: bar.stage(progressRun), Trace: a.trace}
 	if a.cache != nil {
 		o.Cache = a.cache
 	}
 	res := document.Run(document.Source{FS: root.FS(), Main: src.main}, o)
 	if res.Package != nil {
 		// Only now is it known which files were read.
-		var read []string
-		for path := range res.Files {
-			read = append(read, path) // git takes slashes on every system
-		}
-		res.Package.Provenance.Dirty = dirty(src.root, read)
-		if res.Package.Provenance.Dirty && res.Package.Meta.Status == "issued" {
-			res.Diagnostics.Errorf("not-for-issue", diag.Range{File: src.main}, "%s", issuedDirty).WithHint("%s", issuedDirtyHint)
+		res.Package.Provenance.Dirty = tree.dirty(src.root, res.Files)
+		if res.Package.Meta.Status == issued && (res.Package.Provenance.Dirty || why != "") {
+			text, hint := issuedDirty, issuedDirtyHint
+			if why != "" {
+				text, hint = issuedUnknown, gitHint
+			}
+			res.Diagnostics.Errorf("not-for-issue", diag.Range{File: src.main}, "%s", text).WithHint("%s", hint)
 			res.Package = nil
 		}
 	}
 	return res, nil
 }
+
+// issued is the status of a package that is sent out.
+const issued = "issued"
 
 // fail says why FILE could not be run or written.
 func (a *app) fail(file string, err error) int {
@@ -139,6 +166,12 @@ func (a *app) fail(file string, err error) int {
 	}
 	if a.flags.json {
 		a.writeJSON(outcome{File: file, Failure: err.Error()})
+	}
+	if a.tally != nil {
+		a.tally.errors++
+		if a.many && !a.flags.json {
+			fmt.Fprint(a.stdout, tallyLine(file, *a.tally))
+		}
 	}
 	fmt.Fprint(a.stderr, fileError(file, err.Error()))
 	return exitErrors

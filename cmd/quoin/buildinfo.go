@@ -1,6 +1,7 @@
 package main
 
 import (
+	"fmt"
 	"runtime"
 	"runtime/debug"
 	"slices"
@@ -9,10 +10,16 @@ import (
 	"quoin/calc/exhibit"
 )
 
-// buildOf is how the program was built. The operating system is left out: the bytes
-// of a package depend on the architecture alone.
+// builtBy is the compiler and the system, which no package depends on.
+func builtBy() string {
+	return fmt.Sprintf("built by %s for %s/%s", runtime.Version(), runtime.GOOS, runtime.GOARCH)
+}
+
+// buildOf is how the program was built. The operating system and the version of the
+// compiler are left out: the bytes of a package depend on the version of the program
+// and on the architecture alone. --version names them.
 func buildOf() exhibit.Build {
-	b := exhibit.Build{Language: runtime.Version(), Architecture: runtime.GOARCH}
+	b := exhibit.Build{Architecture: runtime.GOARCH}
 	info, ok := debug.ReadBuildInfo()
 	if !ok {
 		return b

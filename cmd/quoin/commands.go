@@ -15,12 +15,16 @@ type app struct {
 	code           int
 	flags          flags
 	cache          *diskCache // nil: none
+	trees          *workTrees // what git says, once for all files of a command; nil: asked each time
+	tally          *tally     // of one of many files; nil: it is the only one
+	many           bool       // packages of a folder: a line each
+	trace          bool       // runs are to tell their steps
 }
 
 // flags is what the commands share.
 type flags struct {
 	out, root    string
-	set          []string
+	set, why     []string
 	units        string
 	strict, json bool
 	noCache      bool
@@ -33,15 +37,16 @@ func (a *app) commands() *cobra.Command {
 	root := &cobra.Command{Use: "quoin", Short: rootShort, Long: rootLong, Version: version,
 		Args: cobra.NoArgs, RunE: func(c *cobra.Command, _ []string) error { return c.Help() },
 		SilenceErrors: true, SilenceUsage: true, DisableAutoGenTag: true}
-	root.SetVersionTemplate(versionLine() + "\n")
+	root.SetVersionTemplate(versionLine() + "\n" + builtBy() + "\n")
 
 	build := &cobra.Command{Use: buildUse, Short: buildShort, Long: buildLong, Example: buildExample, Args: a.arguments,
-		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, a.build) }}
+		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, job{(*app).build, true, true}) }}
 	build.Flags().StringVarP(&a.flags.out, "out", "o", "", flagOut)
+	build.Flags().StringArrayVar(&a.flags.why, "why", nil, flagWhy)
 	check := &cobra.Command{Use: checkUse, Short: checkShort, Long: checkLong, Example: checkExample, Args: a.arguments,
-		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, a.check) }}
+		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, job{(*app).check, true, false}) }}
 	print := &cobra.Command{Use: printUse, Short: printShort, Long: printLong, Example: printExample, Args: a.arguments,
-		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, a.print) }}
+		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, job{(*app).print, false, false}) }}
 	print.Flags().StringVarP(&a.flags.out, "out", "o", "", flagPDF)
 	for _, c := range []*cobra.Command{build, check, print} {
 		c.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
@@ -55,7 +60,9 @@ func (a *app) commands() *cobra.Command {
 	blocks.Flags().BoolVar(&a.flags.json, "json", false, flagAsData)
 	start := &cobra.Command{Use: newUse, Short: newShort, Long: newLong, Example: newExample, Args: cobra.ArbitraryArgs, RunE: a.new}
 	start.Flags().StringVar(&a.flags.units, "units", "SI", flagUnits)
-	root.AddCommand(blocks, start)
+	verify := &cobra.Command{Use: verifyUse, Short: verifyShort, Long: verifyLong, Example: verifyExample, Args: cobra.ArbitraryArgs, RunE: a.verifyEach}
+	verify.Flags().BoolVar(&a.flags.json, "json", false, flagVerdict)
+	root.AddCommand(blocks, start, verify)
 	return root
 }
 
@@ -64,9 +71,6 @@ func (a *app) arguments(_ *cobra.Command, files []string) error {
 	if len(files) == 0 {
 		return errNoFile
 	}
-	if a.flags.out != "" && len(files) > 1 {
-		return errOneFile
-	}
 	for _, s := range a.flags.set {
 		name, text, ok := strings.Cut(s, "=")
 		name, text = strings.TrimSpace(name), strings.TrimSpace(text)
@@ -74,21 +78,6 @@ func (a *app) arguments(_ *cobra.Command, files []string) error {
 			return errSet(s)
 		}
 		a.flags.overrides = append(a.flags.overrides, exhibit.Override{Name: name, Text: text})
-	}
-	return nil
-}
-
-// each runs a command on every FILE; errors weigh more than checks not met.
-func (a *app) each(files []string, do func(file string) int) error {
-	if !a.flags.noCache {
-		a.cache = openCache()
-		defer a.cache.Close()
-	}
-	for _, f := range files {
-		switch code := do(f); {
-		case code == exitErrors, a.code == exitBuilt:
-			a.code = code
-		}
 	}
 	return nil
 }

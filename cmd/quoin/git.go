@@ -2,48 +2,69 @@ package main
 
 import (
 	"bytes"
+	"context"
+	"errors"
+	"fmt"
 	"os"
 	"os/exec"
-	"slices"
+	"path/filepath"
 	"strings"
+	"time"
 )
 
 // git runs git in a folder and gives its output; nothing where git is missing or
-// refuses. It never asks, writes no index, and runs no watcher of the repository.
+// refuses. See askGit.
 func git(folder string, args ...string) (out []byte, ok bool) {
-	args = append([]string{"-c", "core.fsmonitor=false", "-c", "log.showSignature=false", "--literal-pathspecs"}, args...)
-	cmd := exec.Command("git", args...)
-	cmd.Dir = folder
-	for _, e := range os.Environ() {
-		name, _, _ := strings.Cut(e, "=")
-		// Inside a hook these name another work tree or index.
-		if !slices.Contains([]string{"GIT_DIR", "GIT_WORK_TREE", "GIT_INDEX_FILE", "GIT_PREFIX", "GIT_COMMON_DIR", "GIT_NAMESPACE"}, name) {
-			cmd.Env = append(cmd.Env, e)
-		}
-	}
-	cmd.Env = append(cmd.Env, "LC_ALL=C", "GIT_TERMINAL_PROMPT=0", "GIT_OPTIONAL_LOCKS=0", "GIT_PAGER=cat")
-	out, err := cmd.Output()
+	out, err := askGit(folder, args...)
 	return out, err == nil
 }
 
-// commit is the commit of the work tree at root, and its date; "" outside git.
-func commit(root string) (id, date string) {
-	out, ok := git(root, "log", "-1", "--format=%H %cs", "HEAD")
-	if !ok {
-		return "", ""
-	}
-	id, date, _ = strings.Cut(strings.TrimSpace(string(out)), " ")
-	return id, date
-}
+// harmless is what keeps git from running what a repository names: watchers, hooks,
+// helpers, and programs that fetch what a clone left out.
+var harmless = []string{"-c", "core.fsmonitor=false", "-c", "core.hooksPath=" + os.DevNull, "-c", "core.pager=cat", "-c", "protocol.allow=never",
+	"-c", "log.showSignature=false", "-c", "core.quotePath=true", "--no-replace-objects", "--literal-pathspecs"}
 
-// dirty tells whether any of the files, by path below root, differs from the
-// commit or is not in it. Outside git nothing is dirty.
-func dirty(root string, files []string) bool {
-	for batch := range slices.Chunk(files, 200) {
-		out, ok := git(root, append([]string{"status", "--porcelain", "-z", "--untracked-files=all", "--ignored", "--"}, batch...)...)
-		if ok && len(bytes.TrimSpace(out)) > 0 {
-			return true
+// askGit runs git on the repository whose work tree has its top in folder. Of the
+// environment it sees no variable that names another repository or index, as they are
+// set inside hooks. It never asks and takes no lock. Commands are to be of those that
+// read objects only: what compares files with an index runs the filters that the
+// repository names.
+func askGit(folder string, args ...string) ([]byte, error) {
+	ctx, cancel := context.WithTimeout(context.Background(), time.Minute)
+	defer cancel()
+	cmd := exec.CommandContext(ctx, "git", append(append([]string{}, harmless...), args...)...)
+	cmd.Dir = folder
+	cmd.WaitDelay = time.Second
+	for _, e := range os.Environ() {
+		if name, _, _ := strings.Cut(e, "="); !misleads(name) {
+			cmd.Env = append(cmd.Env, e)
 		}
 	}
-	return false
+	cmd.Env = append(cmd.Env, "LC_ALL=C", "GIT_TERMINAL_PROMPT=0", "GIT_OPTIONAL_LOCKS=0", "GIT_NO_LAZY_FETCH=1", "GIT_CEILING_DIRECTORIES="+filepath.Dir(folder))
+	var said bytes.Buffer
+	cmd.Stderr = &said
+	out, err := cmd.Output()
+	var exit *exec.ExitError
+	switch first, _, _ := strings.Cut(strings.TrimSpace(said.String()), "\n"); {
+	case errors.Is(err, exec.ErrNotFound):
+		return nil, errors.New(gitMissing)
+	case errors.As(err, &exit) && first != "":
+		return nil, fmt.Errorf("git: %s (exit %w)", strings.TrimPrefix(first, "fatal: "), exitError(exit.ExitCode()))
+	case errors.As(err, &exit):
+		return nil, fmt.Errorf("git: exit %w", exitError(exit.ExitCode()))
+	case err != nil:
+		return nil, err
+	}
+	return out, nil
+}
+
+// exitError is the exit code of git.
+type exitError int
+
+func (e exitError) Error() string { return fmt.Sprint(int(e)) }
+
+// misleads tells whether a variable of the environment may make git look elsewhere
+// than asked. Settings of the user's own stay: they say whose folders are trusted.
+func misleads(name string) bool {
+	return strings.HasPrefix(name, "GIT_") && name != "GIT_EXEC_PATH" && (!strings.HasPrefix(name, "GIT_CONFIG_") || name == "GIT_CONFIG_PARAMETERS")
 }

@@ -22,6 +22,7 @@ type outcome struct {
 	Built       string         `json:"built"`               // the folder of the package, or ""
 	Printed     string         `json:"printed,omitempty"`   // the PDF
 	Unchanged   bool           `json:"unchanged,omitempty"` // it held the very same already; nothing was written
+	Why         []*because     `json:"why,omitempty"`       // what --why asked for
 }
 
 // written is what a run wrote: the folder of the package or the PDF, or neither;
@@ -29,25 +30,37 @@ type outcome struct {
 type written struct {
 	dir, pdf  string
 	unchanged bool
+	because   []*because
 }
 
 // report says what a run came to: diagnostics to stderr, the summary to stdout;
 // with --json all of it as data.
 func (a *app) report(src source, res document.Result, w written) int {
 	list, checks := seenFromHere(src, res)
+	if a.tally != nil {
+		a.tally.count(res, w)
+	}
 	if a.flags.json {
 		rows, err := ledger.Checks(checks, "")
 		if err != nil {
 			return a.fail(src.given, err)
 		}
-		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(w.dir), Printed: filepath.ToSlash(w.pdf), Unchanged: w.unchanged})
+		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(w.dir), Printed: filepath.ToSlash(w.pdf), Unchanged: w.unchanged, Why: w.because})
 	} else {
 		a.writeDiagnostics(src, list, res.Files)
+	}
+	if !a.flags.json {
+		for _, b := range w.because {
+			fmt.Fprint(a.stdout, whyWords(b, src.seen(b.Place.File)))
+		}
+	}
+	if a.many && !a.flags.json {
+		fmt.Fprint(a.stdout, tallyLine(src.given, *a.tally))
 	}
 	if res.Package == nil {
 		return exitErrors
 	}
-	if !a.flags.json {
+	if !a.flags.json && !a.many {
 		page := filepath.ToSlash(w.pdf)
 		if w.dir != "" {
 			page = filepath.ToSlash(filepath.Join(w.dir, "index.html"))

@@ -9,6 +9,7 @@ import (
 	"os"
 	"os/exec"
 	"path/filepath"
+	"runtime"
 	"strconv"
 	"strings"
 	"testing"
@@ -42,6 +43,7 @@ func TestScripts(t *testing.T) {
 			e.Setenv("GIT_CONFIG_NOSYSTEM", "1")
 			e.Setenv("QUOIN_CACHE", cache)
 			e.Setenv("QUOIN_CHROMIUM", "")
+			e.Setenv("ARCH", runtime.GOARCH)
 			// The folder of the program alone: a PATH on which nothing else is found.
 			e.Setenv("BARE", filepath.SplitList(e.Getenv("PATH"))[0])
 			for _, who := range []string{"AUTHOR", "COMMITTER"} {

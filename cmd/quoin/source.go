@@ -90,12 +90,20 @@ func reason(err error) error {
 
 // workTree is the lowest folder at or above folder that holds .git, else folder.
 func workTree(folder string) string {
+	if top, ok := gitTop(folder); ok {
+		return top
+	}
+	return folder
+}
+
+// gitTop is the lowest folder at or above folder that holds .git.
+func gitTop(folder string) (top string, ok bool) {
 	for d := folder; ; d = filepath.Dir(d) {
 		if _, err := os.Lstat(filepath.Join(d, ".git")); err == nil {
-			return d
+			return d, true
 		}
 		if d == filepath.Dir(d) {
-			return folder
+			return "", false
 		}
 	}
 }

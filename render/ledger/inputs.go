@@ -17,16 +17,39 @@ import (
 // BuildFile is where a package says how it was built.
 const BuildFile = "inputs/build.json"
 
-// buildFacts is inputs/build.json: with the other inputs, all that is needed to
+// BuildFacts is inputs/build.json: with the other inputs, all that is needed to
 // build the package again.
-type buildFacts struct {
-	Schema     int                `json:"schema"`
-	Main       string             `json:"main"`
-	Overrides  []exhibit.Override `json:"overrides"`
-	Commit     string             `json:"commit"`
-	CommitDate string             `json:"commit_date"`
-	Dirty      bool               `json:"dirty"`
-	Tool       string             `json:"tool"`
+type BuildFacts struct {
+	Schema       int                `json:"schema"`
+	Main         string             `json:"main"`
+	Overrides    []exhibit.Override `json:"overrides"`
+	Commit       string             `json:"commit"`
+	CommitDate   string             `json:"commit_date"`
+	Dirty        bool               `json:"dirty"`
+	Tool         string             `json:"tool"`
+	Architecture string             `json:"architecture"` // of the processor; on another, last digits may differ
+}
+
+// text is build.json as it is written.
+func (f BuildFacts) text() ([]byte, error) {
+	text, err := json.MarshalIndent(f, "", "  ")
+	if err != nil {
+		return nil, fmt.Errorf("ledger: %w", err)
+	}
+	return append(text, '\n'), nil
+}
+
+// ReadBuild reads inputs/build.json. Where the program of this version wrote it, it
+// must be as it is written.
+func ReadBuild(text []byte, tool string) (f BuildFacts, err error) {
+	if err := json.Unmarshal(text, &f); err != nil {
+		return f, fmt.Errorf("%s cannot be read: %w", BuildFile, err)
+	}
+	again, err := f.text()
+	if err != nil || f.Schema != Schema || f.Tool == tool && !bytes.Equal(again, text) {
+		return f, fmt.Errorf("%s is not as %s writes it", BuildFile, tool)
+	}
+	return f, nil
 }
 
 // Inputs is the inputs/ folder: files, by slash path relative to the root, and
@@ -52,14 +75,15 @@ func Inputs(files map[string][]byte, p *exhibit.Package) (map[string][]byte, err
 	if _, ok := folded["build.json"]; ok {
 		return nil, fmt.Errorf("an input may not be called build.json at the root: the package keeps its own %s", BuildFile)
 	}
-	text, err := json.MarshalIndent(buildFacts{
-		Schema: Schema, Main: p.Provenance.Source, Overrides: append([]exhibit.Override{}, p.Provenance.Overrides...),
-		Commit: p.Provenance.Commit, CommitDate: p.Provenance.CommitDate, Dirty: p.Provenance.Dirty, Tool: p.Provenance.Tool,
-	}, "", "  ")
+	from := p.Provenance
+	text, err := BuildFacts{
+		Schema: Schema, Main: from.Source, Overrides: append([]exhibit.Override{}, from.Overrides...),
+		Commit: from.Commit, CommitDate: from.CommitDate, Dirty: from.Dirty, Tool: from.Tool, Architecture: from.Build.Architecture,
+	}.text()
 	if err != nil {
-		return nil, fmt.Errorf("ledger: %w", err)
+		return nil, err
 	}
-	out[BuildFile] = append(text, '\n')
+	out[BuildFile] = text
 	return out, nil
 }
 
@@ -101,6 +125,9 @@ func Digest(inputs map[string][]byte, tool string) string {
 	return hex.EncodeToString(h.Sum(nil))
 }
 
+// Sum is the SHA-256 of a file in hexadecimal, as it stands in manifests.
+func Sum(b []byte) string { return hash(b) }
+
 func hash(b []byte) string {
 	sum := sha256.Sum256(b)
 	return hex.EncodeToString(sum[:])
@@ -131,21 +158,26 @@ type ManifestEntry struct {
 
 // Manifest is manifest.json for all, the other files of the package by path.
 func Manifest(all map[string][]byte, digest, tool string) []byte {
-	var files []ManifestEntry
+	m := ManifestFacts{Format: manifestFormat, Schema: Schema, Tool: tool, Digest: digest}
 	for _, path := range slices.Sorted(maps.Keys(all)) {
 		if path != ManifestFile {
-			files = append(files, ManifestEntry{path, hash(all[path]), len(all[path])})
+			m.Files = append(m.Files, ManifestEntry{path, hash(all[path]), len(all[path])})
 		}
 	}
-	list, err := lines(files)
+	return m.text()
+}
+
+// text is manifest.json as it is written.
+func (m ManifestFacts) text() []byte {
+	list, err := lines(m.Files)
 	if err != nil {
 		panic(err.Error())
 	}
 	var o object
-	o.member("format", must(manifestFormat))
-	o.member("schema", must(Schema))
-	o.member("tool", must(tool))
-	o.member("digest", must(digest))
+	o.member("format", must(m.Format))
+	o.member("schema", must(m.Schema))
+	o.member("tool", must(m.Tool))
+	o.member("digest", must(m.Digest))
 	o.member("files", list)
 	return o.bytes()
 }

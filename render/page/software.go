@@ -22,9 +22,7 @@ func (b *book) software() []item {
 		v.Units = "Shown in US customary units unless written otherwise"
 	}
 	s := p.Software
-	if s.Language != "" {
-		v.Built = s.Language + " for " + or(s.Architecture, "an architecture that is not named")
-	}
+	v.Built = s.Architecture
 	v.Modules = strings.Join(s.Modules, ", ")
 	v.Evidence = evidence(s)
 	high := 22 + 5*(lines(v.Evidence, 78)+lines(v.Modules, 78)+1)

@@ -144,6 +144,36 @@ func Top(fields any, do func(f *Field, s Spec)) {
 	}
 }
 
+// Each calls do for every name of a struct of fields, with all fields that stand
+// under it: one, or those of a group or a list of groups.
+func Each(fields any, do func(name string, under []*Field)) {
+	for _, s := range slots(reflect.ValueOf(fields).Elem(), nil) {
+		var under []*Field
+		take := func(f *Field, _ Spec) { under = append(under, f) }
+		switch v := s.value; {
+		case v.Type() == fieldType:
+			take(v.Addr().Interface().(*Field), s.spec)
+		case v.Kind() == reflect.Struct:
+			visit(v, take)
+		case v.Kind() == reflect.Slice && v.Type().Elem().Kind() == reflect.Struct:
+			for i := range v.Len() {
+				visit(v.Index(i), take)
+			}
+		}
+		do(s.spec.Name, under)
+	}
+}
+
+// Names are the names that the expressions of a field use.
+func (f *Field) Names() (out []string) {
+	for _, tree := range f.trees() {
+		for _, d := range formula.Deps(tree) {
+			out = append(out, d.Path)
+		}
+	}
+	return out
+}
+
 var fieldType = reflect.TypeFor[Field]()
 
 func visit(v reflect.Value, do func(*Field, Spec)) {
