@@ -49,7 +49,7 @@ func index(p *exhibit.Package, files map[string][]byte, digest string, o Options
 		return nil, err
 	}
 	r := &press{cache: o.Cache, byKey: map[string]*job{}, options: map[string]option{}}
-	options := page.Options{Digest: digest, Assets: assets, Chart: r.chart, Picture: r.picture,
+	options := page.Options{Digest: digest, Body: o.body, Assets: assets, Chart: r.chart, Picture: r.picture,
 		TeX: func(src string, display bool) (string, error) {
 			return r.ask(formulaKey(src, display), equation, func() (string, error) { return script.TeX(src, display) })
 		}}

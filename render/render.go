@@ -15,6 +15,7 @@ type Options struct {
 	Progress func(done, total int, what string)
 	// Cache, if set, keeps pictures and equations for the next time.
 	Cache Cache
+	body  bool // of the page, the chapters alone
 }
 
 // Cache keeps bytes by key from one run of this very program to the next. What it
@@ -47,6 +48,7 @@ func Package(p *exhibit.Package, files map[string][]byte, o Options) (map[string
 		return nil, err
 	}
 	maps.Copy(out, inputs)
+	out[ledger.ResultsText] = ledger.FrozenOf(p).Text()
 	out[ledger.ReadmeFile] = ledger.Readme(p, digest)
 	out[ledger.ManifestFile] = ledger.Manifest(out, digest, p.Provenance.Tool)
 	return out, nil

@@ -43,7 +43,7 @@ func TestPackage(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
-	want := []string{"README.txt", "index.html", "inputs/build.json", "inputs/data/a.csv", "inputs/package.md", "manifest.json", "results.json",
+	want := []string{"README.txt", "index.html", "inputs/build.json", "inputs/data/a.csv", "inputs/package.md", "manifest.json", "results.json", "results.txt",
 		"tables/east.csv", "tables/frame.csv", "tables/north.csv"}
 	if paths := slices.Sorted(maps.Keys(got)); !slices.Equal(paths, want) {
 		t.Errorf("the package holds %v, want %v", paths, want)

@@ -28,6 +28,7 @@ func (d *run) assemble() *exhibit.Package {
 	a.notation()
 	a.p.Inputs = d.files.inputs(d.src.Main)
 	a.given()
+	a.settings()
 	a.criteria()
 	a.motions()
 	a.software()

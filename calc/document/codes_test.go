@@ -24,7 +24,10 @@ var elsewhere = map[string]string{
 	"office-markup":   "../../render/page/office_test.go",  // of the page
 	"office-omits":    "../../render/page/office_test.go",
 	"office-template": "../../render/page/office_test.go",
-	"override":        "../../testdata/script/codes.txtar", // of the option --set
+	"override":        "../../testdata/script/codes.txtar",  // of the option --set
+	"frozen-broken":   "../../testdata/script/freeze.txtar", // of the file beside the document
+	"frozen-missing":  "../../testdata/script/freeze.txtar",
+	"frozen-version":  "../../testdata/script/freeze.txtar",
 }
 
 var numbered = regexp.MustCompile(`-\d+$`)

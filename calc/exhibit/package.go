@@ -33,10 +33,13 @@ type Package struct {
 	Given       []Given      `json:"given"`      // what is taken from outside, in document order
 	Motions     []Motion     `json:"motions"`    // records, in document order
 	Software    Software     `json:"software"`
-	Cautions    []Caution    `json:"cautions"` // standing ones first, then the triggered
-	Footnotes   []Footnote   `json:"footnotes"`
-	Warnings    diag.List    `json:"warnings"`
-	Office      *Office      `json:"office,omitempty"` // nil: the program's own look
+	Settings    []Setting    `json:"settings"` // fields of blocks as used, in document order
+	// Frozen is how the results stand to frozen ones; nil where there are none.
+	Frozen    *Frozen    `json:"frozen,omitempty"`
+	Cautions  []Caution  `json:"cautions"` // standing ones first, then the triggered
+	Footnotes []Footnote `json:"footnotes"`
+	Warnings  diag.List  `json:"warnings"`
+	Office    *Office    `json:"office,omitempty"` // nil: the program's own look
 }
 
 // Meta is the front matter.

@@ -140,6 +140,7 @@ func (a *app) compute(src source, bar *progress) (document.Result, error) {
 		o.Cache = a.cache
 	}
 	res := document.Run(document.Source{FS: root.FS(), Main: src.main}, o)
+	a.thaw(root.FS(), src.main, &res)
 	if res.Package != nil {
 		// Only now is it known which files were read.
 		res.Package.Provenance.Dirty = tree.dirty(src.root, res.Files)

@@ -28,6 +28,8 @@ type flags struct {
 	units        string
 	strict, json bool
 	noCache      bool
+	frozen, same bool
+	tolerance    string
 	overrides    []exhibit.Override // from set
 }
 
@@ -52,6 +54,7 @@ func (a *app) commands() *cobra.Command {
 		c.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
 		c.Flags().StringArrayVar(&a.flags.set, "set", nil, flagSet)
 		c.Flags().BoolVar(&a.flags.strict, "strict", false, flagStrict)
+		c.Flags().BoolVar(&a.flags.frozen, "frozen", false, flagFrozen)
 		c.Flags().BoolVar(&a.flags.noCache, "no-cache", false, flagCache)
 		c.Flags().BoolVar(&a.flags.json, "json", false, flagJSON)
 		root.AddCommand(c)
@@ -62,7 +65,7 @@ func (a *app) commands() *cobra.Command {
 	start.Flags().StringVar(&a.flags.units, "units", "SI", flagUnits)
 	verify := &cobra.Command{Use: verifyUse, Short: verifyShort, Long: verifyLong, Example: verifyExample, Args: cobra.ArbitraryArgs, RunE: a.verifyEach}
 	verify.Flags().BoolVar(&a.flags.json, "json", false, flagVerdict)
-	root.AddCommand(blocks, start, verify)
+	root.AddCommand(blocks, start, verify, a.freezeCommand(), a.compareCommand())
 	return root
 }
 

@@ -21,6 +21,7 @@ const (
 	exitErrors = 1
 	exitUsage  = 2
 	exitStrict = 3 // with --strict: a check is not met
+	exitFrozen = 4 // with --frozen: results differ from the frozen ones; with --same: from the others
 )
 
 // run is the program: arguments in, exit code out.

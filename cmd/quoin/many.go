@@ -26,6 +26,7 @@ type tally struct {
 	errors, ok, failed int
 	written, unchanged bool
 	run                bool // without errors
+	moved              bool // results differ from the frozen ones
 }
 
 // count notes what a run came to.
@@ -39,6 +40,8 @@ func (t *tally) count(res document.Result, w written) {
 		t.run, t.written, t.unchanged = true, w.dir != "" && !w.unchanged, w.unchanged
 		t.failed = len(exhibit.Failed(res.Checks))
 		t.ok = len(res.Checks) - t.failed
+		f := res.Package.Frozen
+		t.moved = f != nil && f.Current && !f.Agrees()
 	}
 }
 

@@ -15,14 +15,16 @@ import (
 // outcome is what --json writes for a FILE. Places are as seen from the current
 // folder; numbers are SI.
 type outcome struct {
-	File        string         `json:"file"`
-	Failure     string         `json:"failure,omitempty"` // where FILE could not be run or written at all
-	Diagnostics diag.List      `json:"diagnostics"`
-	Checks      []ledger.Check `json:"checks"`
-	Built       string         `json:"built"`               // the folder of the package, or ""
-	Printed     string         `json:"printed,omitempty"`   // the PDF
-	Unchanged   bool           `json:"unchanged,omitempty"` // it held the very same already; nothing was written
-	Why         []*because     `json:"why,omitempty"`       // what --why asked for
+	File        string          `json:"file"`
+	Failure     string          `json:"failure,omitempty"` // where FILE could not be run or written at all
+	Diagnostics diag.List       `json:"diagnostics"`
+	Checks      []ledger.Check  `json:"checks"`
+	Built       string          `json:"built"`               // the folder of the package, or ""
+	Printed     string          `json:"printed,omitempty"`   // the PDF
+	Frozen      *exhibit.Frozen `json:"frozen,omitempty"`    // how the results stand to the frozen ones
+	FrozenAs    string          `json:"frozen_as,omitempty"` // the file that freeze wrote
+	Unchanged   bool            `json:"unchanged,omitempty"` // it held the very same already; nothing was written
+	Why         []*because      `json:"why,omitempty"`       // what --why asked for
 }
 
 // written is what a run wrote: the folder of the package or the PDF, or neither;
@@ -45,7 +47,7 @@ func (a *app) report(src source, res document.Result, w written) int {
 		if err != nil {
 			return a.fail(src.given, err)
 		}
-		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(w.dir), Printed: filepath.ToSlash(w.pdf), Unchanged: w.unchanged, Why: w.because})
+		a.writeJSON(outcome{File: src.given, Diagnostics: list, Checks: rows, Built: filepath.ToSlash(w.dir), Printed: filepath.ToSlash(w.pdf), Unchanged: w.unchanged, Why: w.because, Frozen: frozenOf(res)})
 	} else {
 		a.writeDiagnostics(src, list, res.Files)
 	}
@@ -66,6 +68,10 @@ func (a *app) report(src source, res document.Result, w written) int {
 			page = filepath.ToSlash(filepath.Join(w.dir, "index.html"))
 		}
 		fmt.Fprint(a.stdout, summary(src.given, page, w.unchanged, checks))
+		fmt.Fprint(a.stdout, frozenStanding(res.Package.Frozen, src.given, res.Package.Meta))
+	}
+	if f := res.Package.Frozen; a.flags.frozen && f != nil && !f.Agrees() {
+		return exitFrozen
 	}
 	if a.flags.strict && len(exhibit.Failed(checks)) > 0 {
 		return exitStrict
@@ -115,4 +121,12 @@ func (a *app) writeJSON(o outcome) {
 	if err := e.Encode(o); err != nil {
 		panic(err)
 	}
+}
+
+// frozenOf is how a run stands to frozen results; nil where there are none.
+func frozenOf(res document.Result) *exhibit.Frozen {
+	if res.Package == nil {
+		return nil
+	}
+	return res.Package.Frozen
 }

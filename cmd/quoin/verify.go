@@ -22,18 +22,18 @@ import (
 
 // verdict is what is found of a written package: what --json writes for a DIR.
 type verdict struct {
-	Folder   string         `json:"folder"`
-	Failure  string         `json:"failure,omitempty"` // where it is no package at all
-	Tool     string         `json:"tool"`              // that wrote it
-	Verified string         `json:"verified_by"`       // this program
-	Files    int            `json:"files"`             // that the manifest lists
-	Faults   []ledger.Fault `json:"faults"`            // held to the manifest
-	Compared string         `json:"compared"`          // "bytes", "values" or "": see Why
-	Why      string         `json:"why,omitempty"`     // why not bytes, or nothing
-	Differ   []ledger.Fault `json:"differ"`            // built again: files, or values by id
-	Largest  float64        `json:"largest"`           // difference of a number, of itself
-	Notes    []ledger.Fault `json:"notes,omitempty"`   // left by file managers
-	Same     bool           `json:"same"`
+	Folder   string        `json:"folder"`
+	Failure  string        `json:"failure,omitempty"` // where it is no package at all
+	Tool     string        `json:"tool"`              // that wrote it
+	Verified string        `json:"verified_by"`       // this program
+	Files    int           `json:"files"`             // that the manifest lists
+	Faults   []ledger.Flaw `json:"faults"`            // held to the manifest
+	Compared string        `json:"compared"`          // "bytes", "values" or "": see Why
+	Why      string        `json:"why,omitempty"`     // why not bytes, or nothing
+	Differ   []ledger.Flaw `json:"differ"`            // built again: files, or values by id
+	Largest  float64       `json:"largest"`           // difference of a number, of itself
+	Notes    []ledger.Flaw `json:"notes,omitempty"`   // left by file managers
+	Same     bool          `json:"same"`
 }
 
 // What was compared.
@@ -67,7 +67,7 @@ func (a *app) verify(dir string) int {
 	}
 	v.Same = v.Failure == "" && len(v.Faults) == 0 && v.Compared != "" && len(v.Differ) == 0
 	if a.flags.json {
-		v.Faults, v.Differ = append([]ledger.Fault{}, v.Faults...), append([]ledger.Fault{}, v.Differ...)
+		v.Faults, v.Differ = append([]ledger.Flaw{}, v.Faults...), append([]ledger.Flaw{}, v.Differ...)
 		e := json.NewEncoder(a.stdout)
 		e.SetEscapeHTML(false)
 		if err := e.Encode(v); err != nil {
@@ -149,6 +149,7 @@ func again(inputs fs.FS, facts ledger.BuildFacts) (map[string][]byte, error) {
 		o.Overrides = append(o.Overrides, exhibit.Override{Name: set.Name, Text: set.Text})
 	}
 	res := document.Run(document.Source{FS: inputs, Main: facts.Main}, o)
+	(&app{}).thaw(inputs, facts.Main, &res)
 	if res.Package == nil {
 		for _, d := range res.Diagnostics.Sort() {
 			return nil, fmt.Errorf("%s:%d: %s", d.Range.File, d.Range.Line, d.Summary)
@@ -174,17 +175,17 @@ func (v *verdict) bytes(root *os.Root, m ledger.ManifestFacts, files map[string]
 		delete(sums, name)
 		switch data := files[name]; {
 		case !ok:
-			v.Differ = append(v.Differ, ledger.Fault{Path: name, What: "comes out and is not in the package"})
+			v.Differ = append(v.Differ, ledger.Flaw{Path: name, What: "comes out and is not in the package"})
 		case name == ledger.ManifestFile:
 			if text, err := ledger.ReadRegular(root, name, readLimit); err != nil || !bytes.Equal(text, data) {
-				v.Differ = append(v.Differ, ledger.Fault{Path: name, What: "comes out otherwise"})
+				v.Differ = append(v.Differ, ledger.Flaw{Path: name, What: "comes out otherwise"})
 			}
 		case ledger.Sum(data) != sum:
-			v.Differ = append(v.Differ, ledger.Fault{Path: name, What: "comes out otherwise" + v.more(root, name, data)})
+			v.Differ = append(v.Differ, ledger.Flaw{Path: name, What: "comes out otherwise" + v.more(root, name, data)})
 		}
 	}
 	for _, name := range slices.Sorted(maps.Keys(sums)) {
-		v.Differ = append(v.Differ, ledger.Fault{Path: name, What: "does not come out of the inputs"})
+		v.Differ = append(v.Differ, ledger.Flaw{Path: name, What: "does not come out of the inputs"})
 	}
 }
 

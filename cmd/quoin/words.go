@@ -11,6 +11,8 @@ import (
 	"quoin/calc/diag"
 	"quoin/calc/document"
 	"quoin/calc/exhibit"
+	"quoin/calc/quantity"
+	"quoin/render"
 	"quoin/render/ledger"
 )
 
@@ -48,7 +50,7 @@ cache folder. It may be deleted at any time, and never changes a byte of a packa
 It is not used where it would lie inside the package.
 
 Exit codes: 0 built, 1 errors, 2 wrong usage, 3 built, but with --strict a check
-is not met.`
+is not met, 4 built, but with --frozen results differ from the frozen ones.`
 	buildExample = `  quoin build package.md
   quoin build package.md -o issue-b --set R=5 --strict
   quoin build . --strict`
@@ -60,7 +62,7 @@ Nothing is drawn and nothing is written. DIR stands for every document in it and
 below, as for build.
 
 Exit codes: 0 no errors, 1 errors, 2 wrong usage, 3 no errors, but with --strict a
-check is not met.`
+check is not met, 4 no errors, but with --frozen results differ from the frozen ones.`
 	checkExample = `  quoin check package.md`
 
 	printUse   = "print FILE..."
@@ -73,7 +75,7 @@ A PDF that is there is replaced when the new one is whole; any other file is lef
 alone. No folder of a package is written.
 
 Exit codes: 0 printed, 1 errors, 2 wrong usage, 3 printed, but with --strict a
-check is not met.`
+check is not met, 4 printed, but with --frozen results differ from the frozen ones.`
 	printExample = `  quoin print package.md
   quoin print package.md -o issue-b.pdf --strict`
 
@@ -93,6 +95,42 @@ not, or it could not be built again, or DIR is no package; 2 wrong usage.`
 	verifyExample = `  quoin verify package.package
   quoin verify --json issue-a issue-b`
 
+	freezeUse   = "freeze FILE..."
+	freezeShort = "write the results of the document beside it, for version control"
+	freezeLong  = `Run the document FILE and write its results to STEM.frozen beside it: a line a value
+with its unit, and the checks, the assumptions, the blocks and the hashes of the files
+read. Commit it: its difference reads as what moved. From then on build, check and
+print say whether the results still agree with it, within one part in a million.
+
+Where a value has not moved, its line stays as it is. Results frozen of another
+revision than the document is at now become what changes are told against and
+marked in the page, until a further revision is frozen.
+
+Exit codes: 0 frozen, 1 errors, 2 wrong usage.`
+	freezeExample = `  quoin freeze package.md
+  git add package.md package.frozen`
+
+	compareUse   = "compare OLD NEW"
+	compareShort = "tell what changed between two packages, documents, frozen results or revisions"
+	compareLong  = `Tell what is not the same in NEW as it was in OLD: checks that flipped, inputs,
+files with other bytes, assumptions, results beyond a tolerance, the furthest moved
+first, and blocks. Each of the two is
+
+  a folder that build wrote       as it was written
+  a file STEM.frozen              as it was frozen
+  a document                      run now, with the files around it
+  REVISION:PATH                   any of these in a commit, by tag, branch or number,
+                                  PATH from the top of the repository or from here
+
+Of a commit all files are read through git; the work tree is not touched. The
+numbers are in the units in which each shows them, and compared whatever these are.
+
+Exit codes: 0 compared, 1 errors, 2 wrong usage, 4 with --same, where results differ.`
+	compareExample = `  quoin compare package.frozen package.md
+  quoin compare v1:package.md package.md -o changes.html
+  quoin compare HEAD~3:calc/package.md HEAD:calc/package.md --tolerance '0.1 %'
+  quoin compare issue-a issue-b --json`
+
 	blocksUse   = "blocks [KIND...]"
 	blocksShort = "show the block kinds, their fields and values, and the rest of the language"
 	blocksLong  = `Without an argument, list the block kinds and the other parts of the language. With
@@ -110,17 +148,23 @@ piece by piece. A folder that holds anything is left alone.`
 	newExample = `  quoin new tower
   quoin new tower --units US`
 
-	flagOut     = "write the package to the folder `DIR`"
-	flagPDF     = "write the PDF to `FILE`"
-	flagRoot    = "read nothing outside `DIR`"
-	flagSet     = "replace a value of the document, as in `name=value`; may be repeated"
-	flagWhy     = "say why the block, formula line or check `NAME` was computed or not, and what it read; may be repeated"
-	flagStrict  = "exit with 3 when a check is not met"
-	flagCache   = "compute and draw everything anew, and keep nothing"
-	flagUnits   = "the units of the new package, `SI` or US"
-	flagAsData  = "write the reference as JSON"
-	flagVerdict = "write what was found to stdout as JSON, one object for each DIR"
-	flagJSON    = "write diagnostics and checks to stdout as JSON, one object for each FILE"
+	flagOut         = "write the package to the folder `DIR`"
+	flagPDF         = "write the PDF to `FILE`"
+	flagRoot        = "read nothing outside `DIR`"
+	flagSet         = "replace a value of the document, as in `name=value`; may be repeated"
+	flagWhy         = "say why the block, formula line or check `NAME` was computed or not, and what it read; may be repeated"
+	flagStrict      = "exit with 3 when a check is not met"
+	flagCache       = "compute and draw everything anew, and keep nothing"
+	flagUnits       = "the units of the new package, `SI` or US"
+	flagAsData      = "write the reference as JSON"
+	flagVerdict     = "write what was found to stdout as JSON, one object for each DIR"
+	flagJSON        = "write diagnostics and checks to stdout as JSON, one object for each FILE"
+	flagFrozen      = "exit with 4 when results differ from the frozen ones; without these it is an error"
+	flagNoSet       = "refused: what is frozen is the document as it stands"
+	flagSheet       = "write a change sheet to `FILE.html`"
+	flagTolerance   = "how far a number may move, as a part of itself, and count as the same; `1e-6` or '0.1 %'"
+	flagSame        = "exit with 4 when results differ"
+	flagCompareJSON = "write what changed to stdout as JSON"
 
 	progressRun   = "computing"
 	progressDraw  = "drawing"
@@ -135,11 +179,14 @@ func usageError(err error) string {
 }
 
 var (
-	errNoDir   = fmt.Errorf("name a folder to make, as in: quoin new tower")
-	errOneDir  = fmt.Errorf("name one folder; a name with blanks stands in quotes")
-	errUnits   = fmt.Errorf("--units is SI or US")
-	errNoFile  = fmt.Errorf("name a FILE or a DIR, as in: quoin build package.md")
-	errOneFile = fmt.Errorf("-o takes one FILE at a time")
+	errNoDir     = fmt.Errorf("name a folder to make, as in: quoin new tower")
+	errOneDir    = fmt.Errorf("name one folder; a name with blanks stands in quotes")
+	errUnits     = fmt.Errorf("--units is SI or US")
+	errNoFile    = fmt.Errorf("name a FILE or a DIR, as in: quoin build package.md")
+	errOneFile   = fmt.Errorf("-o takes one FILE at a time")
+	errTwo       = fmt.Errorf("name two things to compare, the old one first, as in: quoin compare v1:package.md package.md")
+	errNoHTML    = fmt.Errorf("-o takes the name of a change sheet, FILE.html")
+	errFreezeSet = fmt.Errorf("freeze takes no --set: what is frozen are the results of the document as it stands")
 )
 
 func errTopic(given, near string) error {
@@ -164,6 +211,9 @@ func tallyLine(file string, t tally) string {
 		file += ": written"
 	default:
 		file += ": no errors"
+	}
+	if t.moved {
+		file += "; results differ from the frozen ones"
 	}
 	return file + "; checks: " + checksOf(t.ok, t.failed) + "\n"
 }
@@ -214,6 +264,10 @@ func checksOf(ok, failed int) string {
 		return fmt.Sprintf("%d OK", ok)
 	}
 	return fmt.Sprintf("%d OK, %d NOT OK", ok, failed)
+}
+
+func errTolerance(given string) error {
+	return fmt.Errorf("--tolerance %q is no number from 0 to 1, such as 1e-6 or '0.1 %%'", given)
 }
 
 func errSet(given string) error {
@@ -438,7 +492,7 @@ func otherArchitecture(arch string) string {
 }
 
 // resultsApart is how far results that differ are apart.
-func resultsApart(largest float64, differ []ledger.Fault) string {
+func resultsApart(largest float64, differ []ledger.Flaw) string {
 	if len(differ) == 0 {
 		return fmt.Sprintf("; its numbers agree to %.1g", max(largest, 1e-16))
 	}
@@ -448,7 +502,7 @@ func resultsApart(largest float64, differ []ledger.Fault) string {
 // words is a verdict in full.
 func (v *verdict) words() string {
 	var b strings.Builder
-	list := func(faults []ledger.Fault) {
+	list := func(faults []ledger.Flaw) {
 		for i, f := range faults {
 			if i == 50 {
 				fmt.Fprintf(&b, "  and %d more\n", len(faults)-i)
@@ -516,4 +570,198 @@ func spills(sheets, pages int) string {
 
 func uncounted(sheets, pages int) string {
 	return fmt.Sprintf("of %d sheets only %d pages were found in the PDF", sheets, pages)
+}
+
+// Of frozen results.
+const (
+	frozenNoFile      = "is no file; what is frozen goes there"
+	frozenMissing     = "there are no frozen results %s beside this document"
+	frozenMissingHint = "quoin freeze %s writes them"
+	frozenListed      = 8 // of what moved, on the terminal
+)
+
+// ofRevision is whose results are meant.
+func ofRevision(rev string) string {
+	if rev == "" {
+		return "a document without a revision"
+	}
+	return "revision " + rev
+}
+
+// revisionNow is the revision a document is at.
+func revisionNow(m exhibit.Meta) string {
+	if n := len(m.Revision); n > 0 {
+		return m.Revision[n-1].Rev
+	}
+	return ""
+}
+
+// frozenStanding is how results stand to the frozen ones; nothing without any.
+func frozenStanding(f *exhibit.Frozen, file string, m exhibit.Meta) string {
+	if f == nil {
+		return ""
+	}
+	var b strings.Builder
+	switch {
+	case f.Agrees():
+		fmt.Fprintf(&b, "frozen: agrees with the frozen results of %s\n", ofRevision(f.Revision))
+	case f.Current:
+		fmt.Fprintf(&b, "frozen: results differ from the frozen ones of %s: %s\n", ofRevision(f.Revision), movedCounts(f.Moved))
+	default:
+		fmt.Fprintf(&b, "frozen: changed since %s: %s\n", ofRevision(f.Revision), movedCounts(f.Moved))
+	}
+	b.WriteString(movedLines(f.Moved, frozenListed))
+	var files []string
+	for _, m := range f.Files {
+		files = append(files, m.ID)
+	}
+	if len(files) > 0 && !f.Agrees() {
+		fmt.Fprintf(&b, "  files with other bytes: %s\n", strings.Join(files, ", "))
+	}
+	if !f.Current {
+		fmt.Fprintf(&b, "  %s is not frozen yet: quoin freeze %s\n", ofRevision(revisionNow(m)), asWord(file))
+	}
+	return b.String()
+}
+
+// frozenSummary is what freeze did.
+func frozenSummary(file, target string, now, former *ledger.Frozen, moved *exhibit.Frozen, unchanged bool) string {
+	var b strings.Builder
+	verb := "frozen in " + target
+	if unchanged {
+		verb = "unchanged: " + target
+	}
+	fmt.Fprintf(&b, "%s: %s, %s\n", file, verb, ofRevision(now.Revision))
+	switch {
+	case former == nil:
+	case moved.Agrees():
+		fmt.Fprintf(&b, "nothing moved since it was frozen at %s\n", ofRevision(former.Revision))
+	default:
+		fmt.Fprintf(&b, "moved since it was frozen at %s: %s\n", ofRevision(former.Revision), movedCounts(moved.Moved))
+		b.WriteString(movedLines(moved.Moved, frozenListed))
+	}
+	return b.String()
+}
+
+// movedCounts counts what moved: "1 check, of which 1 flipped; 2 inputs; 30 values".
+func movedCounts(list []exhibit.Moved) string {
+	count, flipped := map[string]int{}, 0
+	for _, m := range list {
+		count[m.What]++
+		if m.Flipped {
+			flipped++
+		}
+	}
+	var parts []string
+	for _, what := range []string{exhibit.MovedCheck, exhibit.MovedInput, exhibit.MovedValue, exhibit.MovedSeries, exhibit.MovedAssumption} {
+		n := count[what]
+		if n == 0 {
+			continue
+		}
+		text := plural(n, what)
+		if what == exhibit.MovedCheck && flipped > 0 {
+			text += fmt.Sprintf(" (%d flipped)", flipped)
+		}
+		parts = append(parts, text)
+	}
+	return strings.Join(parts, ", ")
+}
+
+func plural(n int, what string) string {
+	if n == 1 || what == exhibit.MovedSeries {
+		return fmt.Sprintf("%d %s", n, what)
+	}
+	return fmt.Sprintf("%d %ss", n, what)
+}
+
+// movedLines are lines about the first of what moved, and how many more there are.
+func movedLines(list []exhibit.Moved, most int) string {
+	var b strings.Builder
+	for i, m := range list {
+		if i == most {
+			fmt.Fprintf(&b, "  and %d more\n", len(list)-most)
+			break
+		}
+		b.WriteString("  " + movedLine(m) + "\n")
+	}
+	return b.String()
+}
+
+// movedLine is one thing that moved: what it is, and was.
+func movedLine(m exhibit.Moved) string {
+	name := movedName(m)
+	switch {
+	case m.Old == "":
+		return name + ": new, " + m.New
+	case m.New == "":
+		return name + ": gone, was " + m.Old
+	}
+	text := name + ": " + m.New + ", was " + m.Old
+	if m.Flipped {
+		text = "flipped: " + text
+	}
+	if m.By != nil && m.What != exhibit.MovedCheck {
+		text += " (" + render.Part(*m.By) + ")"
+	}
+	return text
+}
+
+// movedName is the name of what moved, of an item its level or its number.
+func movedName(m exhibit.Moved) string {
+	switch {
+	case m.Label != "" && m.What == exhibit.MovedCheck:
+		return m.ID + " at " + m.Label
+	case m.Index != "" && m.Label != "":
+		return m.ID + "[" + m.Index + "] at " + m.Label
+	case m.Index != "":
+		return m.ID + "[" + m.Index + "]"
+	}
+	return m.ID
+}
+
+// Of things that are compared.
+const (
+	notWritten    = "this folder is no package that quoin wrote"
+	oldPackage    = "this package was written by an earlier program, without results.txt; build it again"
+	sheetForeign  = "exists and is no change sheet; it is left as it is"
+	gitNone       = "there is no such file, and no git repository here in which it could be a revision"
+	gitNoRevision = "there is no revision %s in this repository"
+	gitShallow    = "there is no revision %s in this repository, which holds a part of the history only: git fetch --unshallow brings the rest"
+	gitNoFile     = "revision %s has no file %s"
+	gitNoTree     = "git cannot list the files of this revision"
+	gitNoObject   = "git does not hold the bytes of this file"
+	gitElsewhere  = "the commit holds a pointer to this file only: its bytes are kept outside git"
+	gitLinkOut    = "this is a link that leads out of the repository"
+	gitLinkLoop   = "links of this path lead round in a circle"
+)
+
+// comparedText is what changed, in words.
+func comparedText(old, now string, d *ledger.Difference) string {
+	var b strings.Builder
+	fmt.Fprintf(&b, "old: %s\nnew: %s\n", comparedName(old, d.Old), comparedName(now, d.New))
+	if !d.Differs() {
+		fmt.Fprintf(&b, "results: the same, %d numbers within %s\n", d.Compared, quantity.Plain(d.Tolerance))
+	} else {
+		fmt.Fprintf(&b, "results differ: %s; %d numbers compared, tolerance %s\n", movedCounts(d.Results()), d.Compared, quantity.Plain(d.Tolerance))
+	}
+	for _, part := range []struct {
+		title string
+		list  []exhibit.Moved
+	}{{"checks", d.Checks}, {"inputs", d.Inputs}, {"files with other bytes", d.Files}, {"assumptions", d.Assumptions}, {"values", d.Values}, {"series", d.Series}, {"blocks", d.Blocks}} {
+		if len(part.list) > 0 {
+			fmt.Fprintf(&b, "%s:\n%s", part.title, movedLines(part.list, len(part.list)))
+		}
+	}
+	return b.String()
+}
+
+func comparedName(given string, h ledger.Head) string {
+	text := given
+	if h.Revision != "" {
+		text += ", revision " + h.Revision
+		if h.Date != "" {
+			text += " of " + h.Date
+		}
+	}
+	return text
 }

@@ -15,7 +15,7 @@ const Agreement = 1e-9
 // Agree compares the values, series and checks of two results.json by id, and gives
 // the largest difference of a number, relative to the largest of its value or series,
 // and everything that is not the same within tolerance, the first of each id.
-func Agree(was, now []byte, tolerance float64) (largest float64, differ []Fault, err error) {
+func Agree(was, now []byte, tolerance float64) (largest float64, differ []Flaw, err error) {
 	a, err := readTables(was)
 	if err != nil {
 		return 0, nil, err
@@ -26,21 +26,21 @@ func Agree(was, now []byte, tolerance float64) (largest float64, differ []Fault,
 	}
 	for _, id := range slices.Sorted(maps.Keys(a)) {
 		if _, ok := b[id]; !ok {
-			differ = append(differ, Fault{id, "does not come out any more"})
+			differ = append(differ, Flaw{id, "does not come out any more"})
 			continue
 		}
 		d, why := apart(a[id], b[id])
 		largest = max(largest, d)
 		switch {
 		case why != "":
-			differ = append(differ, Fault{id, why})
+			differ = append(differ, Flaw{id, why})
 		case d > tolerance:
-			differ = append(differ, Fault{id, fmt.Sprintf("differs by %.2g of itself", d)})
+			differ = append(differ, Flaw{id, fmt.Sprintf("differs by %.2g of itself", d)})
 		}
 	}
 	for _, id := range slices.Sorted(maps.Keys(b)) {
 		if _, ok := a[id]; !ok {
-			differ = append(differ, Fault{id, "comes out and was not there"})
+			differ = append(differ, Flaw{id, "comes out and was not there"})
 		}
 	}
 	return largest, differ, nil

@@ -19,8 +19,8 @@ import (
 // followed, and through os.Root nothing outside the folder is read, whatever the
 // manifest names and whatever changes meanwhile.
 
-// Fault is one thing that is not as the package was written.
-type Fault struct {
+// Flaw is one thing that is not as the package was written.
+type Flaw struct {
 	Path string `json:"path"` // slash path below the folder of the package
 	What string `json:"what"`
 }
@@ -28,9 +28,9 @@ type Fault struct {
 // Exam is what the folder of a package was found to hold.
 type Exam struct {
 	Manifest ManifestFacts
-	Sum      string  // SHA-256 of manifest.json, in hexadecimal
-	Faults   []Fault // by path; none: every file is there with its bytes, and none more
-	Litter   []Fault // what file managers left; no part of the package
+	Sum      string // SHA-256 of manifest.json, in hexadecimal
+	Faults   []Flaw // by path; none: every file is there with its bytes, and none more
+	Litter   []Flaw // what file managers left; no part of the package
 }
 
 const (
@@ -67,14 +67,14 @@ func Examine(root *os.Root) (*Exam, error) {
 		x.fault(p, "is missing")
 	}
 	x.digest()
-	byPath := func(a, b Fault) int { return strings.Compare(a.Path+"\x00"+a.What, b.Path+"\x00"+b.What) }
+	byPath := func(a, b Flaw) int { return strings.Compare(a.Path+"\x00"+a.What, b.Path+"\x00"+b.What) }
 	slices.SortFunc(x.Faults, byPath)
 	slices.SortFunc(x.Litter, byPath)
 	return x, nil
 }
 
 func (x *Exam) fault(path, format string, args ...any) {
-	x.Faults = append(x.Faults, Fault{path, fmt.Sprintf(format, args...)})
+	x.Faults = append(x.Faults, Flaw{path, fmt.Sprintf(format, args...)})
 }
 
 // list is what the manifest names. A manifest that is not byte by byte as this
@@ -136,7 +136,7 @@ func (x *Exam) walk(root *os.Root, listed map[string]ManifestEntry) error {
 				return fs.SkipDir
 			}
 		case !ours && slices.Contains(litter, d.Name()) && d.Type().IsRegular():
-			x.Litter = append(x.Litter, Fault{p, "was left by a file manager and is no part of the package"})
+			x.Litter = append(x.Litter, Flaw{p, "was left by a file manager and is no part of the package"})
 		case !ours:
 			x.fault(p, "is no part of the package")
 		case !d.Type().IsRegular():

@@ -36,6 +36,7 @@ func Readme(p *exhibit.Package, digest string) []byte {
 	line("                 and reads and prints without scripts. Its fonts and scripts are inside; their")
 	line("                 licences stand after the last sheet, on the screen.")
 	line("  results.json   every value, series and check, in SI units at full precision (UTF-8, JSON).")
+	line("  results.txt    the same in the units shown, a line a value, for comparing.")
 	line("  tables/        every table and the data of every figure (UTF-8, CSV: comma, decimal point,")
 	line("                 units in the head row).")
 	line("  inputs/        all it was built from: the document and the files it names, and build.json.")

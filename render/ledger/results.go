@@ -2,6 +2,7 @@ package ledger
 
 import (
 	"cmp"
+	"encoding/json"
 	"fmt"
 	"slices"
 	"strings"
@@ -109,6 +110,9 @@ func Results(p *exhibit.Package) ([]byte, error) {
 	o.member("schema", must(Schema))
 	o.member("package", must(facts(p)))
 	o.member("tool", must(tool(p.Provenance.Tool)))
+	if f := p.Frozen; f != nil {
+		o.member("frozen", must(frozenFacts{f.File, f.Revision, f.Current, f.Agrees(), len(f.Moved)}))
+	}
 	for _, list := range []struct {
 		name string
 		rows func() ([]byte, error)
@@ -272,4 +276,41 @@ func sorted[T any](what string, rows []T, id func(T) string) ([]T, error) {
 		}
 	}
 	return rows, nil
+}
+
+// Curves are the series of a results.json, by id.
+func Curves(results []byte) (map[string]exhibit.Curve, error) {
+	var r struct {
+		Series []Series `json:"series"`
+	}
+	if err := json.Unmarshal(results, &r); err != nil {
+		return nil, fmt.Errorf("results.json cannot be read: %w", err)
+	}
+	out := map[string]exhibit.Curve{}
+	for _, s := range r.Series {
+		if len(s.X.Values) != len(s.Y.Values) {
+			return nil, fmt.Errorf("results.json: the series %s has unequal sides", s.ID)
+		}
+		side := func(a Axis) (quantity.Value, error) {
+			v := quantity.Value{SI: a.Values, Shape: quantity.Vector}
+			if a.Unit != "" {
+				u, err := quantity.ParseUnit(a.Unit)
+				if err != nil {
+					return v, err
+				}
+				v.Dim = u.Dim
+			}
+			return v, nil
+		}
+		x, err := side(s.X)
+		if err != nil {
+			return nil, err
+		}
+		y, err := side(s.Y)
+		if err != nil {
+			return nil, err
+		}
+		out[s.ID] = exhibit.Curve{ID: s.ID, X: x, Y: y}
+	}
+	return out, nil
 }

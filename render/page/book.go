@@ -31,6 +31,7 @@ type book struct {
 	trail    trail               // what leads values home
 	within   string              // the block being made
 	lead     float64             // em, of the symbols before the equals signs of that block
+	revised  revised             // what is marked as changed
 	own      own                 // the clothes of an office
 	err      error               // the first, of making the page
 }
@@ -38,8 +39,15 @@ type book struct {
 // parsed is the templates; each book gives its own answers to their questions.
 var parsed = template.Must(template.New("").Funcs((&book{}).funcs()).ParseFS(templates.Pages, "*.html"))
 
+func openState(p *exhibit.Package, o Options) []string {
+	if o.Body {
+		return o.State
+	}
+	return append(OpenState(p), o.State...)
+}
+
 func newBook(p *exhibit.Package, o Options) *book {
-	b := &book{p: p, o: o, open: append(OpenState(p), o.State...), ids: map[string]bool{}, sheets: map[string]int{},
+	b := &book{p: p, o: o, open: openState(p, o), ids: map[string]bool{}, sheets: map[string]int{},
 		origins: map[string]string{}, exhibits: map[any]string{}, entries: map[string]exhibit.Entry{}, refs: map[string]string{}, rows: map[string]string{}, cited: map[string][]string{}, notes: map[int]bool{}, marked: map[int]bool{}, symbols: symbolsOf(p), trail: newTrail(p)}
 	for _, e := range p.Values {
 		b.entries[e.ID] = e
@@ -55,6 +63,7 @@ func newBook(p *exhibit.Package, o Options) *book {
 	for _, f := range p.Footnotes {
 		b.notes[f.Index] = true
 	}
+	b.revised = newRevised(p)
 	b.tmpl = template.Must(parsed.Clone()).Funcs(b.funcs())
 	return b
 }
@@ -72,6 +81,9 @@ func (b *book) claim(id string) string {
 // items is everything in order: cover, contents, check summary, chapters, registers.
 func (b *book) items() []item {
 	body, toc := b.chapters()
+	if b.o.Body {
+		return b.withChanges(body)
+	}
 	back, more := b.registers()
 	cover := b.ownCover()
 	if cover == nil {
@@ -82,7 +94,7 @@ func (b *book) items() []item {
 		last := total(s[len(s)-1].items)
 		contents[0].fresh = last+total(contents) > b.room() && last > b.room()/3
 	}
-	return slices.Concat(cover, contents, b.summary(), body, back)
+	return slices.Concat(cover, contents, b.summary(), b.changes(), body, back)
 }
 
 // entry of the table of contents. One of the screen alone is not printed.
@@ -94,7 +106,11 @@ type entry struct {
 
 func (b *book) contents(toc []entry) []item {
 	out := []item{{name: "contents", high: headingHigh, keep: true, fresh: true, anchors: []string{"q-contents"}}}
-	toc = append([]entry{{Title: b.word("check_summary"), ID: "q-checks", Depth: 1}}, toc...)
+	first := []entry{{Title: b.word("check_summary"), ID: "q-checks", Depth: 1}}
+	if b.revised.any() {
+		first = append(first, entry{Title: b.revised.title(), ID: changesID, Depth: 1})
+	}
+	toc = append(first, toc...)
 	for _, e := range toc {
 		high := [4]float64{0, 7.5, 6.4, 5.1}[e.Depth]
 		out = append(out, item{name: "contents-row", data: e, high: high + 5.1*(lines(e.Title+e.Kind, 88)-1)})

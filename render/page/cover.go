@@ -232,6 +232,12 @@ func (b *book) coverRows() []coverRow {
 		add("Superseded by", coverLine{Open: clip(m.SupersededBy, titleChars)})
 	}
 	given("Source", sourceText(b.p))
+	if line, ok := b.frozenLine(); ok {
+		add("Frozen results", line)
+	}
+	if b.revised.any() {
+		b.revised.row(add("Changes", coverLine{Text: b.revised.legend()}))
+	}
 	if values, open := b.inputTally(); values != "" {
 		add("Inputs", coverLine{Text: values, Open: open}).Listed = "q-inputs"
 	}

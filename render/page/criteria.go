@@ -78,7 +78,7 @@ func (v criteriaView) high() float64 {
 		used, tall = 0, 0
 	}
 	for _, r := range v.Rows {
-		text := r.Label + r.Value.Text + r.Value.Numbers
+		text := r.Label + r.Value.Text + r.Value.Numbers + r.Value.Was.printed()
 		if r.Symbol != nil {
 			text += "R_xx "
 		}

@@ -140,7 +140,7 @@ func TestLongList(t *testing.T) {
 		}
 	}
 	show := func(i int) string { return quantity.Format(si[i], quantity.Digits) }
-	want := []labelled{{"1", show(0)}, {"2", show(1)}, {"3", show(2)}, {"⋮", ""}, {"49", show(48)}, {"least, " + strconv.Itoa(least+1), show(least)}, {"largest, " + strconv.Itoa(most+1), show(most)}}
+	want := []labelled{{Label: "1", Text: show(0)}, {Label: "2", Text: show(1)}, {Label: "3", Text: show(2)}, {Label: "⋮", Text: ""}, {Label: "49", Text: show(48)}, {Label: "least, " + strconv.Itoa(least+1), Text: show(least)}, {Label: "largest, " + strconv.Itoa(most+1), Text: show(most)}}
 	if !reflect.DeepEqual(view.Columns[0], want) {
 		t.Errorf("%v\nwant\n%v", view.Columns[0], want)
 	}

@@ -34,9 +34,13 @@ type equationView struct {
 	Source                                    any
 	Number, Use                               int
 	Wide, Method, Overridden, TopDown         bool
+	Was                                       *wasView
 }
 
-type labelled struct{ Label, Text string }
+type labelled struct {
+	Label, Text string
+	Was         *wasView
+}
 
 // equation is an equation as items: one, and further ones for a vector that is
 // longer than one can show.
@@ -58,7 +62,15 @@ func (b *book) equation(e *exhibit.Equation, label string) []item {
 		rows = b.formula(&v, e)
 	}
 	if e.Result != nil {
+		v.Was = b.was(e.Of(b.within))
+		if r := *e.Result; r.Shape == quantity.Number && len(r.SI) == 1 {
+			v.Was = b.wasNumber(b.shownAs(e, 0, e.Of(b.within)), false)
+		}
 		tall := b.result(&v, e)
+		if len(v.Columns) > 0 && !strings.HasPrefix(v.Over, "of ") {
+			v.Was = nil // its items say it
+		}
+		tall += 0.8 * v.Was.high(20)
 		if len(v.Columns) > 1 {
 			rows += tall
 		} else {
@@ -229,7 +241,7 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 				label = r.Labels[i]
 			}
 			last := len(v.Columns) - 1
-			v.Columns[last] = append(v.Columns[last], labelled{label, text(r.SI[i])})
+			v.Columns[last] = append(v.Columns[last], labelled{label, text(r.SI[i]), b.wasNumber(b.shownAs(e, i, e.Of(b.within)+"["+strconv.Itoa(i+1)+"]"), true)})
 		}
 		return 1.55 * float64(min(len(r.SI), tall)+1)
 	case len(r.SI) > 0:
@@ -238,14 +250,25 @@ func (b *book) result(v *equationView, e *exhibit.Equation) float64 {
 	return 1.6
 }
 
+// shownAs is a number of a result as it is shown.
+func (b *book) shownAs(e *exhibit.Equation, i int, id string) exhibit.Number {
+	unit := e.Result.Unit
+	if unit.Scale == 0 {
+		unit = b.p.System.Preferred(e.Result.Dim)
+	}
+	return exhibit.Number{Value: e.Result.SI[i], Unit: unit, Digits: e.Digits, ID: id}
+}
+
 // summary is a long vector in a few rows: its first items and the last, the least
 // and the largest. All of it stands in results.json.
 func summary(si []float64, text func(float64) string) (rows []labelled) {
-	row := func(words string, i int) { rows = append(rows, labelled{words + strconv.Itoa(i+1), text(si[i])}) }
+	row := func(words string, i int) {
+		rows = append(rows, labelled{Label: words + strconv.Itoa(i+1), Text: text(si[i])})
+	}
 	for i := range 3 {
 		row("", i)
 	}
-	rows = append(rows, labelled{"⋮", ""})
+	rows = append(rows, labelled{Label: "⋮"})
 	row("", len(si)-1)
 	least, most := 0, 0
 	for i, x := range si {

@@ -78,6 +78,7 @@ type cellView struct {
 	Mark              []int
 	Whole             bool   // a text that must not break: a date
 	Pad               string // how many digits are missing after the point
+	Was               *wasView
 }
 
 var date = regexp.MustCompile(`^\d{4}-\d{2}-\d{2}$`)
@@ -98,6 +99,14 @@ func (b *book) cell(c exhibit.Cell, unit *quantity.Unit) cellView {
 		v.Numbers = numbersText(c.Numbers)
 	}
 	v.ID = c.Numbers[0].ID
+	if v.Was = b.was(v.ID); len(c.Numbers) == 1 && v.Was != nil {
+		n := c.Numbers[0]
+		bare := unit != nil && n.Unit.Dim.Is(unit.Dim) && unit.Scale != 0
+		if bare {
+			n.Unit = *unit
+		}
+		v.Was = b.wasNumber(n, bare)
+	}
 	return v
 }
 
@@ -119,6 +128,7 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 		Symbol                      *expr.Node
 		Value                       cellView
 		Default, Wide               bool
+		Was                         *wasView
 	}
 	var out []item
 	const most = 36 // rows an item holds, so that a long echo can be cut
@@ -126,7 +136,7 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 		var rows []row
 		for _, r := range e.Rows[start:min(start+most, len(e.Rows))] {
 			wide := r.Value.Symbol != nil && equation.Setter{}.Symbols(r.Value.Symbol).Width > echoRoom
-			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default, wide})
+			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default, wide, b.wasInput(r.Field)})
 		}
 		high := 3.0
 		for i := 0; i < len(rows); {
@@ -135,7 +145,7 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 				n = 1
 			}
 			for _, r := range rows[i : i+n] {
-				tall = max(tall, lines(r.Label+r.Value.Text+r.Value.Numbers+r.Written+r.From, 44))
+				tall = max(tall, lines(r.Label+r.Value.Text+r.Value.Numbers+r.Written+r.From+r.Was.printed(), 44))
 				if r.Value.Symbol != nil {
 					tall = max(tall, equation.Setter{}.Symbols(r.Value.Symbol).Height*em/4.9)
 				}

@@ -29,6 +29,9 @@ func (b *book) figure(f *exhibit.Figure, label string) item {
 		Option                       template.JS
 		Values                       chart.Values
 	}{Label: label, ID: b.exhibits[f], Caption: f.Caption, CSV: "tables/" + f.ID + ".csv", Alt: f.Alt, Number: f.Number, Height: 380, Values: chart.ValuesOf(*f)}
+	if b.o.Body {
+		v.CSV = ""
+	}
 	twin, err := b.o.Picture(*f, "q-"+slug(f.ID)+"-")
 	b.fail(err, "figure %q", f.ID)
 	v.Twin = template.HTML(twin)
@@ -71,10 +74,11 @@ func slug(text string) string {
 
 type checkView struct {
 	Name, Item, Anchor, Demand, Relation, Limit, Ratio string
-	ID                                                 string        // of the row in its block
-	Again                                              bool          // the row above is of the same check
-	Of                                                 int           // of how many rows of this check it is the worst
-	Rests                                              []string      // open assumptions behind it
+	ID                                                 string   // of the row in its block
+	Again                                              bool     // the row above is of the same check
+	Of                                                 int      // of how many rows of this check it is the worst
+	Rests                                              []string // open assumptions behind it
+	Was                                                *wasView
 	Over                                               bool          // the bar would be longer than there is room
 	Formula                                            template.HTML // instead of a name in words
 	Sides                                              [2]numbersView
@@ -176,7 +180,9 @@ func (b *book) checkRow(c exhibit.Check, summary bool) checkRow {
 	} else {
 		r.ID = b.claimRow(c)
 	}
-	r.Sides = [2]numbersView{{r.Demand, b.side(c, 0)}, {r.Limit, b.side(c, 1)}}
+	r.Sides = [2]numbersView{{Numbers: r.Demand, ID: b.side(c, 0)}, {Numbers: r.Limit, ID: b.side(c, 1)}}
+	r.Was = b.wasCheck(c)
+	tall += r.Was.high(26)
 	high := func(tall float64) float64 { return 2.4 + 4.6*tall }
 	out := checkRow{short: r, shortHigh: high(tall)}
 	if out.short.Source, out.short.Rests = "", nil; c.Item != "" {

@@ -42,6 +42,7 @@ func (b *book) funcs() template.FuncMap {
 		"worded":     b.worded,
 		"evidenced":  evidenced,
 		"person":     personText,
+		"affected":   b.affected,
 		"align": func(a string) string {
 			return map[string]string{"right": "r", "center": "c"}[a]
 		},
@@ -162,13 +163,19 @@ func imageOf(n exhibit.Prose) *imageView {
 type liveView struct {
 	Text, Title string
 	Home        *homeView
+	Was         *wasView
 }
 
 func (b *book) live(l *exhibit.Live) *liveView {
 	if l == nil {
 		return nil
 	}
-	v := &liveView{Text: l.Text, Title: b.story(l.ID), Home: b.home(l.ID)}
+	v := &liveView{Text: l.Text, Title: b.story(l.ID), Home: b.home(l.ID), Was: b.was(l.ID)}
+	if len(l.Numbers) == 1 && v.Was != nil {
+		n := l.Numbers[0]
+		n.ID = b.itemOf(l.ID, n.Value)
+		v.Was = b.wasNumber(n, false)
+	}
 	if len(l.Numbers) > 0 {
 		v.Text = numbersText(l.Numbers)
 	}

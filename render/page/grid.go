@@ -16,6 +16,9 @@ const (
 	tightBeside                    = 0.95
 )
 
+// belowSize is the size of what stands under a cell, and its line, mm.
+const belowSize, belowLine = 7.4 * point, 7.4 * point * 1.3
+
 // breakable is how long a word of a cell may be, em: a longer one is broken.
 const breakable = 22
 
@@ -23,6 +26,7 @@ const breakable = 22
 // stay in one piece, and how wide that is, mm.
 type slot struct {
 	text        string
+	below       string  // in small letters under it, in print
 	symbol      float64 // a symbol before it, em
 	pad         float64 // digits missing after the point, em
 	right, head bool
@@ -52,7 +56,7 @@ func (s slot) set() (f *face, size, around float64) {
 // least is how narrow a cell can be, and most how wide it is in one line, mm.
 func (s slot) least() float64 {
 	f, size, around := s.set()
-	return size*max(s.symbol, min(breakable, f.longest(s.text))) + around
+	return max(size*max(s.symbol, min(breakable, f.longest(s.text))), belowSize*labelFace.longest(s.below)) + around
 }
 
 func (s slot) most() float64 {
@@ -67,6 +71,11 @@ func (s slot) most() float64 {
 // lines is how many lines a cell takes in so much room.
 func (s slot) lines(room float64) float64 {
 	f, size, around := s.set()
+	if s.below != "" {
+		small := labelFace.lines(s.below, (room-around)/belowSize)
+		s.below = ""
+		return s.lines(room) + small*belowLine/cellLine
+	}
 	if s.most() <= room+0.1 {
 		return 1
 	}

@@ -27,6 +27,8 @@ type Options struct {
 	// script element, and its height in pixels. Nil: pictures only.
 	Chart  func(f exhibit.Figure) (option []byte, height int, err error)
 	Assets Assets
+	// Body leaves out all but the chapters, and what stands for files of a package.
+	Body bool
 }
 
 // Assets is the bundle: the program's own files, taken over byte for byte.
@@ -43,6 +45,9 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 		return nil, b.err
 	}
 	b.number(sheets)
+	if err := b.affect(sheets); err != nil {
+		return nil, err
+	}
 	style := strings.Join([]string{o.Assets.FontsCSS, o.Assets.TemmlCSS, templates.PageCSS, sheetCSS(p, b.open, sheets)}, "\n") + ownCSS(p.Office)
 	if err := embeddable(style, "</style", "style"); err != nil {
 		return nil, err

@@ -41,6 +41,9 @@ func OpenState(p *exhibit.Package) []string {
 		}
 		say(true, "values overridden: %s%s", strings.Join(names, ", "), more)
 	}
+	if f := p.Frozen; f != nil {
+		say(f.Current && !f.Agrees(), "results differ from the frozen ones%s", ofRevision(f.Revision))
+	}
 	say(samePerson(p.Meta.Prepared.Initials, p.Meta.Checked.Initials), "not checked: same person")
 	if status == "issued" {
 		say(!named(p.Meta.Prepared), "not prepared by anyone named")

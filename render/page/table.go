@@ -168,7 +168,7 @@ func (v tableView) grid() grid {
 	for _, row := range v.Rows {
 		slots := make([]slot, len(row))
 		for i, c := range row {
-			slots[i] = slot{text: c.Text + c.Numbers, right: c.Right, tight: v.Tight}
+			slots[i] = slot{text: c.Text + c.Numbers, below: c.Was.printed(), right: c.Right, tight: v.Tight}
 			if c.Symbol != nil {
 				slots[i].symbol = 1.04 * (equation.Setter{}).Symbols(c.Symbol).Width
 			}

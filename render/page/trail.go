@@ -62,7 +62,10 @@ type side struct {
 }
 
 // numbersView is numbers, and the id of the value they are.
-type numbersView struct{ Numbers, ID string }
+type numbersView struct {
+	Numbers, ID string
+	Was         *wasView // none: the row of the check says it
+}
 
 // side is the id of what a check compares, 0 on the left and 1 on the right: of the
 // value, or of the expression as a step of its own.
@@ -222,9 +225,9 @@ func (b *book) depends(id string) []string {
 
 // stepView is a value as the trail tells it.
 type stepView struct {
-	Name, To, At, Made, Reads, Doc, Value, From string
-	Symbol                                      *expr.Node
-	Numbers                                     template.HTML
+	Name, To, At, Made, Reads, Doc, Value, From, Was string
+	Symbol                                           *expr.Node
+	Numbers                                          template.HTML
 }
 
 // steps is every value that something leads to, and what these depend on.
@@ -249,6 +252,7 @@ func (b *book) steps() []stepView {
 				v.Numbers = template.HTML(equation.Numbers(s.tree, b.p.System))
 			}
 		} else if e, ok := b.entries[id]; ok {
+			v.Was = b.was(id).told()
 			v.Symbol, v.Value, v.Doc, v.At = &expr.Node{Op: expr.Name, Text: id}, b.worth(e), e.Doc, b.at(e.Place)
 			if k != nil && name != id {
 				v.Made = "made by " + name + ", " + k.Kind

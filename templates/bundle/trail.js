@@ -144,6 +144,7 @@ class Card {
         box.append(set)
       }
     }
+    if (step.dataset.was) box.append(element('p', step.dataset.was, 'cw'))
     const numbers = step.querySelector('.num')
     if (numbers) {
       const set = scrolling()

@@ -2,6 +2,7 @@ package block
 
 import (
 	"errors"
+	"strconv"
 	"strings"
 
 	"quoin/calc/diag"
@@ -265,9 +266,12 @@ func (b *building) results(r *Run, m *structure.Model, given *matrixPair) {
 		t.Columns = append(t.Columns, Col("storey stiffness", u.stiffness))
 	}
 	for i := len(m.Levels) - 1; i >= 0; i-- {
-		row := []exhibit.Cell{{Text: m.Levels[i]}, Cell(m.H[i], u.length), Cell(m.Hs[i], u.length), Cell(m.W[i], u.force), Cell(m.Mass[i], u.mass)}
+		item := func(name string, x []float64, unit quantity.Unit) exhibit.Cell {
+			return exhibit.Cell{Numbers: []exhibit.Number{{Value: x[i], Unit: unit, ID: r.ID(name) + "[" + strconv.Itoa(i+1) + "]"}}}
+		}
+		row := []exhibit.Cell{{Text: m.Levels[i]}, item("h", m.H, u.length), item("h_s", m.Hs, u.length), item("w", m.W, u.force), item("m", m.Mass, u.mass)}
 		if storeys {
-			row = append(row, Cell(m.Ks[i], u.stiffness))
+			row = append(row, item("k_s", m.Ks, u.stiffness))
 		}
 		t.Rows = append(t.Rows, row)
 	}
