@@ -67,11 +67,11 @@ var Words = []Wording{
 	{"calculation", "Calculation", "before the number on the cover"},
 	{"project", "Project", "on the cover"},
 	{"client", "Client", "on the cover"},
+	{"discipline", "Discipline", "on the cover"},
 	{"location", "Location", "on the cover"},
 	{"authority", "Authority", "on the cover"},
 	{"basis", "Governing basis", "on the cover"},
 	{"criteria", "Design criteria", "heading on the cover"},
-	{"caution", "Caution", "heading of the short cautions on the cover"},
 	{"revisions", "Revisions", "caption of the revision table"},
 	{"contents", "Contents", "heading"},
 	{"check_summary", "Check summary", "heading"},
@@ -82,7 +82,6 @@ var Words = []Wording{
 	{"inputs", "Inputs", "heading of a register"},
 	{"records", "Records used", "heading of a register"},
 	{"software", "Software", "heading of a register"},
-	{"cautions", "Limitations and caution", "heading of a register"},
 }
 
 // Readable is the contrast that text must have (WCAG 2.2, 1.4.3).

@@ -44,6 +44,9 @@ func chunked[T any](name string, head float64, rows []T, high func(T) float64, a
 	return []item{it}
 }
 
+// cautions is the heading of what no one words anew.
+const cautions = "Limitations and caution"
+
 // registers is what stands after the chapters, lettered.
 func (b *book) registers() (out []item, toc []entry) {
 	letter := 'A'
@@ -52,7 +55,9 @@ func (b *book) registers() (out []item, toc []entry) {
 			return
 		}
 		number := string(letter)
-		title = b.word(title)
+		if title != cautions { // which no office calls otherwise
+			title = b.word(title)
+		}
 		letter++
 		head := item{name: "register", data: entry{Number: number, Title: title, ID: id}, high: headingHigh, keep: true, anchors: []string{id}, fresh: len(out) == 0}
 		out = append(append(out, head), items...)
@@ -94,7 +99,7 @@ func (b *book) registers() (out []item, toc []entry) {
 	add("q-inputs", "inputs", b.inputs())
 	add("q-records", "records", b.motions())
 	add("q-software", "software", b.software())
-	add("q-cautions", "cautions", b.cautions())
+	add("q-cautions", cautions, b.cautions())
 	return out, toc
 }
 

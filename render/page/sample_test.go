@@ -48,6 +48,7 @@ func sample() *exhibit.Package {
 	p.Meta = exhibit.Meta{
 		Title: "Lateral analysis of the four-storey archive block", Number: "QN-021-S-04", Project: "Harrow Quay Depository", Client: "Harrow Quay Trust",
 		Subject: "Base shear, storey forces, drift and stability under design earthquake motion", Location: "Harrow Quay, plot 7",
+		Contract: "HQ-26-114", Discipline: "structural", Authority: "Harrow Quay building office", Independence: "other team",
 		Basis: []string{"ASCE/SEI 7-22, chapters 11, 12 and 16", "Local amendments of the invented county"}, Paper: "A4", Status: "draft",
 		Prepared: exhibit.Sign{Initials: "RT", Date: "2026-03-02"},
 		Revision: []exhibit.Revision{
