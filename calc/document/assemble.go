@@ -139,6 +139,7 @@ func (a *assembly) block(s *section) *exhibit.Block {
 	a.refs = append(a.refs, res.Refs...)
 	show := func(part string) bool { return !c.Show.Given || slices.Contains(c.Show.Texts(), part) }
 	var inputs []exhibit.Item
+	n.overriddenRows(&res.Echo)
 	if len(res.Echo.Rows) > 0 {
 		inputs = append(inputs, exhibit.Item{Echo: &res.Echo})
 	}
@@ -307,11 +308,12 @@ func (d *run) sameChecks() {
 
 // registry lists every value with its origin and what it depends on.
 func (a *assembly) registry() {
+	moved := a.overrides()
 	for _, n := range a.nodes {
 		switch n.kind {
 		case lineNode:
 			a.p.Values = append(a.p.Values, exhibit.Entry{ID: n.name, Value: n.value, Tree: n.line.Tree, Place: n.place(), Anchor: n.anchor,
-				Depends: leaves(n.line.Tree), Doc: n.line.Description})
+				Depends: leaves(n.line.Tree), Doc: n.line.Description, Overridden: n.overridden != nil})
 		case blockNode:
 			deps := n.dependsOn()
 			for _, v := range n.result.Values {
@@ -322,6 +324,10 @@ func (a *assembly) registry() {
 			}
 			a.p.Series = append(a.p.Series, n.result.Series...)
 		}
+	}
+	for i := range a.p.Values {
+		first, _ := cutPath(a.p.Values[i].ID)
+		a.p.Values[i].Moved = moved[a.names[first]]
 	}
 	slices.SortFunc(a.p.Values, func(x, y exhibit.Entry) int { return cmp.Compare(x.ID, y.ID) })
 	slices.SortFunc(a.p.Series, func(x, y exhibit.Curve) int { return cmp.Compare(x.ID, y.ID) })

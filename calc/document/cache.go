@@ -39,6 +39,8 @@ const (
 	askKind    = "kind"
 	askFile    = "file"
 	askLine    = "line"
+	askSetting = "setting"
+	askWhatIf  = "what if"
 )
 
 // witness is the Env of a block, which remembers what was asked. It states every
@@ -88,6 +90,16 @@ func (w *witness) Line(name string) (*expr.Node, string) {
 	return w.scope.Line(name)
 }
 
+func (w *witness) Setting(name string) (quantity.Value, bool) {
+	w.ask(question{askSetting, name, ""})
+	return w.scope.Setting(name)
+}
+
+func (w *witness) WhatIf(cases [][]exhibit.Override) []block.Outcome {
+	w.ask(question{askWhatIf, "", ""}) // the cases follow from the fields and the settings
+	return w.scope.WhatIf(cases)
+}
+
 // answer is what Env would answer now, in a few words. ok is false where it cannot
 // be told.
 func (s scope) answer(q question) (text string, ok bool) {
@@ -110,6 +122,11 @@ func (s scope) answer(q question) (text string, ok bool) {
 			return "error " + err.Error(), true
 		}
 		return full + " " + sum, true
+	case askSetting:
+		v, ok := s.Setting(q.Name)
+		return hashed(content(viewpoint{}, v, ok)), true
+	case askWhatIf:
+		return s.rests()
 	case askLine:
 		tree, words := s.Line(q.Name)
 		return hashed(content(viewpoint{}, tree, words)), true

@@ -22,6 +22,7 @@ var triggered = []sentence{
 	{"sourceless", "inputs without a source", "Inputs name no source. A result is no better than they are: each must be traced to a document and its revision before the result is relied on."},
 	{"earlier-edition", "earlier edition of a standard", "A standard is used of which a later edition has been published. The calculation holds only where the edition named on the cover is the adopted one."},
 	{"mixed-editions", "more than one standard", "Spectra of more than one standard or edition are used in one calculation. Factors, combinations and limits of one do not belong to the spectrum of another: confirm that nothing was carried over."},
+	{"what-if", "what-if results", "Results of vary blocks are what-if results: they hold for values that the document does not have. No design value may be taken from them; bars and curves say nothing about what happens between the values taken, or when several change together."},
 	{"linear", "linear elastic", "Linear elastic analysis. Cracking, yielding, uplift and pounding are not represented."},
 	{"reduced", "response divided by a code factor", "The elastic response is divided by a code factor (R/I_e or the like). Inelastic demand, residual drift and collapse are not evaluated."},
 	{"fixed-base", "fixed base", "The base is fixed. Flexibility of the foundation and interaction with the soil are not modelled; periods and drifts may differ."},

@@ -51,6 +51,7 @@ type node struct {
 	// a formula line or check
 	line       formula.Line
 	source     markdown.Line
+	input      *input // of an inputs file, in place of a line
 	ref        *cite.Ref
 	refText    string
 	value      quantity.Value
@@ -79,8 +80,10 @@ type section struct {
 
 // declare makes the nodes of all parts.
 func (d *run) declare() {
+	d.inputFiles()
 	names := d.formulaNames()
 	isName := func(n string) bool { return names[n] }
+	d.declareInputs(isName)
 	anchors := map[string]int{}
 	d.unnamed = map[string]int{}
 	for _, p := range d.parts {
@@ -252,6 +255,9 @@ func (d *run) lines(p *part, s *section, isName formula.Names) {
 
 // spot is the place of byte offsets of a formula line.
 func (n *node) spot(from, to int) diag.Range {
+	if n.input != nil {
+		return n.input.spot(from, to)
+	}
 	t := n.source.Text
 	from, to = min(max(from, 0), len(t)), min(max(to, 0), len(t))
 	if from == 0 && to == len(t) { // the line without its margins
@@ -299,6 +305,9 @@ func (d *run) claim(n *node, at diag.Range) {
 	}
 	if old := d.names[n.name]; old != nil {
 		n.failed = true
+		if old.input != nil && n.input == nil { // neither file alone shows it
+			old.diags.Errorf("name-twice", old.at, "%s is set in line %d of %s too", n.name, at.Line, n.part.name).WithHint("each name is set once; rename one, or leave one out")
+		}
 		n.diags.Errorf("name-twice", at, "%s is already set in line %d of %s", n.name, old.at.Line, old.part.name).WithHint("each name is set once; choose another")
 		return
 	}

@@ -47,7 +47,8 @@ type Result struct {
 	Diagnostics diag.List
 	Files       map[string][]byte // every file read, by path below the root
 	Checks      []exhibit.Check
-	Steps       []Step // if asked for: what became of each block, line and check, in order
+	Asked       []string // every file asked for, there or not, sorted
+	Steps       []Step   // if asked for: what became of each block, line and check, in order
 }
 
 // Run reads the document, runs its graph and assembles the package. All errors
@@ -61,6 +62,7 @@ func Run(src Source, o Options) Result {
 		d.links()
 		d.brackets()
 		d.link()
+		d.unusedInputs()
 		d.execute()
 		d.sameChecks()
 		d.sameDimension()
@@ -69,6 +71,10 @@ func Run(src Source, o Options) Result {
 		d.diags = append(d.diags, n.diags...)
 	}
 	res := Result{Diagnostics: d.diags.Sort(), Files: d.files.contents()}
+	for p := range d.files.got {
+		res.Asked = append(res.Asked, p)
+	}
+	slices.Sort(res.Asked)
 	if len(d.parts) > 0 {
 		res.Checks = d.checks()
 	}
@@ -101,8 +107,9 @@ type run struct {
 	assumed []string // ids of assumptions
 	rests   map[*node][]string
 
-	nodes []*node          // in document order
-	names map[string]*node // the one namespace
+	nodes  []*node          // in document order
+	inputs []*node          // those of inputs files, which come first
+	names  map[string]*node // the one namespace
 	// anchors leads from the words of a heading and the names of blocks to their
 	// anchors on the page.
 	anchors map[string]string
@@ -269,6 +276,9 @@ func yamlLines(body []markdown.Line) []field.Line {
 // formulaNames finds every name that a formula line sets, in all parts.
 func (d *run) formulaNames() map[string]bool {
 	out := map[string]bool{}
+	for _, n := range d.inputs {
+		out[n.name] = true
+	}
 	for _, p := range d.parts {
 		for _, f := range p.md.Fences {
 			if f.Kind == block.Formula {

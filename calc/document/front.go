@@ -36,6 +36,7 @@ type frontMatter struct {
 	Status       field.Field   `name:"status" is:"choice" of:"draft|for check|issued|superseded|void" default:"draft" doc:"state of the document"`
 	Paper        field.Field   `name:"paper" is:"choice" of:"A4|Letter" default:"A4" doc:"size of the printed sheets"`
 	Office       field.Field   `name:"office" is:"file" doc:"a folder with the cover, head, palette and wording of an office (quoin blocks office)"`
+	Inputs       field.Field   `name:"inputs" is:"file" many:"yes" doc:"YAML or CSV files of named values, each with its source; the values are names of the document"`
 	Parts        field.Field   `name:"parts" is:"file" many:"yes" doc:"further markdown files, as chapters"`
 }
 

@@ -34,6 +34,7 @@ var facts = []string{"distance", "vs30", "azimuth", "usable_period"}
 // given makes the register of inputs: what blocks and formula lines take from
 // outside, and the source of it. A formula line is an input if it reads no name.
 func (a *assembly) given() {
+	a.givenFiles()
 	for _, pt := range a.parts {
 		for _, s := range pt.blocks {
 			g := exhibit.Given{Origin: exhibit.Origin{Name: s.fence.Name, Anchor: s.anchor}, Kind: s.fence.Kind, Place: exhibit.Place{File: s.fence.Place.File, Line: s.fence.Place.Line}}
@@ -55,19 +56,50 @@ func (a *assembly) givenLines(s *section, g *exhibit.Given) {
 		if n == nil || n.kind != lineNode || len(leaves(n.line.Tree)) > 0 {
 			continue
 		}
-		v := exhibit.GivenValue{Label: n.line.Description, Symbol: &expr.Node{Op: expr.Name, Text: n.name}, ID: n.name, Place: n.place()}
-		for _, x := range n.value.SI {
-			v.Value.Numbers = append(v.Value.Numbers, exhibit.Number{Value: x, Unit: n.unit, Digits: n.digits, ID: n.name})
-		}
-		ref, text := a.source(n.line.Source)
-		switch {
-		case n.overridden != nil:
-			v.Source = &exhibit.Source{Text: "overridden from outside the document"}
-		case ref != nil || text != "":
-			v.Source = &exhibit.Source{Ref: ref, Text: text}
-		}
-		g.Rows = append(g.Rows, v)
+		g.Rows = append(g.Rows, a.givenLine(n))
 	}
+}
+
+// givenLine is a formula line or a value of an inputs file.
+func (a *assembly) givenLine(n *node) exhibit.GivenValue {
+	v := exhibit.GivenValue{Label: n.line.Description, Symbol: &expr.Node{Op: expr.Name, Text: n.name}, ID: n.name, Place: n.place()}
+	for _, x := range n.value.SI {
+		v.Value.Numbers = append(v.Value.Numbers, exhibit.Number{Value: x, Unit: n.unit, Digits: n.digits, ID: n.name})
+	}
+	ref, text := a.source(n.line.Source)
+	switch {
+	case n.overridden != nil:
+		v.Source = &exhibit.Source{Text: setOutside}
+	case ref != nil || text != "":
+		v.Source = &exhibit.Source{Ref: ref, Text: text}
+	}
+	return v
+}
+
+// setOutside is the source of a value of --set.
+const setOutside = "overridden from outside the document"
+
+// givenFiles are the values of inputs files, a group a file; the register is where
+// they stand in the package.
+func (a *assembly) givenFiles() {
+	for _, n := range a.run.inputs {
+		k := len(a.p.Given) - 1
+		if k < 0 || a.p.Given[k].Place.File != n.part.name {
+			a.p.Given = append(a.p.Given, exhibit.Given{Origin: exhibit.Origin{Name: n.part.name, Anchor: n.anchor}, Kind: "inputs file", Place: exhibit.Place{File: n.part.name, Line: n.at.Line}})
+			k++
+		}
+		v := a.givenLine(n)
+		v.Anchor = n.anchor
+		if v.Source != nil && v.Source.Ref != nil {
+			a.refs = append(a.refs, *v.Source.Ref)
+		}
+		a.p.Given[k].Rows = append(a.p.Given[k].Rows, v)
+	}
+}
+
+// inputGroup tells the values of a file from those of a block.
+func (a *assembly) inputGroup(g exhibit.Given) bool {
+	return slices.ContainsFunc(a.run.inputs, func(n *node) bool { return n.part.name == g.Place.File && n.anchor == g.Anchor })
 }
 
 // givenFields are the fields of a block with values and files of their own, and
@@ -78,6 +110,12 @@ func (a *assembly) givenFields(n *node, g *exhibit.Given) {
 	listed := 0
 	field.Visit(n.body, func(f *field.Field, s field.Spec) {
 		place := exhibit.Place{File: f.At.File, Line: f.At.Line}
+		start := len(g.Rows)
+		defer func() {
+			for i := start; i < len(g.Rows) && overriding(f); i++ {
+				g.Rows[i].Source = &exhibit.Source{Text: setOutside}
+			}
+		}()
 		switch {
 		case !f.Given || slices.Contains(choices, s.Name) || g.Kind == "record" && slices.Contains(facts, s.Name):
 		case s.Is == "file":
@@ -165,7 +203,7 @@ func (a *assembly) sourceless(do func(at diag.Range, what string, count int)) {
 		if len(names) > 3 {
 			what += fmt.Sprintf(" and %d more", len(names)-3)
 		}
-		if g.Kind != block.Formula {
+		if g.Kind != block.Formula && !a.inputGroup(g) {
 			what += " of " + or(g.Name, g.Kind)
 		}
 		do(at, what, len(names))

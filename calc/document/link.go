@@ -21,6 +21,7 @@ func (d *run) link() {
 		}
 		n.failed = n.failed || n.diags.HasErrors()
 	}
+	d.varying()
 	d.cycles()
 }
 

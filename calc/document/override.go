@@ -14,6 +14,59 @@ func overrideRange(o exhibit.Override) diag.Range {
 	return diag.Range{File: "--set " + o.Name + "=" + o.Text}
 }
 
+// overriding tells whether the value of a field came from an option.
+func overriding(f *field.Field) bool {
+	return len(f.List) > 0 && f.List[0].At.Line == 0 && strings.HasPrefix(f.List[0].At.File, "--set ")
+}
+
+// overriddenRows marks the inputs of a block that were set from outside.
+func (n *node) overriddenRows(e *exhibit.Echo) {
+	set := map[string]bool{}
+	field.Visit(n.body, func(f *field.Field, s field.Spec) {
+		if overriding(f) {
+			set[s.Name] = true
+		}
+	})
+	for i := range e.Rows {
+		e.Rows[i].Overridden = set[e.Rows[i].Field]
+	}
+}
+
+// overrides says of every node which names set from outside it rests on, itself not
+// among them.
+func (d *run) overrides() map[*node][]string {
+	out := map[*node][]string{}
+	if len(d.options.Overrides) == 0 {
+		return out
+	}
+	var visit func(n *node) []string
+	visit = func(n *node) []string {
+		if list, ok := out[n]; ok {
+			return list
+		}
+		set := map[string]bool{}
+		for _, m := range n.needs {
+			for _, name := range visit(m) {
+				set[name] = true
+			}
+			if m.kind == lineNode && m.overridden != nil {
+				set[m.overridden.Name] = true
+			}
+		}
+		for _, o := range d.options.Overrides { // a block's own fields move all that it gives
+			if name, _, dot := strings.Cut(o.Name, "."); dot && n.kind == blockNode && formula.Normal(name) == n.name {
+				set[o.Name] = true
+			}
+		}
+		out[n] = sorted(set)
+		return out[n]
+	}
+	for _, n := range d.nodes {
+		visit(n)
+	}
+	return out
+}
+
 // overrideLine puts an override's expression in the place of a formula line's.
 func (d *run) overrideLine(n *node, names formula.Names) {
 	for i := range d.options.Overrides {

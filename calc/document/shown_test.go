@@ -150,8 +150,16 @@ func TestSeries(t *testing.T) {
 			want["rs."+what+q] = d
 		}
 	}
+	for _, of := range []string{"moved.r.base_shear@", "moved.2 * V@"} {
+		want[of+"r.R"], want[of+"V"] = quantity.Force, quantity.Force
+	}
 	for _, c := range res.Package.Series {
 		over := quantity.Time
+		if strings.HasSuffix(c.ID, "@r.R") {
+			over = quantity.None
+		} else if strings.HasSuffix(c.ID, "@V") {
+			over = quantity.Force
+		}
 		if strings.HasSuffix(c.ID, ".fourier") {
 			over = quantity.MustUnit("Hz").Dim
 		}
@@ -218,7 +226,7 @@ func TestCautionsTriggered(t *testing.T) {
 	kinds := map[string]string{
 		"open-assumption": "b-reg", "sourceless": "b-east b-filtered b-design b-read b-frame b-same b-r b-rr b-dr b-elf", "linear": "b-frame b-same b-r b-rr b-ra b-elf", "reduced": "b-r b-elf", "static": "b-elf", "accidental-torsion": "b-elf", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
 		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "processed": "b-filtered", "short-record": "b-rs",
-		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr",
+		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr", "what-if": "b-moved",
 	}
 	if got := triggeredBy(res.Package); !maps.Equal(got, kinds) {
 		t.Errorf("testdata/kinds.txtar triggers\n%v, want\n%v", got, kinds)

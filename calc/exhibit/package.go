@@ -203,6 +203,8 @@ type EchoRow struct {
 	Written string     `json:"written,omitempty"` // the source text, where it differs from the value shown
 	From    string     `json:"from,omitempty"`    // where a value comes from that the document does not state: "from the file"
 	Default bool       `json:"default,omitempty"`
+	// Overridden: set from outside the document.
+	Overridden bool `json:"overridden,omitempty"`
 }
 
 // Equation is one typeset line: symbol = tree = substituted = result. A method
@@ -305,6 +307,9 @@ type Entry struct {
 	Anchor  string         `json:"anchor"`  // where it is shown
 	Depends []string       `json:"depends"` // ids, sorted
 	Doc     string         `json:"doc"`     // description or export doc
+	// Overridden: set from outside the document. Moved: what is so that it rests on.
+	Overridden bool     `json:"overridden,omitempty"`
+	Moved      []string `json:"moved,omitempty"`
 }
 
 // Curve is a series of the results: y over x, SI.

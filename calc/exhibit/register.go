@@ -42,6 +42,7 @@ type GivenValue struct {
 	ID     string     `json:"id,omitempty"` // in the registry
 	Source *Source    `json:"source,omitempty"`
 	Place  Place      `json:"place"`
+	Anchor string     `json:"anchor,omitempty"` // of the row, where the value stands nowhere else
 }
 
 // Source is where an input was taken from: a reference, or words.

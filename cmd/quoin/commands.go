@@ -28,6 +28,7 @@ type flags struct {
 	units        string
 	strict, json bool
 	noCache      bool
+	port         int
 	frozen, same bool
 	tolerance    string
 	overrides    []exhibit.Override // from set
@@ -50,6 +51,12 @@ func (a *app) commands() *cobra.Command {
 	print := &cobra.Command{Use: printUse, Short: printShort, Long: printLong, Example: printExample, Args: a.arguments,
 		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, job{(*app).print, false, false}) }}
 	print.Flags().StringVarP(&a.flags.out, "out", "o", "", flagPDF)
+	live := &cobra.Command{Use: watchUse, Short: watchShort, Long: watchLong, Example: watchExample, Args: a.oneFile,
+		RunE: func(_ *cobra.Command, files []string) error { return a.each(files, job{(*app).watch, false, false}) }}
+	live.Flags().IntVar(&a.flags.port, "port", 0, flagPort)
+	live.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
+	live.Flags().StringArrayVar(&a.flags.set, "set", nil, flagSet)
+	live.Flags().BoolVar(&a.flags.noCache, "no-cache", false, flagCache)
 	for _, c := range []*cobra.Command{build, check, print} {
 		c.Flags().StringVar(&a.flags.root, "root", "", flagRoot)
 		c.Flags().StringArrayVar(&a.flags.set, "set", nil, flagSet)
@@ -65,7 +72,7 @@ func (a *app) commands() *cobra.Command {
 	start.Flags().StringVar(&a.flags.units, "units", "SI", flagUnits)
 	verify := &cobra.Command{Use: verifyUse, Short: verifyShort, Long: verifyLong, Example: verifyExample, Args: cobra.ArbitraryArgs, RunE: a.verifyEach}
 	verify.Flags().BoolVar(&a.flags.json, "json", false, flagVerdict)
-	root.AddCommand(blocks, start, verify, a.freezeCommand(), a.compareCommand())
+	root.AddCommand(blocks, start, live, verify, a.freezeCommand(), a.compareCommand())
 	return root
 }
 
@@ -83,4 +90,15 @@ func (a *app) arguments(_ *cobra.Command, files []string) error {
 		a.flags.overrides = append(a.flags.overrides, exhibit.Override{Name: name, Text: text})
 	}
 	return nil
+}
+
+// oneFile is arguments for a command of one FILE.
+func (a *app) oneFile(c *cobra.Command, files []string) error {
+	if len(files) > 1 {
+		return errWatchOne
+	}
+	if a.flags.port < 0 || a.flags.port > 65535 {
+		return errPort
+	}
+	return a.arguments(c, files)
 }

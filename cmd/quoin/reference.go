@@ -100,6 +100,9 @@ func kindTopic(k block.Kind) topic {
 
 // inUnit is the kind of quantity that an SI unit measures.
 func inUnit(text string) string {
+	if text == block.AsAsked {
+		return text
+	}
 	u, err := quantity.ParseUnit(text)
 	if err != nil {
 		panic("quoin: an exported value in " + text)

@@ -6,6 +6,7 @@ import (
 	"runtime"
 	"slices"
 	"strings"
+	"time"
 	"unicode"
 
 	"quoin/calc/diag"
@@ -64,6 +65,26 @@ below, as for build.
 Exit codes: 0 no errors, 1 errors, 2 wrong usage, 3 no errors, but with --strict a
 check is not met, 4 no errors, but with --frozen results differ from the frozen ones.`
 	checkExample = `  quoin check package.md`
+
+	watchUse   = "watch FILE"
+	watchShort = "show a live page of the document, made again on every save"
+	watchLong  = `Run the document FILE, serve its page on this machine alone and print its address;
+open it in a browser. The page is made again whenever FILE, a part or a data file of
+it is saved, and keeps its place. While the source has errors they stand in place of
+the page, and the last page that could be made is one link away.
+
+The page is a preview: nothing is written beside FILE, static pictures are not drawn,
+and a formula in dollar signs stands as written for a moment when it is new. Ctrl-C
+ends it. Nobody can read it who does not have the address, which is another one each
+time.
+
+Exit codes: 0 ended, 1 FILE cannot be watched, 2 wrong usage.`
+	watchExample = `  quoin watch package.md
+  quoin watch package.md --set R=5 --port 8100`
+	flagPort   = "port of this machine to serve on; any that is free, if not given"
+	watchState = "live preview"
+	watchEnded = "ended\n"
+	watchBlind = "the system tells no changes of files any more"
 
 	printUse   = "print FILE..."
 	printShort = "run the document and print its page to a PDF"
@@ -194,6 +215,39 @@ func errTopic(given, near string) error {
 		return fmt.Errorf("there is no block kind %q; did you mean %s?", given, near)
 	}
 	return fmt.Errorf("there is no block kind %q; quoin blocks lists them", given)
+}
+
+var (
+	errWatchOne = fmt.Errorf("name one FILE; each has a page of its own")
+	errPort     = fmt.Errorf("--port is a number from 1 to 65535")
+)
+
+// watching says where the live page is.
+func watching(file, address string) string {
+	return fmt.Sprintf("%s: live page at %s (Ctrl-C ends it)\n", file, address)
+}
+
+// shownAgain says what the document came to this time.
+func shownAgain(file string, checks []exhibit.Check, took time.Duration) string {
+	failed := len(exhibit.Failed(checks))
+	return fmt.Sprintf("%s: shown after %d ms; checks: %d OK, %d NOT OK\n", file, took.Milliseconds(), len(checks)-failed, failed)
+}
+
+// notShown is the title of the page of messages.
+func notShown(file string, list diag.List) string {
+	n := 0
+	for _, d := range list {
+		if d.Severity == diag.Error {
+			n++
+		}
+	}
+	if n == 1 {
+		return file + ": 1 error"
+	}
+	if n == 0 {
+		return file + ": not shown"
+	}
+	return fmt.Sprintf("%s: %d errors", file, n)
 }
 
 func errClash(dir, other string) error {

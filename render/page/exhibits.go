@@ -127,7 +127,7 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 		Field, Label, Written, From string
 		Symbol                      *expr.Node
 		Value                       cellView
-		Default, Wide               bool
+		Default, Wide, Overridden   bool
 		Was                         *wasView
 	}
 	var out []item
@@ -136,7 +136,7 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 		var rows []row
 		for _, r := range e.Rows[start:min(start+most, len(e.Rows))] {
 			wide := r.Value.Symbol != nil && equation.Setter{}.Symbols(r.Value.Symbol).Width > echoRoom
-			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default, wide, b.wasInput(r.Field)})
+			rows = append(rows, row{r.Field, r.Label, r.Written, r.From, r.Symbol, b.cell(r.Value, nil), r.Default, wide, r.Overridden, b.wasInput(r.Field)})
 		}
 		high := 3.0
 		for i := 0; i < len(rows); {
@@ -165,6 +165,13 @@ func (b *book) echo(e *exhibit.Echo, label string) []item {
 // claimExhibits gives equations, tables and figures their ids, before anything
 // leads to one and before a heading can take one.
 func (b *book) claimExhibits() {
+	for _, g := range b.p.Given {
+		for _, r := range g.Rows {
+			if r.Anchor != "" {
+				b.origins[r.ID] = b.claim("in-" + slug(r.ID))
+			}
+		}
+	}
 	for _, c := range b.p.Chapters {
 		for _, piece := range c.Pieces {
 			if piece.Block == nil {

@@ -22,6 +22,8 @@ type givenRow struct {
 	Symbol *expr.Node
 	Value  cellView
 	Source any
+	ID     string // of the row, where the value stands nowhere else
+	Line   int    // of its file, there
 }
 
 // mostGiven is how many rows of one block stand together.
@@ -41,7 +43,10 @@ func (b *book) given() []item {
 		for i := 0; i < len(g.Rows); i += mostGiven {
 			v.Rows = nil
 			for _, r := range g.Rows[i:min(i+mostGiven, len(g.Rows))] {
-				row := givenRow{Label: clip(r.Label, titleChars), Symbol: r.Symbol, Value: b.cell(r.Value, nil)}
+				row := givenRow{ID: b.rowOf(r), Label: clip(r.Label, titleChars), Symbol: r.Symbol, Value: b.cell(r.Value, nil)}
+				if row.ID != "" {
+					row.Line = r.Place.Line
+				}
 				if row.Symbol != nil && (equation.Setter{}).Symbols(row.Symbol).Width > symbolColumn {
 					row.Symbol = nil
 					row.Label = strings.TrimSpace(r.ID + " " + row.Label)
@@ -72,7 +77,23 @@ func (b *book) given() []item {
 			}
 		}
 		return 2 + max(high, shared, 9.2)
-	}, nil)
+	}, func(v givenView) []string {
+		var ids []string
+		for _, r := range v.Rows {
+			if r.ID != "" {
+				ids = append(ids, r.ID)
+			}
+		}
+		return ids
+	})
+}
+
+// rowOf is the id of the row of a value that stands nowhere else.
+func (b *book) rowOf(v exhibit.GivenValue) string {
+	if v.Anchor == "" {
+		return ""
+	}
+	return b.origins[v.ID]
 }
 
 // inputs is the register of inputs: the values, then the files.

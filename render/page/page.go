@@ -27,6 +27,8 @@ type Options struct {
 	// script element, and its height in pixels. Nil: pictures only.
 	Chart  func(f exhibit.Figure) (option []byte, height int, err error)
 	Assets Assets
+	// Connect lets the page's script ask the address the page came from: a preview.
+	Connect bool
 	// Body leaves out all but the chapters, and what stands for files of a package.
 	Body bool
 }
@@ -62,7 +64,7 @@ func Render(p *exhibit.Package, o Options) ([]byte, error) {
 		Script              template.JS
 		Sheets              []sheetView
 		Trail               []stepView
-	}{Title: documentTitle(p), Policy: policy(style, o.Assets.PageScript), Tool: p.Provenance.Tool, Licences: o.Assets.Licences,
+	}{Title: documentTitle(p), Policy: policy(style, o.Assets.PageScript) + connecting(o.Connect), Tool: p.Provenance.Tool, Licences: o.Assets.Licences,
 		Style: template.CSS(style), Script: template.JS(o.Assets.PageScript)}
 	for i, s := range sheets {
 		v := sheetView{N: i + 1, Of: len(sheets), Cover: i == 0, Wide: s.wide, Head: b.head()}
@@ -117,6 +119,14 @@ func policy(style, script string) string {
 	}
 	return "default-src 'none'; script-src " + source + "; style-src-elem '" + hash(style) +
 		"'; style-src-attr 'unsafe-inline'; img-src data:; font-src data:; base-uri 'none'; form-action 'none'"
+}
+
+// connecting is what the policy of a preview allows besides.
+func connecting(yes bool) string {
+	if yes {
+		return "; connect-src 'self'"
+	}
+	return ""
 }
 
 func hash(text string) string {

@@ -39,7 +39,7 @@ func OpenState(p *exhibit.Package) []string {
 		if n := len(names) - listed; n > 0 {
 			names, more = names[:listed], fmt.Sprintf(" and %d more", n)
 		}
-		say(true, "values overridden: %s%s", strings.Join(names, ", "), more)
+		say(true, "NOT FOR ISSUE: values overridden: %s%s", strings.Join(names, ", "), more)
 	}
 	if f := p.Frozen; f != nil {
 		say(f.Current && !f.Agrees(), "results differ from the frozen ones%s", ofRevision(f.Revision))

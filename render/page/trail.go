@@ -124,6 +124,7 @@ func (b *book) use(id string) int {
 
 // homeView is where a number leads. Sheet is set where that is another sheet.
 type homeView struct {
+	Set        bool // the value was set from outside the document
 	Href       string
 	Use, Sheet int
 }
@@ -142,11 +143,17 @@ func (b *book) home(id string) *homeView {
 	if to == "" {
 		return nil
 	}
-	v := &homeView{Href: to, Use: b.use(id)}
+	v := &homeView{Href: to, Use: b.use(id), Set: b.overridden(id)}
 	if s := b.sheets[to]; s != b.trail.here {
 		v.Sheet = s
 	}
 	return v
+}
+
+// overridden tells whether a value was set from outside the document.
+func (b *book) overridden(id string) bool {
+	stem, _, _ := strings.Cut(id, "[")
+	return b.entries[stem].Overridden
 }
 
 // mostFrom is how many origins an equation names.
@@ -168,6 +175,8 @@ func (b *book) from(ids []string) []fromView {
 		v := fromView{*h, ""}
 		if n := b.trail.numbers[h.Href]; n > 0 {
 			v.Text, v.Sheet = "("+strconv.Itoa(n)+")", 0
+		} else if e, ok := b.entries[id]; ok && strings.HasPrefix(h.Href, "in-") {
+			v.Text = e.ID
 		} else {
 			v.Text, _, _ = strings.Cut(b.step(id), ".")
 		}
@@ -254,6 +263,12 @@ func (b *book) steps() []stepView {
 		} else if e, ok := b.entries[id]; ok {
 			v.Was = b.was(id).told()
 			v.Symbol, v.Value, v.Doc, v.At = &expr.Node{Op: expr.Name, Text: id}, b.worth(e), e.Doc, b.at(e.Place)
+			switch {
+			case e.Overridden:
+				v.Doc = strings.TrimPrefix(v.Doc+"; OVERRIDDEN from outside the document", "; ")
+			case len(e.Moved) > 0:
+				v.Doc = strings.TrimPrefix(v.Doc+"; rests on overridden "+strings.Join(e.Moved[:min(len(e.Moved), listed)], ", "), "; ")
+			}
 			if k != nil && name != id {
 				v.Made = "made by " + name + ", " + k.Kind
 			}

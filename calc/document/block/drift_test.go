@@ -23,6 +23,8 @@ func (m oneAnalysis) Product(string) any                         { return m.prod
 func (oneAnalysis) Read(string, string) ([]byte, string, error)  { panic("no files") }
 func (oneAnalysis) Curves(string) []exhibit.Curve                { return nil }
 func (oneAnalysis) KindOf(string) string                         { return "static" }
+func (oneAnalysis) Setting(string) (quantity.Value, bool)        { panic("block: no settings") }
+func (oneAnalysis) WhatIf([][]exhibit.Override) []Outcome        { panic("block: no cases") }
 func (oneAnalysis) Line(string) (*expr.Node, string)             { return nil, "" }
 func (oneAnalysis) Value(string) (quantity.Value, string, error) { panic("no values") }
 func (oneAnalysis) Call(string, []quantity.Value) (quantity.Value, string, error) {

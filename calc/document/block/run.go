@@ -33,6 +33,12 @@ type Env interface {
 	Line(name string) (*expr.Node, string)
 	// KindOf is the kind of a block.
 	KindOf(name string) string
+	// Setting is the value of a formula name, or of a field of a block (frame.damping),
+	// as the document has it.
+	Setting(name string) (quantity.Value, bool)
+	// WhatIf runs what the block rests on once for each case, with the values of the
+	// case set, and gives what it asks for. Only a body that [Varies] may ask.
+	WhatIf(cases [][]exhibit.Override) []Outcome
 }
 
 // Named is an exported value.

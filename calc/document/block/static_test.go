@@ -25,6 +25,8 @@ func (p products) Product(name string) any                   { return p[name] }
 func (products) Read(string, string) ([]byte, string, error) { panic("block: no files") }
 func (products) Curves(string) []exhibit.Curve               { return nil }
 func (products) KindOf(string) string                        { return "" }
+func (products) Setting(string) (quantity.Value, bool)       { panic("block: no settings") }
+func (products) WhatIf([][]exhibit.Override) []Outcome       { panic("block: no cases") }
 func (products) Line(string) (*expr.Node, string)            { return nil, "" }
 
 // said is a field with a text, asked one with a number; each stands on its own line.

@@ -244,6 +244,9 @@ func (f *Field) spot(i, from, to int) diag.Range {
 	return within(f.List[i].At, f.List[i].Text, from, to)
 }
 
+// Within is within, for texts read elsewhere.
+func Within(at diag.Range, text string, from, to int) diag.Range { return within(at, text, from, to) }
+
 // within narrows a range to byte offsets of its text, where the text stands in
 // the file as it is.
 func within(at diag.Range, text string, from, to int) diag.Range {

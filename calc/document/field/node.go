@@ -159,7 +159,7 @@ func (p *reader) rangeOf(t *token.Token) diag.Range {
 	}
 	l := p.lines[t.Position.Line-1]
 	start := max(t.Position.Column, 1)
-	width := len([]rune(strings.TrimSpace(strings.SplitN(t.Origin, "\n", 2)[0])))
+	width := len([]rune(strings.TrimSpace(strings.SplitN(strings.TrimLeft(t.Origin, "\r\n"), "\n", 2)[0])))
 	if t.Type == token.SingleQuoteType || t.Type == token.DoubleQuoteType {
 		width = len([]rune(t.Value)) + 2
 	}
