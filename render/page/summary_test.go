@@ -1,6 +1,7 @@
 package page
 
 import (
+	"slices"
 	"strconv"
 	"testing"
 
@@ -16,9 +17,10 @@ func TestSummary(t *testing.T) {
 		p := plainPackage("A4", 0)
 		p.Checks = nil
 		names := rapid.IntRange(1, 8).Draw(t, "checks")
-		want, worst := map[string]bool{}, map[string]float64{}
+		want, worst, items := map[string]bool{}, map[string]float64{}, map[string]int{}
 		for n := range names {
 			name, of := "check "+strconv.Itoa(n), rapid.IntRange(1, 9).Draw(t, "items")
+			items[name] = of
 			for i := range of {
 				ratio := rapid.Float64Range(0.1, 1.4).Draw(t, "ratio")
 				c := exhibit.Check{ID: name + strconv.Itoa(i), Name: name, Description: name, Anchor: "a", Place: exhibit.Place{Line: n}, Ratio: &ratio, OK: ratio <= 1, Relation: "<="}
@@ -43,6 +45,9 @@ func TestSummary(t *testing.T) {
 						t.Fatalf("%s, ratio %s, stands below %v", r.Name, r.Ratio, last)
 					}
 					last = ratio
+					if r.Of > 0 && r.Of != items[r.Name] || r.Of == 0 && seen[r.Name] == 1 && items[r.Name] > 1 {
+						t.Fatalf("%s is said to be the worst of %d, of %d", r.Name, r.Of, items[r.Name])
+					}
 					if r.Of > 1 && ratio < worst[r.Name]-0.011 {
 						t.Fatalf("%s is said to be the worst with %s, which is %v", r.Name, r.Ratio, worst[r.Name])
 					}
@@ -63,5 +68,16 @@ func TestRuns(t *testing.T) {
 		if i >= len(got) || got[i] != want[i] {
 			t.Fatalf("%v, want %v", got, want)
 		}
+	}
+}
+
+// TestRested: an assumption names the sheets of what cites it and of all that rests on it.
+func TestRested(t *testing.T) {
+	b := newBook(plainPackage("A4", 0), Options{})
+	b.cited = map[string][]string{"A1": {"b-frame"}}
+	b.sheets = map[string]int{"b-frame": 3, "b-modes": 7, "b-other": 9}
+	a := exhibit.Assumption{ID: "A1", Dependents: []exhibit.Origin{{Name: "modes", Anchor: "b-modes"}}}
+	if got := b.rested(a); !slices.Equal(got, []run{{3, 3}, {7, 7}}) {
+		t.Errorf("sheets %v, want 3 and 7", got)
 	}
 }
