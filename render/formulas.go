@@ -16,8 +16,7 @@ func Formulas(p *exhibit.Package, files map[string][]byte) error {
 		if n.Place.Line == 0 || script.Common(n.Text) {
 			return
 		}
-		display := n.Kind == exhibit.MathBlock
-		r.ask(formulaKey(n.Text, display), equation, func() (string, error) { return script.TeX(n.Text, display) })
+		r.formula(n.Text, n.Kind == exhibit.MathBlock)
 	})
 	r.run(nil, func(*job) bool { return true })
 	if err := r.faults(p, files); err != nil {

@@ -14,9 +14,10 @@ import (
 )
 
 // press makes what is slow to make, the pictures and the equations of the prose,
-// on all cores. The page is laid out twice: the first time it says what it
-// needs, the second time it gets it. So the page alone decides what is drawn. Where
-// the cache holds all of it, the first time is the last, and no script is started.
+// on all cores. What the page will want is read from the package and made before the
+// page is laid out; but the page alone decides. Should it ask for what was not
+// foreseen, that is made too, and the page laid out a second time. Where the cache
+// holds all of it, no script is started.
 type press struct {
 	cache   Cache  // may be nil
 	jobs    []*job // what is to be made, in the order the page asked
@@ -30,6 +31,7 @@ type job struct {
 	key  string
 	name string // for progress
 	make func() (string, error)
+	made bool
 	text string
 	err  error
 }
@@ -50,23 +52,66 @@ func index(p *exhibit.Package, files map[string][]byte, digest string, o Options
 	}
 	r := &press{cache: o.Cache, byKey: map[string]*job{}, options: map[string]option{}}
 	options := page.Options{Digest: digest, Body: o.body, Assets: assets, Chart: r.chart, Picture: r.picture,
-		TeX: func(src string, display bool) (string, error) {
-			return r.ask(formulaKey(src, display), equation, func() (string, error) { return script.TeX(src, display) })
-		}}
-	first, err := page.Render(p, options)
+		TeX: r.formula}
+	if p.Office == nil || page.CheckOffice(p) == nil { // else the page says at once what is wrong
+		r.foresee(p)
+		if err := r.make(p, files, o); err != nil {
+			return nil, err
+		}
+	}
+	asked := len(r.jobs)
+	out, err := page.Render(p, options)
 	if err := ofOffice(err); err != nil {
 		return nil, err
 	}
-	if err != nil || len(r.jobs) == 0 {
-		return first, err
+	if err != nil || len(r.jobs) == asked {
+		return out, err
 	}
+	if err := r.make(p, files, o); err != nil {
+		return nil, err
+	}
+	return page.Render(p, options)
+}
+
+// make makes what was asked for: the formulas first, and no picture where one of them
+// is faulty.
+func (r *press) make(p *exhibit.Package, files map[string][]byte, o Options) error {
 	isFormula := func(j *job) bool { return j.name == equation }
 	r.run(o.Progress, isFormula)
 	if err := r.faults(p, files); err != nil {
-		return nil, err
+		return err
 	}
 	r.run(o.Progress, func(j *job) bool { return !isFormula(j) })
-	return page.Render(p, options)
+	return nil
+}
+
+// foresee asks for the formulas of the prose and the pictures of the figures, as the
+// page will. The options of the figures are made on all cores.
+func (r *press) foresee(p *exhibit.Package) {
+	walk(p, func(n exhibit.Prose) { r.formula(n.Text, n.Kind == exhibit.MathBlock) })
+	var figures []*exhibit.Figure
+	for _, c := range p.Chapters {
+		for _, piece := range c.Pieces {
+			if piece.Block == nil {
+				continue
+			}
+			for _, part := range piece.Block.Parts {
+				for _, it := range part.Items {
+					if it.Figure != nil {
+						figures = append(figures, it.Figure)
+					}
+				}
+			}
+		}
+	}
+	made := make([]option, len(figures))
+	inParallel(len(figures), func(i int) { made[i].text, made[i].height, made[i].err = chart.Option(*figures[i]) })
+	for i, f := range figures {
+		if _, again := r.options[f.ID]; !again {
+			r.options[f.ID] = made[i]
+			r.picture(*f, page.Prefix(f)) // what is wrong, the page will hear
+		}
+	}
 }
 
 // ofOffice is the faults of an office's templates among the errors of a page.
@@ -91,6 +136,11 @@ func (r *press) chart(f exhibit.Figure) ([]byte, int, error) {
 		r.options[f.ID] = o
 	}
 	return o.text, o.height, o.err
+}
+
+// formula sets a formula of the prose.
+func (r *press) formula(src string, display bool) (string, error) {
+	return r.ask(formulaKey(src, display), equation, func() (string, error) { return script.TeX(src, display) })
 }
 
 // picture draws a figure. What is drawn follows from its option and its words.
@@ -127,32 +177,54 @@ func (j *job) recall(c Cache) bool {
 	return ok
 }
 
-// run makes what was asked for, of the kind wanted. A panic on one of the cores
-// comes out here.
+// run makes what was asked for and is not made yet, of the kind wanted.
 func (r *press) run(progress func(done, total int, what string), wanted func(*job) bool) {
+	var todo []*job
+	for _, j := range r.jobs {
+		if !j.made && wanted(j) {
+			todo = append(todo, j)
+		}
+	}
+	var mu sync.Mutex
+	inParallel(len(todo), func(i int) {
+		j := todo[i]
+		j.do(r.cache)
+		mu.Lock()
+		defer mu.Unlock()
+		if r.done++; progress != nil {
+			progress(r.done, len(r.jobs), j.name)
+		}
+	})
+}
+
+// inParallel does work 0 to n-1 on all cores. A panic on one of them comes out here,
+// when all have ended.
+func inParallel(n int, work func(i int)) {
 	var mu sync.Mutex
 	var group sync.WaitGroup
 	var fault any
-	next := make(chan *job)
-	for range runtime.GOMAXPROCS(0) {
-		group.Go(func() {
-			for j := range next {
-				f := j.do(r.cache)
+	guarded := func(i int) {
+		defer func() {
+			if f := recover(); f != nil {
 				mu.Lock()
-				if f != nil && fault == nil {
+				defer mu.Unlock()
+				if fault == nil {
 					fault = f
 				}
-				if r.done++; progress != nil {
-					progress(r.done, len(r.jobs), j.name)
-				}
-				mu.Unlock()
+			}
+		}()
+		work(i)
+	}
+	next := make(chan int)
+	for range min(n, runtime.GOMAXPROCS(0)) {
+		group.Go(func() {
+			for i := range next {
+				guarded(i)
 			}
 		})
 	}
-	for _, j := range r.jobs {
-		if wanted(j) {
-			next <- j
-		}
+	for i := range n {
+		next <- i
 	}
 	close(next)
 	group.Wait()
@@ -161,17 +233,17 @@ func (r *press) run(progress func(done, total int, what string), wanted func(*jo
 	}
 }
 
-// do makes the thing, keeps it, and gives back a panic, with what was being made.
-func (j *job) do(c Cache) (fault any) {
+// do makes the thing and keeps it. A panic says what was being made.
+func (j *job) do(c Cache) {
 	defer func() {
 		if f := recover(); f != nil {
-			fault = fmt.Sprintf("%v, making %s", f, j.name)
+			panic(fmt.Sprintf("%v, making %s", f, j.name))
 		}
 	}()
+	j.made = true
 	if j.text, j.err = j.make(); j.err == nil && c != nil {
 		c.Put(j.key, []byte(j.text))
 	}
-	return nil
 }
 
 // assets is the bundle.

@@ -32,21 +32,30 @@ type Cache interface {
 // files give the same bytes, with a cache and without. What is wrong with the
 // formulas of the prose is a [*Faults].
 func Package(p *exhibit.Package, files map[string][]byte, o Options) (map[string][]byte, error) {
-	out, err := ledger.Tables(p)
-	if err != nil {
-		return nil, err
-	}
-	if out["results.json"], err = ledger.Results(p); err != nil {
-		return nil, err
-	}
 	inputs, err := ledger.Inputs(files, p)
 	if err != nil {
 		return nil, err
 	}
 	digest := ledger.Digest(inputs, p.Provenance.Tool)
-	if out["index.html"], err = index(p, files, digest, o); err != nil {
-		return nil, err
+	// The numbers are written while the page is made.
+	var out map[string][]byte
+	var results, text []byte
+	var faults [3]error
+	inParallel(2, func(i int) {
+		if i == 0 {
+			text, faults[2] = index(p, files, digest, o)
+			return
+		}
+		if out, faults[0] = ledger.Tables(p); faults[0] == nil {
+			results, faults[1] = ledger.Results(p)
+		}
+	})
+	for _, err := range faults {
+		if err != nil {
+			return nil, err
+		}
 	}
+	out["results.json"], out["index.html"] = results, text
 	maps.Copy(out, inputs)
 	out[ledger.ResultsText] = ledger.FrozenOf(p).Text()
 	out[ledger.ReadmeFile] = ledger.Readme(p, digest)

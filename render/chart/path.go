@@ -78,6 +78,11 @@ func tenths(text string) int {
 	return int(math.Round(10 * v))
 }
 
+// inTenths is a number rounded to a tenth.
+func inTenths(text string) string {
+	return strconv.FormatFloat(float64(tenths(text))/10, 'f', -1, 64)
+}
+
 // straight leaves out points that lie on the line to the next one, and on their way
 // there: no end, no turn and no peak among them.
 func straight(points [][2]int) [][2]int {

@@ -125,3 +125,12 @@ func TestLean(t *testing.T) {
 		t.Errorf("got\n%s\nwant\n%s", got, want)
 	}
 }
+
+// TestInTenths: places are rounded to a tenth of a pixel and keep their sign.
+func TestInTenths(t *testing.T) {
+	for text, want := range map[string]string{"328.6875": "328.7", "0": "0", "-0.26": "-0.3", "-3.5": "-3.5", "26.25": "26.3", "306": "306", "293.0001": "293"} {
+		if got := inTenths(text); got != want {
+			t.Errorf("%s becomes %s, want %s", text, got, want)
+		}
+	}
+}

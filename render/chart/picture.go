@@ -37,7 +37,8 @@ var (
 	unsafe      = regexp.MustCompile(`[^A-Za-z0-9]+`)
 	root        = regexp.MustCompile(`^<svg [^>]*>`)
 	inTag       = regexp.MustCompile(`<[^>]*>`)
-	fonts       = regexp.MustCompile(`font-size:12.5px;font-family:[^;"]*;|font-weight:400;| style=""`)
+	fonts       = regexp.MustCompile(`font-size:12.5px;font-family:[^;"]*;|font-weight:400;| style=""| text-anchor="start"`)
+	moved       = regexp.MustCompile(` transform="translate\((-?[\d.]+) (-?[\d.]+)\)"`)
 	unseen      = regexp.MustCompile(`\n?<rect [^>]* fill="none"></rect>|\n?<path d="[^"]*"(?:(?: transform="[^"]*")? fill="none"| transform="matrix\(0\.005,[^"]*"[^>]*|[^>]* fill-opacity="0"[^>]*)></path>`)
 )
 
@@ -53,9 +54,14 @@ func picture(f exhibit.Figure, option []byte, height int, prefix string, width i
 		return "", fmt.Errorf("figure %q: %w", f.ID, err)
 	}
 	body := strings.TrimSuffix(root.ReplaceAllString(text, ""), "</svg>")
-	// The fonts are said once, at the root; boxes without ink say nothing.
+	// The fonts are said once, at the root; what holds anyway and boxes without ink say
+	// nothing; places are in tenths of a pixel.
 	body = inTag.ReplaceAllStringFunc(body, func(t string) string {
-		return strings.ReplaceAll(fonts.ReplaceAllString(t, ""), ` style=""`, "")
+		t = strings.ReplaceAll(fonts.ReplaceAllString(t, ""), ` style=""`, "")
+		if m := moved.FindStringSubmatchIndex(t); m != nil && strings.HasPrefix(t, "<text ") {
+			t = t[:m[2]] + inTenths(t[m[2]:m[3]]) + " " + inTenths(t[m[4]:m[5]]) + t[m[5]:]
+		}
+		return t
 	})
 	body = lean(unseen.ReplaceAllString(body, ""))
 	title := clean(f.Caption)

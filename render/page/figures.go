@@ -32,7 +32,7 @@ func (b *book) figure(f *exhibit.Figure, label string) item {
 	if b.o.Body {
 		v.CSV = ""
 	}
-	twin, err := b.o.Picture(*f, "q-"+slug(f.ID)+"-")
+	twin, err := b.o.Picture(*f, Prefix(f))
 	b.fail(err, "figure %q", f.ID)
 	v.Twin = template.HTML(twin)
 	if b.o.Chart != nil {
@@ -47,6 +47,9 @@ func (b *book) figure(f *exhibit.Figure, label string) item {
 	high := textWidth*aspect(twin, float64(v.Height)/700) + 8 + 4.6*lines(f.Caption+" values: "+v.CSV, 90)
 	return item{name: "figure", data: v, high: high, anchors: []string{v.ID}}
 }
+
+// Prefix is what the ids in the picture of a figure begin with.
+func Prefix(f *exhibit.Figure) string { return "q-" + slug(f.ID) + "-" }
 
 var viewBox = regexp.MustCompile(`viewBox="[-0-9.]+ [-0-9.]+ ([0-9.]+) ([0-9.]+)"`)
 
