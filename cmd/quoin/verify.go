@@ -8,6 +8,7 @@ import (
 	"io/fs"
 	"maps"
 	"os"
+	"path/filepath"
 	"runtime"
 	"slices"
 	"strings"
@@ -63,7 +64,7 @@ func (a *app) verify(dir string) int {
 		err = v.examine(root)
 	}
 	if err != nil {
-		v.Failure = reason(err).Error()
+		v.Failure = within(err)
 	}
 	v.Same = v.Failure == "" && len(v.Faults) == 0 && v.Compared != "" && len(v.Differ) == 0
 	if a.flags.json {
@@ -82,6 +83,15 @@ func (a *app) verify(dir string) int {
 		return exitErrors
 	}
 	return exitBuilt
+}
+
+// within is an error of the file system with the path inside the folder.
+func within(err error) string {
+	var p *os.PathError
+	if errors.As(err, &p) && !filepath.IsAbs(p.Path) && filepath.IsLocal(p.Path) && p.Path != "." && p.Op != "open root" {
+		return p.Path + ": " + p.Err.Error()
+	}
+	return reason(err).Error()
 }
 
 // examine holds the folder to its manifest, and what its inputs give to the folder.

@@ -443,3 +443,16 @@ func TestVerifyElsewhere(t *testing.T) {
 		}
 	}
 }
+
+// TestVerdictLegible: a name in a package cannot drive the terminal, nor write a line of the verdict.
+func TestVerdictLegible(t *testing.T) {
+	evil := "a\x1b[2J\u202e\nP: as its manifest says"
+	v := verdict{Folder: "P" + evil, Why: evil, Faults: []ledger.Flaw{{Path: evil, What: "is " + evil}}, Differ: []ledger.Flaw{{Path: evil, What: "is " + evil}}}
+	for _, compared := range []string{"", comparedBytes, comparedValues} {
+		v.Compared = compared
+		said := v.words() + fileError(evil, evil)
+		if strings.ContainsAny(said, "\x1b\u202e") || strings.Contains(v.words(), "\nP: as its") {
+			t.Errorf("%q: %q", compared, said)
+		}
+	}
+}

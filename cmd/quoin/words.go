@@ -332,9 +332,22 @@ func internalError(fault, place string) string {
 	return fmt.Sprintf("quoin: internal error, nothing was written: %s (%s, %s); please report this with the file that led to it\n", fault, place, versionLine())
 }
 
-func fileError(file, text string) string { return fmt.Sprintf("%s: error: %s\n", file, text) }
+func fileError(file, text string) string {
+	return fmt.Sprintf("%s: error: %s\n", diag.Printable(file), legible(text))
+}
 
-func fileWarning(file, text string) string { return fmt.Sprintf("%s: warning: %s\n", file, text) }
+func fileWarning(file, text string) string {
+	return fmt.Sprintf("%s: warning: %s\n", diag.Printable(file), legible(text))
+}
+
+// legible is text of several lines without what would drive a terminal.
+func legible(text string) string {
+	lines := strings.Split(text, "\n")
+	for i := range lines {
+		lines[i] = diag.Printable(lines[i])
+	}
+	return strings.Join(lines, "\n")
+}
 
 const (
 	cacheInPackage = "QUOIN_CACHE names a folder inside the package, which holds nothing but the package; no cache is used"
@@ -550,38 +563,39 @@ func resultsApart(largest float64, differ []ledger.Flaw) string {
 	if len(differ) == 0 {
 		return fmt.Sprintf("; its numbers agree to %.1g", max(largest, 1e-16))
 	}
-	return fmt.Sprintf("; first: %s %s", differ[0].Path, differ[0].What)
+	return fmt.Sprintf("; first: %s %s", diag.Printable(differ[0].Path), differ[0].What)
 }
 
 // words is a verdict in full.
 func (v *verdict) words() string {
 	var b strings.Builder
+	folder, why := diag.Printable(v.Folder), diag.Printable(v.Why)
 	list := func(faults []ledger.Flaw) {
 		for i, f := range faults {
 			if i == 50 {
 				fmt.Fprintf(&b, "  and %d more\n", len(faults)-i)
 				break
 			}
-			fmt.Fprintf(&b, "  %s %s\n", asWord(f.Path), f.What)
+			fmt.Fprintf(&b, "  %s %s\n", asWord(diag.Printable(f.Path)), diag.Printable(f.What)) // names are those of whoever made the folder
 		}
 	}
 	if len(v.Faults) == 0 {
-		fmt.Fprintf(&b, "%s: as its manifest says: %s\n", v.Folder, counted(v.Files+1, "file", "files"))
+		fmt.Fprintf(&b, "%s: as its manifest says: %s\n", folder, counted(v.Files+1, "file", "files"))
 	} else {
-		fmt.Fprintf(&b, "%s: NOT as its manifest says:\n", v.Folder)
+		fmt.Fprintf(&b, "%s: NOT as its manifest says:\n", folder)
 	}
 	list(v.Faults)
 	switch {
 	case v.Compared == "":
-		fmt.Fprintf(&b, "%s: %s\n", v.Folder, v.Why)
+		fmt.Fprintf(&b, "%s: %s\n", folder, why)
 	case v.Compared == comparedBytes && len(v.Differ) == 0:
-		fmt.Fprintf(&b, "%s: built again from its inputs: every file comes out the same, byte by byte\n", v.Folder)
+		fmt.Fprintf(&b, "%s: built again from its inputs: every file comes out the same, byte by byte\n", folder)
 	case v.Compared == comparedBytes:
-		fmt.Fprintf(&b, "%s: built again from its inputs, byte by byte: NOT the same:\n", v.Folder)
+		fmt.Fprintf(&b, "%s: built again from its inputs, byte by byte: NOT the same:\n", folder)
 	case len(v.Differ) == 0:
-		fmt.Fprintf(&b, "%s: %s; the values, series and checks of results.json were compared and agree to %g, the largest difference is %.1g\n", v.Folder, v.Why, ledger.Agreement, v.Largest)
+		fmt.Fprintf(&b, "%s: %s; the values, series and checks of results.json were compared and agree to %g, the largest difference is %.1g\n", folder, why, ledger.Agreement, v.Largest)
 	default:
-		fmt.Fprintf(&b, "%s: %s; the values, series and checks of results.json were compared and do NOT agree to %g:\n", v.Folder, v.Why, ledger.Agreement)
+		fmt.Fprintf(&b, "%s: %s; the values, series and checks of results.json were compared and do NOT agree to %g:\n", folder, why, ledger.Agreement)
 	}
 	list(v.Differ)
 	if len(v.Notes) > 0 {

@@ -385,9 +385,10 @@ func TestRefused(t *testing.T) {
 	}
 }
 
-// TestDegenerate: constant, single and zero data draw without NaN.
+// TestDegenerate: constant, single and zero data draw without NaN, and values that differ
+// by rounding alone do not count ticks for ever.
 func TestDegenerate(t *testing.T) {
-	for _, y := range [][]float64{{0}, {3}, {0, 0}, {-2, -2}, {1e-12, 2e-12}, {1e12, -1e12}} {
+	for _, y := range [][]float64{{0}, {3}, {0, 0}, {-2, -2}, {1e-12, 2e-12}, {1e12, -1e12}, {1, 1 + 0x1p-52}, {1e15, 1e15 + 1}} {
 		for _, a := range []exhibit.Axis{{}, {Symmetric: true}, {Log: true}} {
 			x := []float64{1, 2}[:len(y)]
 			f := exhibit.Figure{ID: "d", Panels: []exhibit.Panel{{Y: a, Series: []exhibit.FigSerie{{X: x, Y: y, Label: "c", Role: exhibit.Data}}}}}

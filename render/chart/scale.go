@@ -76,6 +76,9 @@ const (
 // itself: what lies below is noise in most pictures.
 const decades = 1e-5
 
+// closest is the least length of an axis, as a share of the larger of its ends.
+const closest = 1e-9
+
 // spanOf is the limits of an axis px long for its values (display unit).
 func spanOf(a exhibit.Axis, values []float64, how fit, px float64) span {
 	s := span{log: a.Log, lo: math.Inf(1), hi: math.Inf(-1)}
@@ -119,7 +122,7 @@ func spanOf(a exhibit.Axis, values []float64, how fit, px float64) span {
 	if a.Max != nil {
 		s.hi = a.Unit.From(*a.Max)
 	}
-	if !(s.hi > s.lo) { // one value only
+	if !(s.hi-s.lo > closest*math.Max(math.Abs(s.lo), math.Abs(s.hi))) { // one value only, but for rounding: ticks between would be equal numbers
 		if s.log {
 			s.lo, s.hi = s.lo/2, s.lo*2
 		} else {

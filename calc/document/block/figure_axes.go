@@ -2,6 +2,7 @@ package block
 
 import (
 	"cmp"
+	"math"
 	"regexp"
 	"slices"
 	"strings"
@@ -47,7 +48,7 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 	if b.Series[0].Ratio.Given {
 		p.Lines = append(p.Lines, exhibit.RefLine{At: 1, Label: "1"})
 	}
-	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p, all)
+	ok = b.ends(r, &p.X, b.From, b.To, b.XAxis, xs, "x") && b.ends(r, &p.Y, b.YFrom, b.YTo, b.YAxis, ys, "y") && b.logarithmic(r, &p, all) && b.decades(r, &p, all)
 	if !ok {
 		return p, false
 	}
@@ -114,9 +115,15 @@ func (b *figure) ends(r *Run, a *exhibit.Axis, from, to, scale field.Field, v qu
 		}
 		*l.to = &x
 	}
-	if from.Given && to.Given && from.SI() >= to.SI() {
-		r.Fail(to, "figure-range", "the %s axis ends at %s, where it begins or before", which, to.Written)
-		return false
+	if from.Given && to.Given {
+		switch lo, hi := from.SI(), to.SI(); {
+		case lo >= hi:
+			r.Fail(to, "figure-range", "the %s axis ends at %s, where it begins or before", which, to.Written)
+			return false
+		case hi-lo < 1e-9*max(math.Abs(lo), math.Abs(hi)):
+			r.Fail(to, "figure-range", "the %s axis ends at %s, too close to where it begins", which, to.Written)
+			return false
+		}
 	}
 	return true
 }
@@ -168,6 +175,47 @@ func (b *figure) logarithmic(r *Run, p *exhibit.Panel, all []drawn) bool {
 		}
 		if lost > 0 {
 			r.WarnAt(all[i].from, "log-axis", "of %s, %d of %d points are not shown: they are not greater than zero, and the axis is logarithmic", s.Label, lost, points)
+		}
+	}
+	return true
+}
+
+const (
+	// logSpan is how many times its beginning the end of a log axis may be.
+	logSpan = 1e30
+	// logLeast and logLargest lie well inside of what can be drawn.
+	logLeast, logLargest = 1e-60, 1e60
+)
+
+// decades sees that log axes span what can be drawn and read.
+func (b *figure) decades(r *Run, p *exhibit.Panel, all []drawn) bool {
+	for _, axis := range []struct {
+		exhibit.Axis
+		from, to field.Field
+		of       func(s exhibit.FigSerie) []float64
+		whole    bool // shows all down to the least value, unless it is told where to begin
+	}{
+		{p.X, b.From, b.To, func(s exhibit.FigSerie) []float64 { return s.X }, true},
+		{p.Y, b.YFrom, b.YTo, func(s exhibit.FigSerie) []float64 { return s.Y }, b.tripartite()},
+	} {
+		if !axis.Log {
+			continue
+		}
+		for i, s := range p.Series {
+			at := all[i].from
+			lo, hi := slices.Min(axis.of(s)), slices.Max(axis.of(s))
+			if axis.Max != nil {
+				hi, at = *axis.Max, axis.to
+			}
+			if axis.Min != nil {
+				lo, at = *axis.Min, axis.from
+			} else if !axis.whole {
+				lo = max(lo, hi/logSpan)
+			}
+			if lo < logLeast || hi > logLargest || hi/lo > logSpan {
+				r.Fail(at, "log-axis", "a log axis shows at most 30 decades of values from 1e-60 to 1e60").WithHint("end the axis closer to where the curves lie")
+				return false
+			}
 		}
 	}
 	return true
