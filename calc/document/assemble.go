@@ -25,6 +25,8 @@ func (d *run) assemble() *exhibit.Package {
 	a.refers()
 	a.dependents()
 	a.registry()
+	a.wheres()
+	a.checkers()
 	a.notation()
 	a.p.Inputs = d.files.inputs(d.src.Main)
 	a.given()
@@ -163,6 +165,14 @@ func (a *assembly) block(s *section) *exhibit.Block {
 		}
 	}
 	a.p.Assumptions = append(a.p.Assumptions, a.anchored(res.Assumptions, b.Anchor)...)
+	for _, c := range res.Comments {
+		c.Anchor = b.Anchor
+		a.p.Comments = append(a.p.Comments, c)
+	}
+	for _, c := range res.Checking {
+		c.Anchor = b.Anchor
+		a.p.Checking = append(a.p.Checking, c)
+	}
 	return b
 }
 
@@ -317,6 +327,9 @@ func (a *assembly) registry() {
 		case blockNode:
 			deps := n.dependsOn()
 			for _, v := range n.result.Values {
+				if n.name == "" { // nothing can name its values
+					break
+				}
 				if v.Value.Unit.Text == "" {
 					v.Value.Unit = a.system.Preferred(v.Value.Dim)
 				}

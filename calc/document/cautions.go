@@ -6,18 +6,20 @@ type sentence struct{ key, short, text string }
 
 // standing statements are printed in every package; nothing turns them off.
 var standing = []sentence{
-	{"responsibility", "", "This is a calculation aid. The licensed engineer in responsible charge answers for its use and for the adequacy of the design; no result relieves anyone of that."},
-	{"law", "", "The law, the adopted code with its local amendments, and the decisions of the authority having jurisdiction govern over anything printed here. The editions used are listed on the cover and in the references."},
-	{"scope", "", "Only what is stated was calculated. Anything not listed was not checked."},
+	{"responsibility", "A calculation aid: the licensed engineer in responsible charge answers for its use and results.", "This is a calculation aid. The licensed engineer in responsible charge answers for its use and for the adequacy of the design; no result relieves anyone of that."},
+	{"law", "The adopted code with its amendments and the authority govern.", "The law, the adopted code with its local amendments, and the decisions of the authority having jurisdiction govern over anything printed here. The editions used are listed on the cover and in the references."},
+	{"scope", "Only what is stated was calculated, for the inputs echoed and this revision; it is to be verified by independent means.", "Only what is stated was calculated. Anything not listed was not checked."},
 	{"inputs", "", "Results hold only for the inputs echoed in this package and for this revision. A printed copy may be superseded: ask the holder of the record."},
 	{"program", "", "The program and its version are named in the register of software. That its own tests pass does not prove it fit for this structure: verify results by independent means."},
-	{"not-for", "", "Not for decisions in an emergency, for placarding occupancy, for nuclear or dam safety without a qualifying quality programme, nor as the only basis of construction."},
+	{"open", "", ""}, // what is open, made by assembly.openText
+	{"not-for", "Never the only basis of construction; not for emergencies or placarding.", "Not for decisions in an emergency, for placarding occupancy, for nuclear or dam safety without a qualifying quality programme, nor as the only basis of construction."},
 }
 
 // triggered sentences are printed where a calculation gives cause, in this order.
 var triggered = []sentence{
 	{"demonstration", "invented data", "Invented data: this package contains data that were made up for demonstration. It must not be used for any project."},
 	{"open-assumption", "open assumptions", "Assumptions are open. Until each is verified the results depending on them are not for construction."},
+	{"open-comment", "open comments", "Comments on this calculation are not closed. What they are about is not for construction until each is answered and its answer accepted."},
 	{"not-met", "checks not met", "Checks are NOT OK. What they compare does not satisfy the criterion stated with them; the design that rests on them is not for construction."},
 	{"sourceless", "inputs without a source", "Inputs name no source. A result is no better than they are: each must be traced to a document and its revision before the result is relied on."},
 	{"earlier-edition", "earlier edition of a standard", "A standard is used of which a later edition has been published. The calculation holds only where the edition named on the cover is the adopted one."},

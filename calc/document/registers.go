@@ -60,7 +60,10 @@ func (a *assembly) bases() (anchors, bases []string) {
 // this calculation triggered, in the order of the list.
 func (a *assembly) cautions() {
 	for _, c := range standing {
-		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Text: c.text})
+		if c.key == "open" {
+			c.short, c.text = a.openText()
+		}
+		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: c.key, Short: c.short, Text: c.text})
 	}
 	for _, text := range a.officeCautions {
 		a.p.Cautions = append(a.p.Cautions, exhibit.Caution{Key: "office", Text: text})
@@ -89,6 +92,9 @@ func (a *assembly) cautions() {
 		if !slices.Contains(by[key], anchor) {
 			by[key] = append(by[key], anchor)
 		}
+	}
+	for _, c := range exhibit.OpenComments(a.p.Comments) {
+		once("open-comment", c.Anchor)
 	}
 	for _, c := range exhibit.Failed(a.p.Checks) {
 		once("not-met", c.Anchor)

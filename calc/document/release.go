@@ -33,6 +33,11 @@ var musts = []must{
 	{"a revision with date, reason and who prepared and checked it", revisionOpen},
 	{"purpose and scope, and conclusions, under headings of their own", headingsOpen},
 	{"a register of assumptions, none of them open", assumptionsOpen},
+	{"no comment that is not closed", func(a *assembly, say sayer) {
+		for _, c := range exhibit.OpenComments(a.p.Comments) {
+			say(diag.Range{File: c.Place.File, Line: c.Place.Line}, "comment "+c.ID+" is "+c.Status, "status: closed, once who commented accepts the response")
+		}
+	}},
 	{"the inputs of every block are printed", echoOpen},
 	{"every input names its source", inputsOpen},
 	{"every check names the clause or reference of its criterion", checksOpen},

@@ -26,12 +26,14 @@ type Package struct {
 	Checks []Check `json:"checks"` // in document order
 
 	Assumptions []Assumption `json:"assumptions"`
-	Notation    []Symbol     `json:"notation"`   // Latin letters, then Greek
-	References  []Reference  `json:"references"` // in order of key
-	Inputs      []Input      `json:"inputs"`     // files read, sorted by path, the main file first
-	Criteria    []Criterion  `json:"criteria"`   // by group
-	Given       []Given      `json:"given"`      // what is taken from outside, in document order
-	Motions     []Motion     `json:"motions"`    // records, in document order
+	Comments    []Comment    `json:"comments,omitempty"` // with their responses
+	Checking    []Checking   `json:"checking,omitempty"` // records of who checked
+	Notation    []Symbol     `json:"notation"`           // Latin letters, then Greek
+	References  []Reference  `json:"references"`         // in order of key
+	Inputs      []Input      `json:"inputs"`             // files read, sorted by path, the main file first
+	Criteria    []Criterion  `json:"criteria"`           // by group
+	Given       []Given      `json:"given"`              // what is taken from outside, in document order
+	Motions     []Motion     `json:"motions"`            // records, in document order
 	Software    Software     `json:"software"`
 	Settings    []Setting    `json:"settings"` // fields of blocks as used, in document order
 	// Frozen is how the results stand to frozen ones; nil where there are none.
@@ -184,6 +186,7 @@ func (n Number) Text() string {
 type Cell struct {
 	Text    string     `json:"text,omitempty"`
 	Symbol  *expr.Node `json:"symbol,omitempty"`  // typeset
+	Refer   string     `json:"refer,omitempty"`   // what Text leads to: "eq V", "fig elf", "table elf-forces", "value V"
 	Numbers []Number   `json:"numbers,omitempty"` // one, or the items of a vector
 	Strong  bool       `json:"strong,omitempty"`  // governing or total
 	Mark    []int      `json:"mark,omitempty"`    // footnotes, counted from 1

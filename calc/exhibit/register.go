@@ -98,3 +98,37 @@ type Method struct {
 	Read   int      `json:"read"` // cases whose source was read; the others are from memory or computed from a formula
 	Limits string   `json:"limits"`
 }
+
+// Comment is a comment on the calculation and the response to it.
+type Comment struct {
+	ID       string `json:"id"`
+	By       string `json:"by"`
+	Date     string `json:"date,omitempty"`
+	Text     string `json:"text"`
+	Response string `json:"response,omitempty"`
+	Where    string `json:"where,omitempty"` // as written
+	Status   string `json:"status"`          // open, answered or closed
+	Anchor   string `json:"anchor"`
+	Place    Place  `json:"place"`
+}
+
+// Checking is the record of one who checked.
+type Checking struct {
+	By        string `json:"by"`
+	Date      string `json:"date"`
+	Scope     string `json:"scope"`
+	Method    string `json:"method"`
+	Values    int    `json:"values"`    // computed by the checker
+	Differing int    `json:"differing"` // by more than the tolerance
+	Anchor    string `json:"anchor"`
+}
+
+// OpenComments are those that are not closed.
+func OpenComments(list []Comment) (out []Comment) {
+	for _, c := range list {
+		if c.Status != "closed" {
+			out = append(out, c)
+		}
+	}
+	return out
+}

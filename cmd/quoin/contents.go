@@ -30,8 +30,8 @@ var contents = []sought{
 	{"who is responsible", "caution of the cover; limitations", "q-cautions", always},
 	{"status: draft, for check, issued, superseded, void", "cover and every head, in words", "sheet-1", "reads \"draft\""},
 	{"superseded or void: pointer to what replaces it, and back", "cover and every head, from `superseded_by`; cover, from `supersedes`", "", "a warning (superseded-by)"},
-	{"what is open: draft, open assumptions, failed checks, inputs without a source, overridden values, uncommitted source", "cover and every head, in words", "sheet-1", always},
-	{"whether anything is to be confirmed: open assumptions, inputs without a source, publications cited from memory", "cover", "sheet-1", always},
+	{"what is open: draft, open assumptions, comments not closed, failed checks, inputs without a source, overridden values, uncommitted source", "cover and every head, in words", "sheet-1", always},
+	{"whether anything is to be confirmed: open assumptions, comments not closed, inputs without a source, publications cited from memory", "cover", "sheet-1", always},
 	{"governing documents with edition", "cover", "sheet-1", "reads \"not given\"; " + notIssued},
 	{"design criteria: risk and design category, site, spectral values, system, R, C_d, I_e, procedure, W, C_s, V; of EN 1998-1 a_g, ground, type, q", "cover, from the blocks that state them", "q-criteria", "the criteria that no block states are left out"},
 	{"revisions with date, reason, sheets, prepared, checked and approved", "cover", "sheet-1", notIssued + " without date, reason, prepared and checked"},
@@ -61,7 +61,9 @@ var contents = []sought{
 	{"computer output in bulk", "tables/ and results.json beside the page; summary and key results in the body", "", always},
 	{"source and data files, how to verify and to build again; digest of the inputs", "inputs/, manifest.json and README.txt beside the page; digest on the cover", "", always},
 	{"tables and lists that are larger than a sheet", "cut between rows with the head repeated; too wide: set smaller, then on a sheet across, then in parts with the first column repeated", "", always},
-	{"marks and record of the checker; comments and responses; peer review", "on paper or in documents of their own, named in the references", "", "by people: the program has no form for them"},
+	{"record of the checker: scope, method, values of the checker's own with the difference, date", "a `checking` block, each value a check of the summary; named on the cover", "", "by a person: the cover names no record"},
+	{"comments, responses, and where each was resolved", "a `comments` block; those not closed on the cover and in every head", "", "by people; " + notIssued + " with one not closed"},
+	{"marks on a check set; peer review and the criteria agreed for it", "on paper or in documents of their own, named in the references", "", "by people: the program has no form for them"},
 }
 
 const (

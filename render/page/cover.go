@@ -254,8 +254,20 @@ func (b *book) coverRows() []coverRow {
 	assumptions := assumptionTally(b.p)
 	row = add("Assumptions", coverLine{Text: strconv.Itoa(assumptions.OK) + " verified", Open: assumptions.Failed})
 	row.Rest, row.To = assumptions.Rest, "q-assumptions"
+	if t := commentTally(b.p); t.Any {
+		row = add("Comments", coverLine{Text: strconv.Itoa(t.OK) + " closed", Open: t.Failed})
+		row.Rest, row.To = t.Rest, b.p.Comments[0].Anchor
+	}
 	add("To be confirmed", b.unconfirmed())
-	add("Check", coverLine{Text: "independence: " + clip(or(m.Independence, "not declared"), titleChars)})
+	row = add("Check", coverLine{Text: "independence: " + clip(or(m.Independence, "not declared"), titleChars)})
+	for _, c := range b.p.Checking {
+		text := "; record of " + clip(c.By, 40)
+		if c.Values > 0 {
+			text += ", values computed by the checker: " + strconv.Itoa(c.Values)
+		}
+		row.Lines[0].Text += text
+		row.Listed = c.Anchor
+	}
 	if list := b.p.Provenance.Overrides; len(list) > 0 {
 		row = add("Overridden")
 		for _, o := range list[:min(len(list), listed)] {
@@ -309,6 +321,7 @@ func (b *book) unconfirmed() coverLine {
 		}
 	}
 	say(len(openAssumptions(b.p)), "open assumption", "open assumptions")
+	say(len(exhibit.OpenComments(b.p.Comments)), "open comment", "open comments")
 	say(exhibit.Missing(b.p.Given), "input without a source", "inputs without a source")
 	say(memory, "publication cited from memory", "publications cited from memory")
 	if len(parts) == 0 {
@@ -324,7 +337,7 @@ func (b *book) sign() item {
 	if v.SamePerson {
 		tall = max(tall, 2)
 	}
-	return item{name: "sign", data: v, high: 18.5 + 5*tall}
+	return item{name: "sign", data: v, high: 25.5 + 5*tall}
 }
 
 // signs is who signed.
@@ -353,8 +366,10 @@ func (b *book) shortCaution() (always, used []item) {
 	high, words := 11.5, ""
 	for _, c := range b.p.Cautions {
 		switch {
-		case c.Key == "demonstration" || c.Key == "office" || len(c.Blocks) == 0 && len(v.Texts) < 2:
+		case c.Key == "demonstration" || c.Key == "office":
 			v.Texts = append(v.Texts, c.Text)
+		case len(c.Blocks) == 0 && c.Short != "":
+			v.Texts = append(v.Texts, c.Short)
 		case len(c.Blocks) > 0 && c.Short != "":
 			v.Triggered = append(v.Triggered, c)
 			words += c.Short + " (" + strings.Repeat("12, ", len(c.Blocks)) + "); "

@@ -73,6 +73,7 @@ func (b *book) partProse(list []exhibit.Prose, label string) []item {
 // cellView is a cell as set.
 type cellView struct {
 	Text, Numbers, ID string
+	Refer             string // what the text leads to
 	Symbol            *expr.Node
 	Strong, Right     bool
 	Mark              []int
@@ -85,7 +86,7 @@ var date = regexp.MustCompile(`^\d{4}-\d{2}-\d{2}$`)
 
 // cell shows numbers in unit where that fits them, else in their own, named.
 func (b *book) cell(c exhibit.Cell, unit *quantity.Unit) cellView {
-	v := cellView{Text: c.Text, Symbol: c.Symbol, Strong: c.Strong, Mark: c.Mark, Whole: date.MatchString(c.Text)}
+	v := cellView{Text: c.Text, Refer: c.Refer, Symbol: c.Symbol, Strong: c.Strong, Mark: c.Mark, Whole: date.MatchString(c.Text)}
 	if len(c.Numbers) == 0 {
 		return v
 	}

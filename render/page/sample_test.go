@@ -81,6 +81,8 @@ func sample() *exhibit.Package {
 		{ID: "A1", Text: "Floors act as rigid diaphragms in their plane", Basis: "concrete slabs, 200 mm", Status: "verified", By: "KM", When: "2026-02-11", Anchor: "base_shear"},
 		{ID: "A3", Text: "Columns are fixed at the foundation", Basis: "to be confirmed by the geotechnical report", Status: "open", By: "", Anchor: "base_shear"},
 	}
+	p.Comments = []exhibit.Comment{{ID: "C1", By: "AB", Date: "2026-02-12", Text: "Which site class?", Response: "That of the report", Where: "V", Status: "closed", Anchor: "base_shear"}}
+	p.Checking = []exhibit.Checking{{By: "RV", Date: "2026-02-13", Scope: "all but the foundation", Method: "by hand", Anchor: "base_shear"}}
 	p.References = []exhibit.Reference{{Key: "ASCE/SEI 7-22", Text: "Minimum Design Loads and Associated Criteria for Buildings and Other Structures. American Society of Civil Engineers, 2022.",
 		Clauses: []string{"Eq. 12.8-8", "12.8.2", "12.12.1"}, Memory: true}}
 	p.Inputs = []exhibit.Input{{Path: "package.md", SHA256: strings.Repeat("0f1e2d3c", 8), Bytes: 8123, Role: "document"}, {Path: "records/east.txt", SHA256: strings.Repeat("a1b2c3d4", 8), Bytes: 40960, Role: "record"}}

@@ -25,6 +25,9 @@ func OpenState(p *exhibit.Package) []string {
 	open := openAssumptions(p)
 	say(len(open) == 1, "1 open assumption")
 	say(len(open) > 1, "%d open assumptions", len(open))
+	comments := exhibit.OpenComments(p.Comments)
+	say(len(comments) == 1, "1 open comment")
+	say(len(comments) > 1, "%d open comments", len(comments))
 	failed := exhibit.Failed(p.Checks)
 	say(len(failed) == 1, "1 check NOT OK")
 	say(len(failed) > 1, "%d checks NOT OK", len(failed))
@@ -104,6 +107,22 @@ func assumptionTally(p *exhibit.Package) tally {
 		names = append(names, strings.TrimSpace(a.ID+" "+clip(a.Text, 80)))
 	}
 	t := tally{OK: len(p.Assumptions) - len(open), Any: len(p.Assumptions) > 0}
+	t.Failed, t.Rest = few(len(open), "open", names)
+	return t
+}
+
+// commentTally counts the comments by what has become of them.
+func commentTally(p *exhibit.Package) tally {
+	open := exhibit.OpenComments(p.Comments)
+	var names []string
+	for _, c := range open {
+		text := strings.TrimSpace(c.ID + " " + clip(c.Text, 80))
+		if c.Status == "answered" {
+			text += " (answered)"
+		}
+		names = append(names, text)
+	}
+	t := tally{OK: len(p.Comments) - len(open), Any: len(p.Comments) > 0}
 	t.Failed, t.Rest = few(len(open), "open", names)
 	return t
 }

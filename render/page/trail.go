@@ -325,6 +325,9 @@ type referView struct {
 
 func (b *book) refer(target string) referView {
 	to := b.known(b.trail.named[target])
+	if id, ok := strings.CutPrefix(target, "value "); ok {
+		to = b.origin(id)
+	}
 	v := referView{Href: to}
 	if s := b.sheets[to]; to != "" && s != b.trail.here {
 		v.Sheet = s

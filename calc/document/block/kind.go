@@ -80,7 +80,7 @@ type Function struct {
 // blocks have lines instead; see package formula.
 var Kinds = []Kind{
 	recordKind, periodsKind, spectrumKind, targetKind, structureKind, modesKind, combineKind, staticKind, driftKind,
-	figureKind, tableKind, varyKind, assumptionsKind, referencesKind,
+	figureKind, tableKind, varyKind, assumptionsKind, commentsKind, checkingKind, referencesKind,
 }
 
 // Lookup finds a kind by name.

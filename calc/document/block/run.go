@@ -63,6 +63,8 @@ type Result struct {
 	Refs        []cite.Ref
 	Symbols     []Symbol // of the method's equations in TeX
 	Assumptions []exhibit.Assumption
+	Comments    []exhibit.Comment
+	Checking    []exhibit.Checking
 	Criteria    []exhibit.Criterion // for the cover; their origin is filled in by document
 	Motion      *exhibit.Motion     // of a record; its origin and hash are filled in by document
 	References  []exhibit.Reference
