@@ -38,7 +38,9 @@ var structural = map[string]string{
 	"GivenValue.ID": "as above", "SymbolPlace.ID": "as above", "FigSerie.ID": "as above", "Curve.ID": "as above", "Node.ID": "as above",
 	"Check.ID": "the text of a condition that was parsed", "Node.Text": "a name, a number or an operator by the grammar", "Node.Unit": "a unit of the table", "Unit.Text": "as above",
 	"Figure.ID": "the stem of a file, a name", "Table.ID": "as above", "Symbol.TeX": "typeset by the list of commands", "Symbol.Name": "a name by the grammar",
-	"Input.Path": "a key of the files; names with hidden signs are refused",
+	"Input.Path":    "a key of the files; names with hidden signs are refused",
+	"Office.Folder": "a path below the root", "OfficeFile.Name": "the name of a file read", "OfficeFile.Path": "a path below the root", "OfficeFile.MediaType": "of a list",
+	"Wording.Key": "a key of the list of words", "Wording.Doc": "for the reference, in no package",
 }
 
 // fill puts text(field) in every string below v that is no structure, and counts the fields.
@@ -106,6 +108,10 @@ func wildSample(t *testing.T) document.Result {
 		t.Fatal(res.Diagnostics)
 	}
 	p := res.Package
+	p.Office = &exhibit.Office{Name: "x"}
+	for _, w := range exhibit.Words {
+		p.Office.Words = append(p.Office.Words, exhibit.Wording{Key: w.Key, Text: "x"})
+	}
 	p.Provenance.Overrides = append(p.Provenance.Overrides, exhibit.Override{Name: "x"})
 	p.Criteria = append(p.Criteria, exhibit.Criterion{Group: exhibit.CriteriaGroups[0], Label: "x", Value: exhibit.Cell{Text: "x"}})
 	for i := range p.Chapters {

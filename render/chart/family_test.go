@@ -102,18 +102,18 @@ func spectrum() exhibit.Figure {
 	}}}
 }
 
-// dampings is the same with both axes logarithmic.
+// dampings is the same with both axes logarithmic, in all six dashes.
 func dampings() exhibit.Figure {
 	T := periods(0.02, 10, 200)
 	p := exhibit.Panel{X: exhibit.Axis{Label: "period T", Unit: unit("s"), Log: true}, Y: exhibit.Axis{Label: "pseudo-velocity", Unit: unit("cm/s"), Log: true}}
-	for i, z := range []string{"0.5 %", "2 %", "5 %", "10 %", "20 %"} {
+	for i, z := range []string{"0.5 %", "2 %", "5 %", "10 %", "15 %", "20 %"} {
 		y := ordinates(T, 0.9/(1+0.35*float64(i)), 0.3/(1+float64(i)))
 		for k := range y {
 			y[k] *= T[k] / 2 / math.Pi
 		}
-		p.Series = append(p.Series, exhibit.FigSerie{Label: z, X: T, Y: y, Role: exhibit.Data, Dash: i % 4})
+		p.Series = append(p.Series, exhibit.FigSerie{Label: z, X: T, Y: y, Role: exhibit.Data, Dash: i})
 	}
-	return exhibit.Figure{ID: "dampings", Caption: "Pseudo-velocity at five dampings", Alt: "Five curves.", Panels: []exhibit.Panel{p}}
+	return exhibit.Figure{ID: "dampings", Caption: "Pseudo-velocity at six dampings", Alt: "Six curves.", Panels: []exhibit.Panel{p}}
 }
 
 var levels = []exhibit.TickName{{At: 0, Name: "base"}, {At: 4.2, Name: "level 2"}, {At: 7.8, Name: "level 3"}, {At: 11.4, Name: "level 4"}, {At: 15.2, Name: "roof"}}

@@ -33,6 +33,7 @@ type book struct {
 	lead     float64             // em, of the symbols before the equals signs of that block
 	revised  revised             // what is marked as changed
 	own      own                 // the clothes of an office
+	most     *rooms              // what sheets hold, once measured
 	err      error               // the first, of making the page
 }
 

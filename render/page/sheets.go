@@ -91,10 +91,14 @@ func (b *book) room() float64 { return b.rooms().upright }
 // spare is left free at the foot of a sheet, mm: heights are estimates.
 const spare = 3
 
+// rooms are measured once: every equation asks.
 func (b *book) rooms() rooms {
-	_, height := b.paperSize()
-	width, _ := b.paperSize()
-	return rooms{height - marginsHigh - spare - b.headHigh(false), width - marginsHigh - spare - b.headHigh(true)}
+	if b.most != nil {
+		return *b.most
+	}
+	width, height := b.paperSize()
+	b.most = &rooms{height - marginsHigh - spare - b.headHigh(false), width - marginsHigh - spare - b.headHigh(true)}
+	return *b.most
 }
 
 // headHigh is how high the head of a sheet is, mm.

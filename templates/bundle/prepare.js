@@ -56,6 +56,7 @@ export function prepare(option, total) {
     if (axis.type !== 'log') continue
     Object.assign(axis, { type: 'value', log: true, min: Math.log10(axis.min), max: Math.log10(axis.max) })
   }
+  for (const s of list(option.series)) if (/^~(ring|linename)/.test(s.id)) keep(s, xs[s.xAxisIndex || 0], grids, total)
   for (const t of list(option.title)) place(t, grids, total)
   const legend = option.legend
   if (legend && legend.show !== false) legend.left = grids[0].left - 5
@@ -70,13 +71,29 @@ function turn(series, x, y, grids) {
   for (const d of series.data) d.label.rotate = series.rise * angle
 }
 
+// keep keeps the names of places inside the drawing: one that would leave it stands on the other side of its
+// place, or in lines on the wider side.
+function keep(series, x, grids, total) {
+  const g = grids[x.gridIndex || 0]
+  for (const { name, value, label } of list(series.data)) {
+    if (!name || !label || label.rotate) continue
+    const at = g.left + (g.width * (value[0] - x.min)) / (x.max - x.min), off = Math.abs(label.offset[0])
+    const room = { left: total - at - off, right: at - off } // of a text that begins, or ends, at its place
+    const long = width(name, size)
+    if (!(long > room[label.align])) continue
+    const other = label.align === 'left' ? 'right' : 'left'
+    if (room[other] > room[label.align]) Object.assign(label, { align: other, offset: [other === 'left' ? off : -off, label.offset[1]] })
+    if (long > room[label.align]) Object.assign(label, { width: room[label.align], overflow: 'break' })
+  }
+}
+
 // straighten takes logarithms for logarithmic axes: such an axis is drawn as a plain
 // one of the logarithms, so that zooming is even along it.
 function straighten(series, x, y) {
   const logs = [x.type === 'log', y.type === 'log']
   if (!logs[0] && !logs[1]) return
   const turn = (v, i) => (logs[i % 2] ? Math.log10(v) : v)
-  series.data = series.data.map(ArrayBuffer.isView(series.data) ? turn : (d) => Object.assign(d, { value: d.value.map(turn) }))
+  series.data = series.data.map(ArrayBuffer.isView(series.data) ? turn : (d) => (Array.isArray(d) ? d.map(turn) : Object.assign(d, { value: d.value.map(turn) })))
 }
 
 // mark puts ticks on an axis px long, of which the window [from, to] is seen.

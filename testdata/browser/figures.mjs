@@ -42,11 +42,12 @@ const button = async (figure, ...names) => {
 }
 
 // state is what the chart shows once it is drawn: the words of its picture, and the number and shape of its lines.
+// In no order: the library writes what comes back into sight after what was there.
 const state = (figure) => figure.evaluate(async (f) => {
   for (let i = 0; i < 2; i++) await new Promise(requestAnimationFrame)
   const svg = f.querySelector('.live svg')
-  const lines = [...svg.querySelectorAll('path')].map((p) => p.getAttribute('d'))
-  return { words: [...svg.querySelectorAll('text')].map((t) => t.textContent).join('|'), lines: lines.length, shape: lines.join(''), height: f.querySelector('.live').clientHeight }
+  const lines = [...svg.querySelectorAll('path')].map((p) => p.getAttribute('d')).sort()
+  return { words: [...svg.querySelectorAll('text')].map((t) => t.textContent).sort().join('|'), lines: lines.length, shape: lines.join(''), height: f.querySelector('.live').clientHeight }
 })
 const same = (a, b) => a.words === b.words && a.lines === b.lines && a.shape === b.shape && a.height === b.height
 

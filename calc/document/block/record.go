@@ -164,8 +164,13 @@ func (b *record) read(r *Run) *motion.Record {
 		var ae *archive.Error
 		if errors.As(err, &ae) {
 			hint, text = ae.Hint, ae.Summary
-			if ae.Channel && b.Channel.Given {
+			switch {
+			case ae.Channel && b.Channel.Given:
 				at = b.Channel.At
+			case ae.Format:
+				at = b.Format.At
+			case ae.Unit:
+				at = b.Unit.At
 			}
 			if ae.Line > 0 {
 				at = diag.Range{File: full, Line: ae.Line, Column: ae.Column, EndLine: ae.Line, EndColumn: ae.Column + ae.Width}

@@ -120,7 +120,7 @@ func (f *file) format(name string) (Format, error) {
 				names = append(names, format.Name)
 			}
 		}
-		return Format{}, fail("no format "+strconv.Quote(name)+" is read", "formats: auto, "+strings.Join(names, ", "))
+		return Format{}, &Error{Summary: "no format " + strconv.Quote(name) + " is read", Hint: "formats: auto, " + strings.Join(names, ", "), Format: true}
 	}
 	for _, format := range Formats {
 		if format.detect == nil || !format.detect(f) {

@@ -15,6 +15,8 @@ type Error struct {
 	Hint         string // what to do; may be empty
 	Excerpt      string // the line, cut to a readable length
 	Channel      bool   // it is the channel asked for that does not fit, not the file
+	Format       bool   // likewise the format asked for
+	Unit         bool   // likewise the unit
 }
 
 func (e *Error) Error() string {

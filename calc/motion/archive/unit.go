@@ -43,7 +43,7 @@ func askedUnit(text string) (float64, error) {
 	if u, err := quantity.ParseUnit(text); err == nil && u.Dim == quantity.Acceleration {
 		return u.Scale, nil
 	}
-	return 0, fail(fmt.Sprintf("%q is not a unit of acceleration", text), `write "g", "gal", "cm/s^2", "m/s^2" or "mm/s^2"`)
+	return 0, &Error{Summary: fmt.Sprintf("%q is not a unit of acceleration", text), Hint: `write "g", "gal", "cm/s^2", "m/s^2" or "mm/s^2"`, Unit: true}
 }
 
 // plainUnit finds unmistakable units of acceleration within a line of text.
