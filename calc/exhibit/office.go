@@ -69,7 +69,6 @@ var Words = []Wording{
 	{"client", "Client", "on the cover"},
 	{"discipline", "Discipline", "on the cover"},
 	{"location", "Location", "on the cover"},
-	{"discipline", "Discipline", "on the cover"},
 	{"authority", "Authority", "on the cover"},
 	{"basis", "Governing basis", "on the cover"},
 	{"criteria", "Design criteria", "heading on the cover"},
