@@ -64,6 +64,7 @@ func Run(src Source, o Options) Result {
 		d.link()
 		d.unusedInputs()
 		d.execute()
+		d.agree()
 		d.sameChecks()
 		d.sameDimension()
 	}

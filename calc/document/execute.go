@@ -196,6 +196,25 @@ func (d *run) runBlock(n *node, sc scope) {
 	}
 }
 
+// agree lets blocks that have run see each other, for what they state differently.
+func (d *run) agree() {
+	var all []block.Peer
+	for _, n := range d.nodes {
+		if n.kind == blockNode && !n.failed && n.result.Made != nil {
+			all = append(all, block.Peer{Run: &block.Run{Env: scope{d: d, n: n}, Name: n.name, Kind: n.def, Order: n.order, Place: n.at, Result: n.result}, Body: n.body})
+		}
+	}
+	block.Agree(all)
+	at := 0
+	for _, n := range d.nodes {
+		if n.kind == blockNode && !n.failed && n.result.Made != nil {
+			n.result.Warnings = all[at].Warnings
+			n.diags = append(n.diags, all[at].Diags...)
+			at++
+		}
+	}
+}
+
 // scope is what a node sees of the others.
 type scope struct {
 	d *run

@@ -16,8 +16,9 @@ import (
 )
 
 // takes are the kinds that take values from outside the document. Other kinds say
-// what is computed and shown: periods, dampings of spectra, columns of tables.
-var takes = []string{"record", "structure", "modes", "target", "static", "combine", "drift"}
+// what is computed and shown: periods, dampings of spectra, columns of tables. Of a
+// table its file alone is data.
+var takes = []string{"record", "structure", "modes", "target", "static", "combine", "drift", "table"}
 
 // words of a field that are data, besides quantities and files.
 var words = map[string][]string{
@@ -120,6 +121,7 @@ func (a *assembly) givenFields(n *node, g *exhibit.Given) {
 		case !f.Given || slices.Contains(choices, s.Name) || g.Kind == "record" && slices.Contains(facts, s.Name):
 		case s.Is == "file":
 			g.Rows = append(g.Rows, exhibit.GivenValue{Label: "file", Value: exhibit.Cell{Text: a.full(n, f.Text())}, Place: place})
+		case g.Kind == "table": // values of others, and how they are shown
 		case !top[f]:
 			if s.Quantity && block.Literal(f) {
 				listed += max(1, len(f.Value.SI))

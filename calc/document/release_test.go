@@ -6,6 +6,7 @@ import (
 	"testing"
 	"testing/fstest"
 
+	"quoin/calc/diag"
 	"quoin/calc/exhibit"
 )
 
@@ -94,5 +95,23 @@ func TestRelease(t *testing.T) {
 	over := Options{Overrides: []exhibit.Override{{Name: "V", Text: "3.5 kN"}}}
 	if said := build(ready, over); !slices.Equal(said, []string{"the value of V is overridden from outside the document"}) {
 		t.Errorf("overridden: %q", said)
+	}
+}
+
+// TestReleaseTable: the file of a table is an input, which names its source or is not
+// issued.
+func TestReleaseTable(t *testing.T) {
+	for cite, want := range map[string]string{"": "status is issued, but no source is named for file of table", "cite: D\n": ""} {
+		text := strings.Replace(ready, "```calc assumptions\n", "```calc table\nfile: loads.csv\n"+cite+"```\n\n```calc assumptions\n", 1)
+		res := Run(Source{FS: fstest.MapFS{"p.md": {Data: []byte(text)}, "loads.csv": {Data: []byte("level,weight [kN]\nL1,100\n")}}, Main: "p.md"}, Options{})
+		said := ""
+		for _, d := range res.Diagnostics {
+			if d.Severity == diag.Error {
+				said += d.Summary
+			}
+		}
+		if said != want || (res.Package != nil) != (want == "") {
+			t.Errorf("%q: %q, want %q", cite, said, want)
+		}
 	}
 }

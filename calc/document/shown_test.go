@@ -224,7 +224,7 @@ func triggeredBy(p *exhibit.Package) map[string]string {
 func TestCautionsTriggered(t *testing.T) {
 	_, res := runKinds(t, Options{})
 	kinds := map[string]string{
-		"open-assumption": "b-reg", "open-comment": "b-remarks", "sourceless": "b-east b-filtered b-design b-read b-frame b-same b-r b-rr b-dr b-elf", "linear": "b-frame b-same b-r b-rr b-ra b-elf", "reduced": "b-r b-elf", "static": "b-elf", "accidental-torsion": "b-elf", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
+		"open-assumption": "b-reg", "open-comment": "b-remarks", "sourceless": "b-east b-filtered b-design b-read b-frame b-same b-r b-rr b-dr b-elf b-file", "linear": "b-frame b-same b-r b-rr b-ra b-elf", "reduced": "b-r b-elf", "static": "b-elf", "accidental-torsion": "b-elf", "fixed-base": "b-frame b-same", "planar": "b-frame b-same",
 		"second-order": "b-frame b-same", "damping": "b-rs b-frame b-r b-rr b-ra", "combined": "b-r b-rr b-ra", "unprocessed": "b-east b-push", "processed": "b-filtered", "short-record": "b-rs",
 		"few-motions": "b-rs b-rr", "two-period": "b-design", "table-target": "b-read", "drift": "b-dr", "drift-scaling": "b-dr", "what-if": "b-moved",
 	}

@@ -62,7 +62,7 @@ func packages(dir string) (found []string, err error) {
 		case err != nil:
 			return err
 		case d.IsDir():
-			if path != dir && (strings.HasPrefix(d.Name(), ".") || slices.Contains(foreign, d.Name())) || ledger.IsPackage(path) {
+			if path != dir && (strings.HasPrefix(d.Name(), ".") || slices.Contains(foreign, d.Name())) || isWritten(path) {
 				return fs.SkipDir
 			}
 		case d.Type().IsRegular() && slices.Contains(endings, strings.ToLower(filepath.Ext(path))) && marked(path):
@@ -71,6 +71,19 @@ func packages(dir string) (found []string, err error) {
 		return nil
 	})
 	return found, err
+}
+
+// isWritten tells whether a folder is a written package, whole or damaged: the copies of
+// documents in it are no documents to run.
+func isWritten(dir string) bool {
+	if strings.HasSuffix(filepath.Base(dir), ".package") {
+		for _, name := range []string{ledger.ManifestFile, "index.html"} {
+			if _, err := os.Lstat(filepath.Join(dir, name)); err == nil {
+				return true
+			}
+		}
+	}
+	return ledger.IsPackage(dir)
 }
 
 var (

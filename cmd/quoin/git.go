@@ -24,13 +24,17 @@ func git(folder string, args ...string) (out []byte, ok bool) {
 var harmless = []string{"-c", "core.fsmonitor=false", "-c", "core.hooksPath=" + os.DevNull, "-c", "core.pager=cat", "-c", "protocol.allow=never",
 	"-c", "log.showSignature=false", "-c", "core.quotePath=true", "--no-replace-objects", "--literal-pathspecs"}
 
+// gitPatience is how long git may take to answer, so that a stuck one does not hold a
+// build.
+var gitPatience = 5 * time.Second
+
 // askGit runs git on the repository whose work tree has its top in folder. Of the
 // environment it sees no variable that names another repository or index, as they are
 // set inside hooks. It never asks and takes no lock. Commands are to be of those that
 // read objects only: what compares files with an index runs the filters that the
 // repository names.
 func askGit(folder string, args ...string) ([]byte, error) {
-	ctx, cancel := context.WithTimeout(context.Background(), time.Minute)
+	ctx, cancel := context.WithTimeout(context.Background(), gitPatience)
 	defer cancel()
 	cmd := exec.CommandContext(ctx, "git", append(append([]string{}, harmless...), args...)...)
 	cmd.Dir = folder
@@ -46,6 +50,8 @@ func askGit(folder string, args ...string) ([]byte, error) {
 	out, err := cmd.Output()
 	var exit *exec.ExitError
 	switch first, _, _ := strings.Cut(strings.TrimSpace(said.String()), "\n"); {
+	case err != nil && ctx.Err() != nil:
+		return nil, gitSilent(gitPatience)
 	case errors.Is(err, exec.ErrNotFound):
 		return nil, errors.New(gitMissing)
 	case errors.As(err, &exit) && first != "":
@@ -56,6 +62,13 @@ func askGit(folder string, args ...string) ([]byte, error) {
 		return nil, err
 	}
 	return out, nil
+}
+
+// gitSilent is that git gave no answer, for so long.
+type gitSilent time.Duration
+
+func (e gitSilent) Error() string {
+	return fmt.Sprintf("git gave no answer within %s", time.Duration(e))
 }
 
 // exitError is the exit code of git.

@@ -52,7 +52,8 @@ type watch struct {
 	cache   *memory
 	server  *liveServer
 	version int
-	asked   []string // files that the last run asked for, below the root
+	asked   []string    // files that the last run asked for, below the root
+	stuck   *repository // git gave no answer on it, and is not asked again
 	quiet   time.Duration
 	left    *draft         // what the last page left to be set
 	said    func(w *watch) // of tests: after each page
@@ -279,7 +280,13 @@ func (w *watch) run() (document.Result, error) {
 	var tree *repository
 	go func() {
 		defer close(known)
+		if tree = w.stuck; tree != nil {
+			return
+		}
 		tree = (*workTrees)(nil).of(filepath.Dir(filepath.Join(w.src.root, filepath.FromSlash(w.src.main))))
+		if tree != nil && tree.silent {
+			w.stuck = tree
+		}
 	}()
 	o := document.Options{Overrides: slices.Clone(w.app.flags.overrides), Provenance: from, Cache: w.cache}
 	res := document.Run(document.Source{FS: root.FS(), Main: w.src.main}, o)

@@ -224,13 +224,13 @@ var (
 
 // watching says where the live page is.
 func watching(file, address string) string {
-	return fmt.Sprintf("%s: live page at %s (Ctrl-C ends it)\n", file, address)
+	return fmt.Sprintf("%s: live page at %s (Ctrl-C ends it)\n", diag.Printable(file), address)
 }
 
 // shownAgain says what the document came to this time.
 func shownAgain(file string, checks []exhibit.Check, took time.Duration) string {
 	failed := len(exhibit.Failed(checks))
-	return fmt.Sprintf("%s: shown after %d ms; checks: %d OK, %d NOT OK\n", file, took.Milliseconds(), len(checks)-failed, failed)
+	return fmt.Sprintf("%s: shown after %d ms; checks: %d OK, %d NOT OK\n", diag.Printable(file), took.Milliseconds(), len(checks)-failed, failed)
 }
 
 // notShown is the title of the page of messages.
@@ -256,6 +256,7 @@ func errClash(dir, other string) error {
 
 // tallyLine is one of many packages.
 func tallyLine(file string, t tally) string {
+	file = diag.Printable(file)
 	switch {
 	case !t.run:
 		return fmt.Sprintf("%s: %s\n", file, counted(t.errors, "error", "errors"))
@@ -393,6 +394,7 @@ func asWord(path string) string {
 // out, the worst first.
 func summary(file, page string, unchanged bool, checks []exhibit.Check) string {
 	var b strings.Builder
+	file, page = diag.Printable(file), diag.Printable(page)
 	switch {
 	case page == "":
 		fmt.Fprintf(&b, "%s: no errors\n", file)
@@ -422,7 +424,7 @@ func checkLine(c exhibit.Check) string {
 	if strings.Trim(c.Item, "0123456789") != "" { // a level, not only an index
 		name = c.Name + " at " + c.Item
 	}
-	return fmt.Sprintf("%s: demand %s, limit %s, %s (%s:%d)", name, shown(c.Demand), shown(c.Limit), ratio, c.Place.File, c.Place.Line)
+	return diag.Printable(fmt.Sprintf("%s: demand %s, limit %s, %s (%s:%d)", name, shown(c.Demand), shown(c.Limit), ratio, c.Place.File, c.Place.Line))
 }
 
 func shown(n exhibit.Number) string {
@@ -446,8 +448,20 @@ func gitCannotTell(why string) string {
 	return "this file lies in a git work tree, but its commit is not known: " + why
 }
 
+// longestName is how many characters of a name are said back.
+const longestName = 200
+
+// brief is a name on one line, cut if it is longer than any name is.
+func brief(name string) string {
+	if c := []rune(name); len(c) > longestName {
+		name = string(c[:longestName]) + "..."
+	}
+	return diag.Printable(name)
+}
+
 // Of --why.
 func whyNothing(name string, names []string) string {
+	name = brief(name)
 	text := fmt.Sprintf("--why %s: no block, formula line or check is called that", name)
 	if near := diag.Nearest(name, names); near != "" {
 		text += "; did you mean " + near + "?"
@@ -465,7 +479,7 @@ func whyWords(b *because, file string) string {
 	case b.Kind != "":
 		what = b.Kind + " block"
 	}
-	fmt.Fprintf(&out, "%s (%s, %s:%d): ", b.Name, what, file, b.Place.Line)
+	fmt.Fprintf(&out, "%s (%s, %s:%d): ", brief(b.Name), what, diag.Printable(file), b.Place.Line)
 	switch {
 	case b.Failed:
 		out.WriteString("did not run to its end, for an error in it or in what it reads")
@@ -490,7 +504,7 @@ func whyWords(b *because, file string) string {
 		out.WriteString("  nothing that it reads has changed since the last build\n")
 	}
 	for _, c := range b.Changed {
-		fmt.Fprintf(&out, "  %s\n", changeWords(c))
+		fmt.Fprintf(&out, "  %s\n", diag.Printable(changeWords(c)))
 	}
 	if b.Known && !b.New && !b.Failed && len(b.Changed) > 0 {
 		if b.Moved {
@@ -512,7 +526,7 @@ func whyWords(b *because, file string) string {
 		if len(b.Changed) > 0 {
 			verb = "unchanged"
 		}
-		fmt.Fprintf(&out, "  %s: %s\n", verb, strings.Join(same, ", "))
+		fmt.Fprintf(&out, "  %s: %s\n", verb, diag.Printable(strings.Join(same, ", ")))
 	}
 	return out.String()
 }
@@ -653,7 +667,7 @@ func ofRevision(rev string) string {
 	if rev == "" {
 		return "a document without a revision"
 	}
-	return "revision " + rev
+	return "revision " + diag.Printable(rev)
 }
 
 // revisionNow is the revision a document is at.
@@ -684,10 +698,10 @@ func frozenStanding(f *exhibit.Frozen, file string, m exhibit.Meta) string {
 		files = append(files, m.ID)
 	}
 	if len(files) > 0 && !f.Agrees() {
-		fmt.Fprintf(&b, "  files with other bytes: %s\n", strings.Join(files, ", "))
+		fmt.Fprintf(&b, "  files with other bytes: %s\n", diag.Printable(strings.Join(files, ", ")))
 	}
 	if !f.Current {
-		fmt.Fprintf(&b, "  %s is not frozen yet: quoin freeze %s\n", ofRevision(revisionNow(m)), asWord(file))
+		fmt.Fprintf(&b, "  %s is not frozen yet: quoin freeze %s\n", ofRevision(revisionNow(m)), asWord(diag.Printable(file)))
 	}
 	return b.String()
 }
@@ -695,6 +709,7 @@ func frozenStanding(f *exhibit.Frozen, file string, m exhibit.Meta) string {
 // frozenSummary is what freeze did.
 func frozenSummary(file, target string, now, former *ledger.Frozen, moved *exhibit.Frozen, unchanged bool) string {
 	var b strings.Builder
+	file, target = diag.Printable(file), diag.Printable(target)
 	verb := "frozen in " + target
 	if unchanged {
 		verb = "unchanged: " + target
@@ -750,7 +765,7 @@ func movedLines(list []exhibit.Moved, most int) string {
 			fmt.Fprintf(&b, "  and %d more\n", len(list)-most)
 			break
 		}
-		b.WriteString("  " + movedLine(m) + "\n")
+		b.WriteString("  " + diag.Printable(movedLine(m)) + "\n")
 	}
 	return b.String()
 }

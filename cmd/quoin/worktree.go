@@ -34,6 +34,7 @@ type repository struct {
 	top          string // absolute, links followed
 	commit, date string // "": there is no commit yet
 	why          string // why git cannot tell; "" where it can
+	silent       bool   // git gave no answer at all
 	entries      map[string]gitEntry
 
 	mu   sync.Mutex
@@ -87,7 +88,7 @@ func readRepository(top, what string) *repository {
 		list, err = askGit(top, "ls-tree", "-r", "-z", "--full-tree", r.commit)
 	}
 	if err != nil {
-		return &repository{top: top, why: err.Error()}
+		return &repository{top: top, why: err.Error(), silent: errors.As(err, new(gitSilent))}
 	}
 	r.date = committed(head)
 	for line := range strings.SplitSeq(string(list), "\x00") {

@@ -11,36 +11,14 @@ import (
 	"quoin/calc/standard"
 )
 
-// statics are the static forces that a tree is made of, formula names followed to
-// their lines.
+// statics are the static forces that a tree is made of.
 func (r *Run) statics(tree *expr.Node) []*lateral.Static {
 	var out []*lateral.Static
-	seen := map[string]bool{}
-	var walk func(n *expr.Node)
-	walk = func(n *expr.Node) {
-		if n == nil {
-			return
-		}
-		if n.Op == expr.Name {
-			first, _, dotted := strings.Cut(n.Text, ".")
-			switch {
-			case seen[first]:
-			case !dotted:
-				seen[first] = true
-				line, _ := r.Line(first)
-				walk(line)
-			case r.KindOf(first) == staticKind.Name:
-				seen[first] = true
-				if s, ok := r.Product(first).(*lateral.Static); ok {
-					out = append(out, s)
-				}
-			}
-		}
-		for _, a := range n.Args {
-			walk(a)
+	for _, name := range r.staticNames(tree) {
+		if s, ok := r.Product(name).(*lateral.Static); ok {
+			out = append(out, s)
 		}
 	}
-	walk(tree)
 	return out
 }
 
