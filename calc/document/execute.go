@@ -87,6 +87,7 @@ func (d *run) runNode(n *node) {
 		n.take(findings)
 		n.rows, n.relation = rows, relation
 		n.percentLimit()
+		n.constantCheck()
 	case liveNode:
 		shown, err := n.pipeline.Run(sc.shown)
 		if err != nil {

@@ -264,3 +264,17 @@ func TestBuildUp(t *testing.T) {
 		t.Errorf("lines %v, D5-95 is %v s", l, d)
 	}
 }
+
+// TestMarksBeyond: a mark that the axis does not hold is not drawn, and the caption
+// says so; an axis of values without an end is drawn to hold its marks.
+func TestMarksBeyond(t *testing.T) {
+	p := ran(t, calc("target a", "table: t.csv", "damping: 5 %")+
+		calc("figure f", "series: [a.PSA]", "from: 0.1 s", "to: 2 s", "mark: [0.0798 s, 1 s]", "mark_y: 99 g"), flat)
+	f := figureOf(t, p, "f")
+	if got := f.Panels[0].Lines; len(got) != 2 || got[0].At != 1 || got[1].Vertical {
+		t.Errorf("drawn: %+v", got)
+	}
+	if !strings.HasSuffix(f.Caption, "; the mark 0.0798 s lies beyond the axis") {
+		t.Error(f.Caption)
+	}
+}

@@ -33,6 +33,8 @@ type readFile struct {
 
 func newFiles(root fs.FS) *files { return &files{root: root, got: map[string]readFile{}} }
 
+var errOutside = errors.New("leads out of the root; only files below it are read")
+
 // below joins a path named in a document to the folder of the file that names
 // it, and refuses what leads out of the root.
 func below(dir, name string) (string, error) {
@@ -44,7 +46,7 @@ func below(dir, name string) (string, error) {
 	}
 	full := path.Join(dir, name)
 	if !fs.ValidPath(full) || full == "." {
-		return "", fmt.Errorf("%s leads out of the root; only files below it are read", name)
+		return "", fmt.Errorf("%s %w", name, errOutside)
 	}
 	return full, nil
 }

@@ -1,6 +1,7 @@
 package document
 
 import (
+	"errors"
 	"fmt"
 	"io/fs"
 	"math"
@@ -63,7 +64,11 @@ func (d *run) dress(f field.Field) {
 		}
 	}
 	if err != nil {
-		d.diags.Errorf("unreadable", f.At, "%s", err).WithHint("the folder of an office is named relative to %s", path.Base(d.src.Main))
+		hint := "the folder of an office is named relative to " + path.Base(d.src.Main)
+		if errors.Is(err, errOutside) {
+			hint = "give a folder above both, --root DIR, or keep both in one git repository, which is the root by itself"
+		}
+		d.diags.Errorf("unreadable", f.At, "%s", err).WithHint("%s", hint)
 		return
 	}
 	c := &clothes{run: d, dir: dir, at: f.At, office: &exhibit.Office{Folder: dir}}

@@ -86,7 +86,7 @@ func TestOfficeFiles(t *testing.T) {
 	}
 	for path, want := range map[string]string{"/etc": "absolute", "../../x": "leads out", "..": "leads out", "a\\b": "forward slashes", "package.md": "no folder"} {
 		fs["a/package.md"] = &fstest.MapFile{Data: []byte(strings.Replace(inOffice, "office: office", "office: '"+path+"'", 1))}
-		if res := Run(Source{FS: fs, Main: "a/package.md"}, Options{}); res.Package != nil || !strings.Contains(res.Diagnostics[0].Summary, want) || res.Diagnostics[0].Range.Line != 4 {
+		if res := Run(Source{FS: fs, Main: "a/package.md"}, Options{}); res.Package != nil || !strings.Contains(res.Diagnostics[0].Summary, want) || res.Diagnostics[0].Range.Line != 4 || strings.Contains(res.Diagnostics[0].Hint, "--root DIR") != (want == "leads out") {
 			t.Errorf("%s: %+v", path, res.Diagnostics)
 		}
 	}

@@ -26,3 +26,13 @@ func (n *node) percentLimit() {
 			WithHint("a limit of 2 %% is written  2 %%")
 	}
 }
+
+// constantCheck warns of a check that reads no value of the document: its answer is
+// written down with it, and it counts among the checks that are OK.
+func (n *node) constantCheck() {
+	if n.diags.HasErrors() || len(n.deps) > 0 {
+		return
+	}
+	n.diags.Warnf("check-constant", n.lineSpot(n.line.Tree.From, n.line.Tree.To), "the check reads no value of the document: it compares constants, and nothing that is calculated can change it").
+		WithHint("name what is checked: check d.drift_ratio <= 2 %%")
+}

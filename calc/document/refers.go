@@ -34,6 +34,13 @@ var referWords = map[string]string{"eq": "Eq. (%d)", "fig": "Fig. %d", "table": 
 // referNouns is what a message calls it.
 var referNouns = map[string]string{"eq": "equation", "fig": "figure", "table": "table"}
 
+// referShort is what the words of a reference by number mean, and referSample how
+// one by name is written.
+var (
+	referShort  = map[string]string{"Eq": "eq", "Equation": "eq", "Fig": "fig", "Figure": "fig", "Table": "table"}
+	referSample = map[string]string{"eq": "[Eq. V]", "fig": "[Fig. spectra]", "table": "[Table storeys]"}
+)
+
 // referrals is all that can be referred to, in order.
 func (a *assembly) referrals() (out []referred) {
 	for _, c := range a.p.Chapters {

@@ -227,7 +227,7 @@ func officeTopic() topic {
 	for _, p := range page.Properties {
 		styles = append(styles, row{Name: p.Names, Doc: p.Doc})
 	}
-	elements := "elements: " + strings.Join(page.Elements(), ", ") + "; attributes: style, src and alt of a picture, scope and colspan of cells"
+	elements := "elements: " + strings.Join(page.Elements(), ", ") + "; attributes: style, src and alt of a picture, scope and colspan of cells; the rows of a <table> stand in <tbody>, those of its head in <thead>"
 	return topic{Name: t.Name, Doc: t.Doc, Form: t.Form, Sections: append(t.Sections,
 		section{Title: refParts, Intro: refPartsIntro, Heads: headsForms, Rows: places},
 		section{Title: refFunctions, Heads: headsForms, Rows: functions},

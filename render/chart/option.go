@@ -84,6 +84,14 @@ func measure(f exhibit.Figure) []*panel {
 		for _, r := range q.Points {
 			ys = append(ys, q.Y.Unit.From(r.Y))
 		}
+		for _, l := range q.Lines { // an axis of values holds its lines
+			switch {
+			case !l.Vertical:
+				ys = append(ys, q.Y.Unit.From(l.At))
+			case xFit != tight:
+				xs = append(xs, q.X.Unit.From(l.At))
+			}
+		}
 		p.x, p.y = spanOf(q.X, xs, xFit, p.width), spanOf(q.Y, ys, yFit, p.height)
 		if len(q.Diagonals) > 0 && p.x.log && p.y.log { // decades of one length: diagonals at 45°
 			p.height = min(max(p.width*math.Log(p.y.hi/p.y.lo)/math.Log(p.x.hi/p.x.lo), 260), 440)

@@ -2,6 +2,7 @@ package page
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -42,10 +43,12 @@ func (b *book) ownCover() (out []item) {
 	if b.own.cover == nil {
 		return nil
 	}
-	pieces := b.fill(b.own.cover, b.coverData(), 162, 10)
+	data := b.coverData()
+	pieces := b.fill(b.own.cover, data, 162, 10)
 	if pieces == nil {
 		return nil
 	}
+	b.own.unsaid = b.unsaid(data, pieces)
 	placed := map[string]bool{}
 	for _, f := range pieces {
 		if f.part == "" {
@@ -62,6 +65,62 @@ func (b *book) ownCover() (out []item) {
 	}
 	out[0].anchors = append(out[0].anchors, "q-cover")
 	return out
+}
+
+// unsaid is the facts of the program's own cover that the pieces of an office do not
+// show. A fact that is a part of a longer one, as a place in the name of a project, is
+// not shown by that: the longer are looked for first and taken out.
+func (b *book) unsaid(c Cover, pieces []filled) (out []coverRow) {
+	type fact struct {
+		label, text string
+		shown       bool
+	}
+	m := b.p.Meta
+	facts := []*fact{{label: "Subject", text: c.Subject}, {label: b.word("client"), text: c.Client}, {label: "Contract", text: clip(m.Contract, titleChars)},
+		{label: b.word("location"), text: c.Location}, {label: b.word("discipline"), text: clip(m.Discipline, titleChars)}, {label: b.word("authority"), text: c.Authority}}
+	plain := func(s string) string { return strings.ToLower(strings.Join(strings.Fields(s), " ")) }
+	seen := ""
+	for _, f := range pieces {
+		seen += f.seen + "\n"
+	}
+	seen = plain(seen)
+	all := append(slices.Clone(facts), &fact{text: c.Title}, &fact{text: c.Project}, &fact{text: c.Number}, &fact{text: c.Office})
+	slices.SortStableFunc(all, func(x, y *fact) int { return utf8.RuneCountInString(y.text) - utf8.RuneCountInString(x.text) })
+	for _, f := range all {
+		if text := plain(f.text); text != "" {
+			seen, f.shown = without(seen, text)
+		}
+	}
+	for _, f := range facts {
+		if !f.shown && strings.TrimSpace(f.text) != "" {
+			out = append(out, coverRow{Label: f.label, Lines: []coverLine{{Text: f.text}}})
+		}
+	}
+	return out
+}
+
+// without takes out of a text what stands there as words of its own, and tells
+// whether it did.
+func without(s, words string) (rest string, found bool) {
+	letter := func(r rune) bool { return unicode.IsLetter(r) || unicode.IsDigit(r) }
+	var b strings.Builder
+	for {
+		i := strings.Index(s, words)
+		if i < 0 {
+			break
+		}
+		before, _ := utf8.DecodeLastRuneInString(s[:i])
+		after, _ := utf8.DecodeRuneInString(s[i+len(words):])
+		if letter(before) || letter(after) {
+			_, n := utf8.DecodeRuneInString(s[i:])
+			b.WriteString(s[:i+n])
+			s = s[i+n:]
+			continue
+		}
+		b.WriteString(s[:i] + "\n")
+		s, found = s[i+len(words):], true
+	}
+	return b.String() + s, found
 }
 
 // ownHeadHigh is how high the head of the office is with the line of state below it,

@@ -1,6 +1,7 @@
 package page
 
 import (
+	"slices"
 	"strconv"
 	"strings"
 
@@ -114,7 +115,7 @@ func (b *book) cover() []item {
 func (b *book) part(name string) []item {
 	switch name {
 	case "state":
-		rows := append([]coverRow{{Label: "Status", Lines: []coverLine{b.statusLine()}}}, b.coverRows()...)
+		rows := slices.Concat([]coverRow{{Label: "Status", Lines: []coverLine{b.statusLine()}}}, b.own.unsaid, b.coverRows())
 		it := item{name: "cover-state", data: rows, high: 4}
 		for _, r := range rows {
 			it.high += r.high()

@@ -74,6 +74,7 @@ func (b *book) dress() {
 // own is the clothes of a book; its members are nil where the program's own serve.
 type own struct {
 	head, cover *ownTemplate
+	unsaid      []coverRow // facts that the cover of the office does not show
 	list        diag.List
 }
 
@@ -282,31 +283,50 @@ func (b *book) fill(t *ownTemplate, data any, wide, font float64) (out []filled)
 			b.own.list.Errorf("office-markup", diag.Range{File: t.file.Path}, "%s, once the template is filled", r.faults[0].text).WithHint("%s", r.faults[0].hint)
 			return nil
 		}
-		seen += " " + tree.seen()
+		said := tree.seen()
+		seen += " " + said
 		if strings.TrimSpace(text) != "" {
-			out = append(out, filled{text: template.HTML(text), high: tree.high(wide, font)})
+			out = append(out, filled{text: template.HTML(text), seen: said, high: tree.high(wide, font)})
 		}
 	}
 	seen = strings.ToLower(strings.Join(strings.Fields(seen), " "))
 	v := reflect.ValueOf(data)
+	var missing, places []string
 	for _, name := range t.musts {
 		want := strings.ToLower(strings.Join(strings.Fields(v.FieldByName(name).String()), " "))
 		if strings.Contains(seen, want) {
 			continue
 		}
-		at := diag.Range{File: t.file.Path, Line: 1, Column: 1, EndLine: 1, EndColumn: 2}
 		if i := regexp.MustCompile(`\.` + name + `\b`).FindStringIndex(string(t.file.Data)); i != nil {
-			at = t.at(i[0], i[1])
+			b.omits(t, t.at(i[0], i[1]), []string{strings.ToLower(name)}, []string{"{{." + name + "}}"})
+			continue
 		}
-		b.own.list.Errorf("office-omits", at, "the template does not show %s", strings.ToLower(name)).WithHint("place {{.%s}} where it is always seen, as it is: in a text, in no branch", name)
+		missing, places = append(missing, strings.ToLower(name)), append(places, "{{."+name+"}}")
+	}
+	if len(missing) > 0 {
+		b.omits(t, diag.Range{File: t.file.Path, Line: 1, Column: 1, EndLine: 1, EndColumn: 2}, missing, places)
 	}
 	return out
+}
+
+// omits refuses a template that does not show what must be seen, all of it at once.
+func (b *book) omits(t *ownTemplate, at diag.Range, names, places []string) {
+	b.own.list.Errorf("office-omits", at, "the template does not show %s", all(names)).WithHint("place %s where it is always seen, as it is: in a text, in no branch", all(places))
+}
+
+// all is a list in a sentence: a, b and c.
+func all(list []string) string {
+	if len(list) < 2 {
+		return strings.Join(list, "")
+	}
+	return strings.Join(list[:len(list)-1], ", ") + " and " + list[len(list)-1]
 }
 
 // filled is a piece of a template, filled, or a part for the program to draw.
 type filled struct {
 	part string
 	text template.HTML
+	seen string // what a reader sees of the text
 	high float64
 }
 

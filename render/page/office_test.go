@@ -121,8 +121,9 @@ func TestOfficeRefuses(t *testing.T) {
 			t.Errorf("%s\ngot  %swant %s", tt.cover, said, tt.want)
 		}
 	}
-	// What each template must show.
+	// What each template must show, all of it said at once.
 	for head, want := range map[string]string{
+		`<p>{{.Number}}</p>`: "1:1 does not show project, date, prepared and checked",
 		`<p>{{.Project}} {{.Number}} {{.Date}} {{.Prepared}}</p>`:                                  "1:1 does not show checked",
 		"<p>{{.Project}} {{.Date}} {{.Prepared}} {{.Checked}}</p>\n{{if false}}{{.Number}}{{end}}": "2:15 does not show number",
 	} {
@@ -202,6 +203,33 @@ func TestOfficeCannotHide(t *testing.T) {
 		idsAndLinks(t, out)
 		if name == "parts" && !(strings.Index(out, `class="tbl revs"`) < strings.Index(out, "<dt>Status</dt>") && strings.Index(out, "<p>between</p>") < strings.Index(out, `<aside class="caution"`)) {
 			t.Error("the parts do not stand where the office places them")
+		}
+	}
+}
+
+// TestOfficeFacts: what the program's own cover says of the package stands on that of
+// an office as well; the program draws what the office does not show, and only that.
+func TestOfficeFacts(t *testing.T) {
+	rows := func(cover string) (out []string) {
+		p := invented(dressed("", cover))
+		p.Meta.Location = "Harrow Quay" // as in the name of the project
+		text := render(t, p, options())
+		text = text[strings.Index(text, "<dt>Status</dt>"):]
+		text = text[:strings.Index(text, "<dt>Governing basis</dt>")]
+		for _, m := range regexp.MustCompile(`(?s)<dt>(.*?)</dt><dd>(.*?)</dd>`).FindAllStringSubmatch(text, -1)[1:] {
+			out = append(out, m[1]+": "+regexp.MustCompile(`<[^>]*>`).ReplaceAllString(m[2], ""))
+		}
+		return out
+	}
+	const subject, contract = "Subject: Base shear, storey forces, drift and stability under design earthquake motion", "Contract: HQ-26-114"
+	for cover, want := range map[string][]string{
+		soundCover: {subject, "Client: Harrow Quay Trust", contract, "Location: Harrow Quay", "Discipline: structural", "Authority: Harrow Quay building office"},
+		soundCover + `<p>{{.Subject | upper}}</p><p>{{.Authority}}</p><p>{{.Client}}</p>`:                                        {contract, "Location: Harrow Quay", "Discipline: structural"},
+		soundCover + `<p>{{.Subject}}</p><table><tbody>{{range .Facts}}<tr><td>{{.Text}}</td></tr>{{end}}</tbody></table>`:       nil,
+		soundCover + `<p>{{.Subject}}</p><img src="{{picture "logo.svg"}}" alt="{{.Client}} {{.Location}}" style="height: 9mm">`: {"Client: Harrow Quay Trust", contract, "Location: Harrow Quay", "Discipline: structural", "Authority: Harrow Quay building office"},
+	} {
+		if got := rows(cover); fmt.Sprint(got) != fmt.Sprint(want) {
+			t.Errorf("%s\ngot  %q\nwant %q", cover, got, want)
 		}
 	}
 }

@@ -166,7 +166,7 @@ var parts = []string{"state", "criteria", "sign", "caution", "revisions"}
 
 // Parts are the parts of the cover with what they are.
 var Parts = [][2]string{
-	{"state", "status, governing basis, revision, source, inputs, tallies of checks, warnings and assumptions, what is overridden and open, package digest"},
+	{"state", "status, what cover.html does not show of subject, client, contract, location, discipline and authority, governing basis, revision, source, inputs, tallies of checks, warnings and assumptions, what is overridden and open, package digest"},
 	{"criteria", "the design criteria"},
 	{"sign", "the boxes to sign"},
 	{"caution", "the short cautions"},

@@ -183,7 +183,8 @@ func (b *figure) Run(r *Run) {
 			return
 		}
 	}
-	p, ok := b.panel(r, all)
+	var hidden []string // what is said of marks that the axes do not hold
+	p, ok := b.panel(r, all, &hidden)
 	if !ok {
 		return
 	}
@@ -209,8 +210,12 @@ func (b *figure) Run(r *Run) {
 	if b.bands() {
 		alt = "Usable periods of the records, a bar each,"
 	}
+	caption += b.bases(r, caption, names)
+	if len(hidden) > 0 {
+		caption += "; " + strings.Join(hidden, "; ")
+	}
 	r.Echo.Rows = nil // the figure shows its inputs
-	r.Figure(exhibit.Figure{ID: r.Stem(), Caption: caption + b.bases(r, caption, names), Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})
+	r.Figure(exhibit.Figure{ID: r.Stem(), Caption: caption, Panels: []exhibit.Panel{p}, Beside: b.Over.Given, Alt: alt + " for " + strings.Join(names, ", ") + "."})
 }
 
 // mostDots is how many points of vectors are marked one by one; more are a curve.

@@ -13,7 +13,7 @@ import (
 )
 
 // panel puts the curves on their axes.
-func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
+func (b *figure) panel(r *Run, all []drawn, hidden *[]string) (p exhibit.Panel, ok bool) {
 	xs, ys := all[0].X, all[0].Y
 	xu, ok1 := axisUnit(r, b.XUnit, xs)
 	yu, ok2 := axisUnit(r, b.YUnit, ys)
@@ -63,7 +63,7 @@ func (b *figure) panel(r *Run, all []drawn) (p exhibit.Panel, ok bool) {
 		value.Min = zero()
 	}
 	b.rings(&p, all)
-	return p, b.inView(r, &p) && b.marks(r, &p, b.Mark, p.X, true) && b.marks(r, &p, b.MarkY, p.Y, false)
+	return p, b.inView(r, &p) && b.marks(r, &p, b.Mark, p.X, true, hidden) && b.marks(r, &p, b.MarkY, p.Y, false, hidden)
 }
 
 // histories tells whether all curves are of records: over time, not period.
@@ -222,7 +222,7 @@ func (b *figure) decades(r *Run, p *exhibit.Panel, all []drawn) bool {
 }
 
 // marks draws dotted lines across the panel, named with their values.
-func (b *figure) marks(r *Run, p *exhibit.Panel, f field.Field, a exhibit.Axis, vertical bool) bool {
+func (b *figure) marks(r *Run, p *exhibit.Panel, f field.Field, a exhibit.Axis, vertical bool, hidden *[]string) bool {
 	if !f.Given {
 		return true
 	}
@@ -245,9 +245,53 @@ func (b *figure) marks(r *Run, p *exhibit.Panel, f field.Field, a exhibit.Axis, 
 		if i < len(f.List) && len(f.List) == len(f.Value.SI) && !literalText(f, i) {
 			text = markName(f.List[i].Text) + " " + text
 		}
+		if end := b.beyond(p, x, vertical); end != "" {
+			at := f
+			if i < len(f.List) && len(f.List) == len(f.Value.SI) && f.List[i].At.Line > 0 {
+				at.At = f.List[i].At
+			}
+			r.WarnAt(at, "mark-beyond", "the mark %s lies beyond the axis, which %s, and is not shown", text, end)
+			*hidden = append(*hidden, "the mark "+text+" lies beyond the axis")
+			continue
+		}
 		p.Lines = append(p.Lines, exhibit.RefLine{Vertical: vertical, At: x, Label: text})
 	}
 	return true
+}
+
+// beyond says how the axis of a line ends before it, "" where the axis holds it. An
+// axis of values without a stated end is drawn to hold its lines; the running axis
+// ends with the curves.
+func (b *figure) beyond(p *exhibit.Panel, at float64, vertical bool) string {
+	a := p.Y
+	if vertical {
+		a = p.X
+	}
+	lo, hi := math.Inf(-1), math.Inf(1)
+	if vertical && !b.Over.Given {
+		lo, hi = hi, lo
+		for _, s := range p.Series {
+			lo, hi = min(lo, slices.Min(s.X)), max(hi, slices.Max(s.X))
+		}
+	}
+	if a.Min != nil {
+		lo = *a.Min
+	}
+	if a.Max != nil {
+		hi = *a.Max
+	}
+	words := func(x float64) string {
+		return strings.TrimSpace(quantity.Format(a.Unit.From(x), 3) + " " + a.Unit.Pretty())
+	}
+	switch {
+	case at < lo:
+		return "begins at " + words(lo)
+	case at > hi:
+		return "ends at " + words(hi)
+	case a.Log && at <= 0:
+		return "is logarithmic"
+	}
+	return ""
 }
 
 // markName is how an expression is named at its line: m.T[1] is T₁.
