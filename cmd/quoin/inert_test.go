@@ -30,7 +30,7 @@ var wild = map[string]string{
 // places in the page, and words of closed lists that the calculation itself writes.
 var structural = map[string]string{
 	"Prose.Anchor": "an id made of letters, digits and hyphens", "Chapter.Anchor": "as above", "Block.Anchor": "as above", "Entry.Anchor": "as above",
-	"Check.Anchor": "as above", "Assumption.Anchor": "as above", "SymbolPlace.Anchor": "as above", "Origin.Anchor": "as above",
+	"Check.Anchor": "as above", "Comment.Anchor": "as above", "Checking.Anchor": "as above", "Comment.Status": "of a list", "Moved.What": "of a list", "Assumption.Anchor": "as above", "SymbolPlace.Anchor": "as above", "Origin.Anchor": "as above",
 	"Caution.Blocks": "anchors", "Caution.Key": "a key of the list of cautions", "Prose.Align": "left, right or center", "Prose.MediaType": "of a list",
 	"Prose.Target": "an address, held to http, https and mailto: see TestTargets", "Meta.Paper": "A4 or Letter", "Meta.Status": "of a list",
 	"Criterion.Group": "of CriteriaGroups", "Check.Relation": "an operator", "Part.Name": "inputs, method or results",
@@ -111,6 +111,13 @@ func wildSample(t *testing.T) document.Result {
 	p.Office = &exhibit.Office{Name: "x"}
 	for _, w := range exhibit.Words {
 		p.Office.Words = append(p.Office.Words, exhibit.Wording{Key: w.Key, Text: "x"})
+	}
+	p.Comments = append(p.Comments, exhibit.Comment{Status: "open", Anchor: "b-wild"})
+	p.Checking = append(p.Checking, exhibit.Checking{Anchor: "b-wild"})
+	p.Frozen = &exhibit.Frozen{}
+	for _, what := range []string{exhibit.MovedCheck, exhibit.MovedInput, exhibit.MovedFile, exhibit.MovedAssumption, exhibit.MovedValue, exhibit.MovedSeries, exhibit.MovedBlock} {
+		m := exhibit.Moved{What: what, ID: "x", Old: "x", New: "x", Label: "x"}
+		p.Frozen.Moved, p.Frozen.Files, p.Frozen.Marks = append(p.Frozen.Moved, m), append(p.Frozen.Files, m), append(p.Frozen.Marks, m)
 	}
 	p.Provenance.Overrides = append(p.Provenance.Overrides, exhibit.Override{Name: "x"})
 	p.Criteria = append(p.Criteria, exhibit.Criterion{Group: exhibit.CriteriaGroups[0], Label: "x", Value: exhibit.Cell{Text: "x"}})
