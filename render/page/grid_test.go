@@ -172,3 +172,12 @@ func TestWideTable(t *testing.T) {
 		t.Errorf("tables are set %v", kinds)
 	}
 }
+
+// A face breaks a text in whatever room there is.
+func TestLinesWithoutRoom(t *testing.T) {
+	for _, room := range []float64{-300, 0, 0.2} {
+		if got := textFace.lines("a name that goes on", room); got < 4 || got > 40 {
+			t.Errorf("in a room of %v em it takes %v lines", room, got)
+		}
+	}
+}

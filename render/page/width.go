@@ -72,7 +72,7 @@ func (f *face) longest(text string) float64 {
 // lines is how many lines a text takes, set word by word in so much room, em; a
 // word wider than the room is broken.
 func (f *face) lines(text string, room float64) float64 {
-	n := 0.0
+	n, room := 0.0, max(room, 1) // where nothing is left of it, a letter a line
 	for line := range strings.Lines(text) {
 		used := 0.0
 		n++
