@@ -26,7 +26,7 @@ func (b *book) software() []item {
 	v.Modules = strings.Join(s.Modules, ", ")
 	v.Evidence = evidence(s)
 	high := 22 + 5*(lines(v.Evidence, 78)+lines(v.Modules, 78)+1)
-	out := []item{{name: "software", data: v, high: high}, {name: "software-rules", data: v, high: 96}}
+	out := []item{{name: "software", data: v, high: high}, {name: "software-rules", data: v, high: 108}}
 	return append(out, chunked("methods", headRow, s.Kinds, func(m exhibit.Method) float64 {
 		names := 0
 		for _, o := range m.Blocks {
