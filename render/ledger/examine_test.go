@@ -4,6 +4,7 @@ import (
 	"bytes"
 	"os"
 	"path/filepath"
+	"runtime"
 	"strings"
 	"testing"
 )
@@ -69,7 +70,10 @@ func TestExamine(t *testing.T) {
 		t.Run(c.name, func(t *testing.T) {
 			dir := write()
 			if err := c.change(dir); err != nil {
-				t.Skip(err) // no links here
+				if runtime.GOOS == "windows" { // where making links needs a privilege
+					t.Skip(err)
+				}
+				t.Fatal(err)
 			}
 			root, err := os.OpenRoot(dir)
 			if err != nil {
