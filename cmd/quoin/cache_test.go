@@ -3,7 +3,6 @@ package main
 import (
 	"bytes"
 	"fmt"
-	"io/fs"
 	"os"
 	"path/filepath"
 	"slices"
@@ -22,15 +21,9 @@ func testCache(t *testing.T, folder, program string) *diskCache {
 // entries are the files of a cache.
 func entries(t *testing.T, folder string) []string {
 	t.Helper()
-	var out []string
-	err := filepath.WalkDir(folder, func(path string, d fs.DirEntry, err error) error {
-		if err == nil && !d.IsDir() {
-			out = append(out, path)
-		}
-		return err
-	})
-	if err != nil {
-		t.Fatal(err)
+	out := filesOf(t, folder)
+	for i, name := range out {
+		out[i] = filepath.Join(folder, filepath.FromSlash(name))
 	}
 	return out
 }
